@@ -1,0 +1,127 @@
+/**
+ * series.json: what a folder given to the analysis command says of its recordings.
+ * Strict everywhere: an unknown key is refused by name (docs/contract.md).
+ */
+import { z } from "zod";
+import { ENVIRONMENTS, RUN_KINDS } from "./vocabulary";
+
+const finite = z.number().finite();
+const positive = finite.positive();
+
+/** A name inside the folder: no leading slash, no drive, no "..", no backslash. */
+export const relativeFileSchema = z
+  .string()
+  .min(1)
+  .max(255)
+  .refine(
+    (name) =>
+      !name.startsWith("/") &&
+      !name.includes("\\") &&
+      !name.includes("\0") &&
+      !/^[A-Za-z]:/.test(name) &&
+      name.split("/").every((part) => part !== "" && part !== "." && part !== ".."),
+    { error: "must be a name inside the folder, without ..", params: { code: "series.file-name" } },
+  );
+
+export const criterionSchema = z
+  .strictObject({
+    thd_percent: positive.max(100).optional(),
+    compression_dB: positive.max(20).optional(),
+  })
+  .refine((c) => c.thd_percent !== undefined || c.compression_dB !== undefined, {
+    error: "needs thd_percent, compression_dB or both",
+  });
+export type Criterion = z.infer<typeof criterionSchema>;
+
+export const DEFAULT_CRITERIA: readonly Criterion[] = [
+  { thd_percent: 3 },
+  { thd_percent: 10 },
+  { compression_dB: 1 },
+  { compression_dB: 3 },
+];
+
+export const conditioningSchema = z.strictObject({
+  minutes: positive.max(24 * 60),
+  crest_dB: finite.min(0).max(40),
+  rms_re_sweep_dB: finite.min(-60).max(20),
+  gap_s: finite.min(0).max(3600),
+});
+export type Conditioning = z.infer<typeof conditioningSchema>;
+
+export const stimulusSchema = z
+  .strictObject({
+    file: relativeFileSchema.optional(),
+    start_Hz: positive.max(100_000),
+    stop_Hz: positive.max(200_000),
+    length_s: positive.max(600),
+    rate_Hz: z.number().int().min(8_000).max(384_000),
+    lead_in_s: finite.min(0).max(60).default(0),
+    lead_out_s: finite.min(0).max(60).default(0),
+  })
+  .refine((s) => s.stop_Hz >= 2 * s.start_Hz, { error: "stop_Hz must be at least twice start_Hz", path: ["stop_Hz"] })
+  .refine((s) => s.stop_Hz <= s.rate_Hz / 2, { error: "stop_Hz must not pass half of rate_Hz", path: ["stop_Hz"] });
+export type Stimulus = z.infer<typeof stimulusSchema>;
+
+export const calibrationSchema = z.union([
+  z.strictObject({
+    file: relativeFileSchema,
+    level_dB: finite.min(40).max(180),
+    frequency_Hz: positive.max(20_000).default(1000),
+    after_file: relativeFileSchema.optional(),
+  }),
+  z.strictObject({ full_scale_dB: finite.min(0).max(220) }),
+]);
+export type Calibration = z.infer<typeof calibrationSchema>;
+
+export const microphoneSchema = z.strictObject({
+  file: relativeFileSchema,
+  kind: z.enum(["response", "correction"]),
+});
+
+export const runSchema = z.strictObject({
+  file: relativeFileSchema,
+  level_dB: finite.min(0).max(180),
+  kind: z.enum(RUN_KINDS).default("short-term"),
+  conditioning: conditioningSchema.optional(),
+  /** Gain of the stimulus on the scale of level_dB; level_dB where not given. */
+  drive_dB: finite.min(-100).max(220).optional(),
+  channel: z.number().int().min(1).max(64).default(1),
+  loopback_channel: z.number().int().min(1).max(64).optional(),
+  variant: z.string().min(1).max(120).optional(),
+  /** A train: this many sweeps, period_s apart. */
+  sweeps: z.number().int().min(1).max(1000).optional(),
+  period_s: positive.max(3600).optional(),
+});
+export type Run = z.infer<typeof runSchema>;
+
+export const settingsSchema = z.strictObject({
+  criteria: z.array(criterionSchema).min(1).max(12).default([...DEFAULT_CRITERIA]),
+});
+export type Settings = z.infer<typeof settingsSchema>;
+
+export const seriesSchema = z
+  .strictObject({
+    loudspeaker: z.string().min(1).max(200),
+    environment: z.enum(ENVIRONMENTS),
+    distance_m: positive.max(1000),
+    gate_ms: positive.max(10_000).optional(),
+    /** Largest dimension of the loudspeaker, m: tells whether the distance is far enough. */
+    largest_dimension_m: positive.max(20).optional(),
+    tuning_Hz: positive.max(2000).optional(),
+    reference_band_Hz: z
+      .tuple([positive, positive])
+      .refine(([low, high]) => low < high, { error: "must be a lower and a higher frequency" })
+      .optional(),
+    stimulus: stimulusSchema,
+    calibration: calibrationSchema.optional(),
+    microphone: microphoneSchema.optional(),
+    ambient: z.strictObject({ file: relativeFileSchema }).optional(),
+    runs: z.array(runSchema).min(1).max(200),
+    settings: settingsSchema.default({ criteria: [...DEFAULT_CRITERIA] }),
+  })
+  .refine((s) => s.environment !== "gated" || s.gate_ms !== undefined, {
+    error: "gate_ms is needed with the environment gated",
+    path: ["gate_ms"],
+  });
+/** A series as the engine takes it: parsed, defaults filled in. */
+export type Series = z.infer<typeof seriesSchema>;
