@@ -75,7 +75,12 @@ export interface MeasuredRun {
   floorDb: Float64Array;
   /** [grid] ungated fundamental on the scale of BandMeasure.levelDb: for anchors across frequency. */
   levelCurveDb: Float64Array;
-  harmonics: { order: number; splDb: Float64Array; floorDb: Float64Array; quality: (Quality | null)[] }[];
+  harmonics: {
+    order: number;
+    splDb: Float64Array;
+    floorDb: Float64Array;
+    quality: (Quality | null)[];
+  }[];
   thdPercent: Float64Array;
   thdQuality: (Quality | null)[];
   thdOrders: string[];
@@ -99,4 +104,9 @@ export interface MeasuredSeries {
 
 /** Progress of an analysis, by run and stage. */
 export type Stage = "read" | "aligned" | "harmonics" | "floor" | "levels" | "onset";
-export type OnProgress = (event: { file: string | null; stage: Stage; done: number; total: number }) => void;
+export type OnProgress = (event: {
+  file: string | null;
+  stage: Stage;
+  done: number;
+  total: number;
+}) => void;

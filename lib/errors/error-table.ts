@@ -73,7 +73,7 @@ export const ERROR_TABLE = {
   "config.invalid": final(500, "A setting is wrong"),
   "queue.unavailable": passing(503, "The queue cannot be reached"),
   "database.unavailable": passing(503, "The database cannot be reached"),
-  "internal": passing(500, "Something went wrong on our side"),
+  internal: passing(500, "Something went wrong on our side"),
 } as const satisfies Record<string, ErrorRow>;
 
 export type ErrorCode = keyof typeof ERROR_TABLE;

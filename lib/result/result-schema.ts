@@ -69,7 +69,12 @@ export const bandLevelSchema = z.object({
   thd_orders: z.string(),
   /** Per order: percent of the fundamental in this band; percent null where in the noise. */
   harmonics: z.array(
-    z.object({ order: z.number().int(), percent: value, quality: qualitySchema.nullable(), floor_percent: value }),
+    z.object({
+      order: z.number().int(),
+      percent: value,
+      quality: qualitySchema.nullable(),
+      floor_percent: value,
+    }),
   ),
 });
 export type BandLevel = z.infer<typeof bandLevelSchema>;
@@ -95,7 +100,9 @@ export const evidenceSchema = z.object({
   /** The law with the most weight: "hard limiter", "soft knee", "two paths", "hard clip", "tanh", "cubic", or "linear". */
   law: z.string().nullable(),
   /** Median law, for drawing: expected against measured, dB. */
-  law_curve: z.object({ expected_dB: z.array(z.number()), measured_dB: z.array(z.number()) }).nullable(),
+  law_curve: z
+    .object({ expected_dB: z.array(z.number()), measured_dB: z.array(z.number()) })
+    .nullable(),
   /** The level whose run would narrow the interval most, and how far. */
   next_run: z
     .object({ level_dB: z.number(), width_now_dB: z.number(), width_expected_dB: z.number() })

@@ -47,7 +47,9 @@ export const arrivalCheckSchema = z.object({
   /** The figure held against its limit. */
   figure: z.object({ value: z.number(), limit: value, unit: z.string() }).nullable(),
   /** Where in the recording; frequencies of the sweep where it applies. */
-  where: z.object({ from_s: z.number(), to_s: z.number(), from_Hz: value, to_Hz: value }).nullable(),
+  where: z
+    .object({ from_s: z.number(), to_s: z.number(), from_Hz: value, to_Hz: value })
+    .nullable(),
   bands_Hz: z.array(z.number()),
 });
 export type ArrivalCheck = z.infer<typeof arrivalCheckSchema>;
@@ -81,7 +83,15 @@ export const arrivalReportSchema = z.object({
 });
 export type ArrivalReport = z.infer<typeof arrivalReportSchema>;
 
-export const RUN_STATES = ["checking", "passed", "warned", "failed", "kept", "excluded", "replaced"] as const;
+export const RUN_STATES = [
+  "checking",
+  "passed",
+  "warned",
+  "failed",
+  "kept",
+  "excluded",
+  "replaced",
+] as const;
 export type RunState = (typeof RUN_STATES)[number];
 
 /** A run that may enter an analysis. */

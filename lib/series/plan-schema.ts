@@ -29,14 +29,16 @@ export const sweepPlanSchema = z
     start_Hz: finite.min(1).max(1000).default(20),
     stop_Hz: finite.min(1000).max(96_000).default(20_000),
     length_s: finite.min(1).max(60).default(11.05),
-    rate_Hz: z.union([
-      z.literal(44_100),
-      z.literal(48_000),
-      z.literal(88_200),
-      z.literal(96_000),
-      z.literal(176_400),
-      z.literal(192_000),
-    ]).default(48_000),
+    rate_Hz: z
+      .union([
+        z.literal(44_100),
+        z.literal(48_000),
+        z.literal(88_200),
+        z.literal(96_000),
+        z.literal(176_400),
+        z.literal(192_000),
+      ])
+      .default(48_000),
     lead_in_s: finite.min(0.2).max(10).default(1),
     lead_out_s: finite.min(0.2).max(10).default(0.8),
   })
@@ -51,7 +53,10 @@ export const planSchema = z
     place: z
       .strictObject({
         environment: z.enum(ENVIRONMENTS).default("anechoic"),
-        distance_m: finite.min(0.25, "Distance must be from 0.25 to 10 m.").max(10, "Distance must be from 0.25 to 10 m.").default(1),
+        distance_m: finite
+          .min(0.25, "Distance must be from 0.25 to 10 m.")
+          .max(10, "Distance must be from 0.25 to 10 m.")
+          .default(1),
         gate_ms: finite.min(1).max(1000).nullable().default(null),
         temperature_C: finite.min(-20).max(60).nullable().default(null),
         tester: z.enum(TESTER_PLACES).default("in-room"),
@@ -86,15 +91,29 @@ export const planSchema = z
       .max(12, "A series has at most twelve levels.")
       .default([76, 86, 96, 102].map((level_dB) => ({ level_dB, long_term: false, repeats: 0 }))),
     variants: z
-      .array(z.strictObject({ text: z.string().trim().min(1).max(120), level_dB: finite.min(40).max(130) }))
+      .array(
+        z.strictObject({
+          text: z.string().trim().min(1).max(120),
+          level_dB: finite.min(40).max(130),
+        }),
+      )
       .max(24)
       .default([]),
     ambient: z.boolean().default(true),
     closing: z.boolean().default(true),
     sweep: sweepPlanSchema.prefault({}),
-    conditioning: conditioningSchema.prefault({ minutes: 10, crest_dB: 12, rms_re_sweep_dB: -9, gap_s: 0.5 }),
+    conditioning: conditioningSchema.prefault({
+      minutes: 10,
+      crest_dB: 12,
+      rms_re_sweep_dB: -9,
+      gap_s: 0.5,
+    }),
     reference_band_Hz: z.tuple([finite.positive(), finite.positive()]).default([500, 2000]),
-    criteria: z.array(criterionSchema).min(1).max(12).default([...DEFAULT_CRITERIA]),
+    criteria: z
+      .array(criterionSchema)
+      .min(1)
+      .max(12)
+      .default([...DEFAULT_CRITERIA]),
   })
   .refine((p) => new Set(p.levels.map((l) => l.level_dB)).size === p.levels.length, {
     error: "Two levels are the same. Plan a repeat instead.",

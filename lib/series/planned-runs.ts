@@ -46,7 +46,13 @@ export function toPlannedRuns(plan: Plan, fileStem: string): PlannedRun[] {
   const calibrated = plan.calibration.by !== "sensitivity";
 
   if (calibrated) {
-    add({ ...plain, slot: "calibrator-before", role: "calibrator-before", label: "calibrator", stem: "calibrator" });
+    add({
+      ...plain,
+      slot: "calibrator-before",
+      role: "calibrator-before",
+      label: "calibrator",
+      stem: "calibrator",
+    });
   }
   if (plan.ambient) {
     add({ ...plain, slot: "ambient", role: "ambient", label: "room noise", stem: "room" });
@@ -106,7 +112,13 @@ export function toPlannedRuns(plan: Plan, fileStem: string): PlannedRun[] {
     });
   }
   if (plan.calibration.by === "calibrator-before-after") {
-    add({ ...plain, slot: "calibrator-after", role: "calibrator-after", label: "calibrator, after", stem: "calibrator_after" });
+    add({
+      ...plain,
+      slot: "calibrator-after",
+      role: "calibrator-after",
+      label: "calibrator, after",
+      stem: "calibrator_after",
+    });
   }
   return runs;
 }

@@ -58,8 +58,14 @@ export const stimulusSchema = z
     lead_in_s: finite.min(0).max(60).default(0),
     lead_out_s: finite.min(0).max(60).default(0),
   })
-  .refine((s) => s.stop_Hz >= 2 * s.start_Hz, { error: "stop_Hz must be at least twice start_Hz", path: ["stop_Hz"] })
-  .refine((s) => s.stop_Hz <= s.rate_Hz / 2, { error: "stop_Hz must not pass half of rate_Hz", path: ["stop_Hz"] });
+  .refine((s) => s.stop_Hz >= 2 * s.start_Hz, {
+    error: "stop_Hz must be at least twice start_Hz",
+    path: ["stop_Hz"],
+  })
+  .refine((s) => s.stop_Hz <= s.rate_Hz / 2, {
+    error: "stop_Hz must not pass half of rate_Hz",
+    path: ["stop_Hz"],
+  });
 export type Stimulus = z.infer<typeof stimulusSchema>;
 
 export const calibrationSchema = z.union([
@@ -95,7 +101,11 @@ export const runSchema = z.strictObject({
 export type Run = z.infer<typeof runSchema>;
 
 export const settingsSchema = z.strictObject({
-  criteria: z.array(criterionSchema).min(1).max(12).default([...DEFAULT_CRITERIA]),
+  criteria: z
+    .array(criterionSchema)
+    .min(1)
+    .max(12)
+    .default([...DEFAULT_CRITERIA]),
 });
 export type Settings = z.infer<typeof settingsSchema>;
 
