@@ -9,7 +9,13 @@ export default defineConfig({
         extends: true,
         test: {
           name: "unit",
-          include: ["lib/**/*.test.ts", "components/**/*.test.{ts,tsx}", "workers/**/*.test.ts", "db/**/*.test.ts", "scripts/**/*.test.ts"],
+          include: [
+            "lib/**/*.test.ts",
+            "components/**/*.test.{ts,tsx}",
+            "workers/**/*.test.ts",
+            "db/**/*.test.ts",
+            "scripts/**/*.test.ts",
+          ],
         },
       },
       {
