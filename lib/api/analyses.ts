@@ -5,6 +5,7 @@ import { defineOperation } from "./operation";
 import { failureSchema, progressSchema } from "./series";
 
 export const ANALYSIS_STATES = ["queued", "running", "done", "failed", "cancelled"] as const;
+export type AnalysisState = (typeof ANALYSIS_STATES)[number];
 
 export const analysisViewSchema = z.object({
   id: idSchema,

@@ -73,6 +73,7 @@ export const ERROR_TABLE = {
   "config.invalid": final(500, "A setting is wrong"),
   "queue.unavailable": passing(503, "The queue cannot be reached"),
   "database.unavailable": passing(503, "The database cannot be reached"),
+  "database.migration": final(500, "The database could not be brought up to date"),
   internal: passing(500, "Something went wrong on our side"),
 } as const satisfies Record<string, ErrorRow>;
 

@@ -16,7 +16,11 @@ export function toResultText(result: Result): string {
   return `${JSON.stringify(resultSchema.parse(result))}\n`;
 }
 
-export function toResultParts(result: Result): { head: ResultHead; runs: ResultRun[]; bands: Band[] } {
+export function toResultParts(result: Result): {
+  head: ResultHead;
+  runs: ResultRun[];
+  bands: Band[];
+} {
   const { runs, bands, ...head } = result;
   return { head, runs, bands };
 }

@@ -1,0 +1,43 @@
+/** The only place that makes a connection pool. */
+import { Kysely, PostgresDialect, type Transaction } from "kysely";
+import pg from "pg";
+import type { Database } from "./schema/database";
+
+export type Db = Kysely<Database>;
+export type Trx = Transaction<Database>;
+
+export interface DatabaseOptions {
+  connectionString: string;
+  /** Connections at most. */
+  max?: number;
+  /** Shown in pg_stat_activity. */
+  applicationName?: string;
+  /** Role to take right after connecting, for migrations. */
+  role?: string;
+  /** Told when an idle connection breaks; the pool replaces it by itself. */
+  onIdleError?: (error: Error) => void;
+}
+
+/** Every bigint of ours (bytes, event numbers) lies under 2^53. */
+const parseInt8 = (text: string): number => Number(text);
+
+/** A pool of its own; the caller ends it with destroy(). */
+export function createDatabase(options: DatabaseOptions): Db {
+  return new Kysely<Database>({ dialect: new PostgresDialect({ pool: createPool(options) }) });
+}
+
+export function createPool(options: DatabaseOptions): pg.Pool {
+  const types = new pg.TypeOverrides();
+  types.setTypeParser(pg.types.builtins.INT8, parseInt8);
+  const pool = new pg.Pool({
+    connectionString: options.connectionString,
+    max: options.max ?? 8,
+    application_name: options.applicationName ?? "tidemark",
+    connectionTimeoutMillis: 10_000,
+    ...(options.role === undefined ? {} : { options: `-c role=${options.role}` }),
+    types,
+  });
+  // Without a listener a restart of PostgreSQL would end the process.
+  pool.on("error", options.onIdleError ?? (() => undefined));
+  return pool;
+}

@@ -1,0 +1,15 @@
+/** Every migration in its order, as a list that bundles. Append only. */
+import type { Migration } from "kysely";
+import * as people from "./20261201t0900-people";
+import * as capture from "./20261201t0901-capture";
+import * as analyses from "./20261201t0902-analyses";
+import * as audit from "./20261201t0903-audit";
+import * as lookups from "./20261201t0904-lookups";
+
+export const MIGRATIONS: Readonly<Record<string, Migration>> = {
+  "20261201t0900-people": people,
+  "20261201t0901-capture": capture,
+  "20261201t0902-analyses": analyses,
+  "20261201t0903-audit": audit,
+  "20261201t0904-lookups": lookups,
+};

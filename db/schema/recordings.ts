@@ -1,0 +1,11 @@
+import type { Moment } from "./columns";
+
+/** What lies in storage for a lab. */
+export interface RecordingsTable {
+  lab_id: string;
+  /** SHA-256 of the bytes, hex. */
+  digest: string;
+  bytes: number;
+  media: string;
+  created_at: Moment;
+}

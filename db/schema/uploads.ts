@@ -1,0 +1,20 @@
+import type { Generated } from "kysely";
+import type { MaybeMoment, MaybeText, Moment } from "./columns";
+
+/** An upload under way; not yet a run. */
+export interface UploadsTable {
+  id: string;
+  lab_id: string;
+  series_id: string;
+  slot: MaybeText;
+  /** Microphone channel, from 1. */
+  channel: Generated<number>;
+  file_name: string;
+  bytes: number;
+  received: Generated<number>;
+  account_id: string;
+  token_id: MaybeText;
+  created_at: Moment;
+  expires_at: Moment;
+  finished_at: MaybeMoment;
+}
