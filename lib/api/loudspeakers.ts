@@ -29,6 +29,17 @@ export const loudspeakerInputSchema = z.strictObject({
 });
 export type LoudspeakerInput = z.infer<typeof loudspeakerInputSchema>;
 
+/** What is left out stays as it is: hence no defaults here. */
+export const loudspeakerChangeSchema = z
+  .strictObject({
+    ...loudspeakerInputSchema.shape,
+    serial: loudspeakerInputSchema.shape.serial.unwrap(),
+    largest_dimension_m: loudspeakerInputSchema.shape.largest_dimension_m.unwrap(),
+    tuning_Hz: loudspeakerInputSchema.shape.tuning_Hz.unwrap(),
+  })
+  .partial();
+export type LoudspeakerChange = z.infer<typeof loudspeakerChangeSchema>;
+
 export const loudspeakerSchema = z.object({
   id: idSchema,
   maker: z.string(),
@@ -90,7 +101,7 @@ export const updateLoudspeaker = defineOperation({
   summary: "Change a loudspeaker's particulars",
   access: "capture",
   params,
-  body: loudspeakerInputSchema.partial(),
+  body: loudspeakerChangeSchema,
   status: 200,
   answer: loudspeakerSchema,
   errors: ["not-found", "request.invalid"],
