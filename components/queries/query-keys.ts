@@ -1,0 +1,18 @@
+/** Every key of the browser's cache, once: what a fetch is stored under and what an act makes stale. */
+import type { z } from "zod";
+import type { seriesQuerySchema } from "@/lib/api/series";
+
+export type SeriesListQuery = z.input<typeof seriesQuerySchema>;
+
+export const queryKeys = {
+  /** Every page of the list; an act on a series makes them all stale. */
+  seriesLists: ["series-list"],
+  seriesList: (query: SeriesListQuery) => ["series-list", query],
+  series: (seriesId: string) => ["series", seriesId],
+  runs: (seriesId: string) => ["series", seriesId, "runs"],
+  history: (seriesId: string) => ["series", seriesId, "history"],
+  analyses: (seriesId: string) => ["series", seriesId, "analyses"],
+  loudspeakers: ["loudspeakers"],
+  loudspeakerList: (search: string) => ["loudspeakers", "list", search],
+  loudspeaker: (loudspeakerId: string) => ["loudspeakers", loudspeakerId],
+} as const;
