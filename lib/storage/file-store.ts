@@ -100,9 +100,9 @@ async function streamFile(
   const iterator: AsyncIterator<Buffer> = Readable.prototype[Symbol.asyncIterator].call(file);
   return new ReadableStream<Uint8Array>({
     async pull(controller) {
-      const { done, value } = await iterator.next();
-      if (done === true) controller.close();
-      else controller.enqueue(new Uint8Array(value));
+      const piece: IteratorResult<Buffer, unknown> = await iterator.next();
+      if (piece.done === true) controller.close();
+      else controller.enqueue(new Uint8Array(piece.value));
     },
     cancel() {
       file.destroy();
