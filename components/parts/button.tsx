@@ -14,7 +14,8 @@ const TONES: Record<ButtonTone, string> = {
   decision: "border-overprint bg-overprint text-on-overprint",
   second: "border-edge bg-sheet text-ink hover:bg-wash",
   "decision-second": "border-edge bg-sheet text-overprint hover:bg-overprint-wash",
-  quiet: "border-transparent bg-transparent text-ink underline decoration-1 underline-offset-3 hover:decoration-2 px-1.5!",
+  quiet:
+    "border-transparent bg-transparent text-ink underline decoration-1 underline-offset-3 hover:decoration-2 px-1.5!",
 };
 
 const SIZES: Record<ButtonSize, string> = {
@@ -40,14 +41,25 @@ interface ButtonProps extends ButtonHTMLAttributes<HTMLButtonElement> {
 }
 
 /** `<Button tone="main" onClick={save}>Save</Button>`. A button that cannot be used now is `Unavailable`. */
-export function Button({ tone = "second", size = "normal", busy = false, className, children, ...rest }: ButtonProps) {
+export function Button({
+  tone = "second",
+  size = "normal",
+  busy = false,
+  className,
+  children,
+  ...rest
+}: ButtonProps) {
   return (
     <button
       type="button"
       {...rest}
       aria-busy={busy || undefined}
       disabled={rest.disabled === true || busy}
-      className={buttonClasses(tone, size, joinClasses("disabled:cursor-default disabled:opacity-60", className))}
+      className={buttonClasses(
+        tone,
+        size,
+        joinClasses("disabled:cursor-default disabled:opacity-60", className),
+      )}
     >
       {children}
     </button>
@@ -65,7 +77,14 @@ interface LinkButtonProps {
 }
 
 /** A link that looks like a button: it goes somewhere, it changes nothing. */
-export function LinkButton({ href, tone = "second", size = "normal", className, children, download }: LinkButtonProps) {
+export function LinkButton({
+  href,
+  tone = "second",
+  size = "normal",
+  className,
+  children,
+  download,
+}: LinkButtonProps) {
   const classes = buttonClasses(tone, size, className);
   if (download !== undefined) {
     return (

@@ -24,7 +24,9 @@ export function CauseMark({ cause, ink = "ink", size = 16, label }: CauseMarkPro
       aria-label={label}
       aria-hidden={label === undefined ? true : undefined}
     >
-      <Shapes shapes={causeShapes(cause, cause === "open" && ink === "ink" ? COLOURS.ink3 : COLOURS[ink])} />
+      <Shapes
+        shapes={causeShapes(cause, cause === "open" && ink === "ink" ? COLOURS.ink3 : COLOURS[ink])}
+      />
     </svg>
   );
 }

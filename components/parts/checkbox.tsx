@@ -10,7 +10,13 @@ interface CheckboxProps extends Omit<InputHTMLAttributes<HTMLInputElement>, "typ
   figures?: boolean;
 }
 
-export function Checkbox({ children, tone = "ink", figures = false, className, ...rest }: CheckboxProps) {
+export function Checkbox({
+  children,
+  tone = "ink",
+  figures = false,
+  className,
+  ...rest
+}: CheckboxProps) {
   return (
     <label
       className={joinClasses(

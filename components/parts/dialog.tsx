@@ -18,7 +18,14 @@ interface DialogProps {
  * A question over the page, for what cannot be undone. The browser's own dialog keeps the focus
  * inside, answers Esc and needs no style of its own injected, which the page's policy forbids.
  */
-export function Dialog({ open, onClose, title, children, actions, cancelWords = "Cancel" }: DialogProps) {
+export function Dialog({
+  open,
+  onClose,
+  title,
+  children,
+  actions,
+  cancelWords = "Cancel",
+}: DialogProps) {
   const ref = useRef<HTMLDialogElement>(null);
   const titleId = useId();
 
@@ -30,6 +37,7 @@ export function Dialog({ open, onClose, title, children, actions, cancelWords = 
   }, [open]);
 
   return (
+    // oxlint-disable-next-line jsx-a11y/no-noninteractive-element-interactions -- a press outside closes; Esc does the same
     <dialog
       ref={ref}
       aria-labelledby={titleId}

@@ -18,7 +18,15 @@ interface FaultBarProps {
 }
 
 /** A bar at the left, the cause in plain words, what is safe, then the remedies in order. */
-export function FaultBar({ title, children, actions, report, tone = "fault", announce = true, className }: FaultBarProps) {
+export function FaultBar({
+  title,
+  children,
+  actions,
+  report,
+  tone = "fault",
+  announce = true,
+  className,
+}: FaultBarProps) {
   return (
     <section
       role={announce ? "alert" : undefined}
@@ -30,8 +38,12 @@ export function FaultBar({ title, children, actions, report, tone = "fault", ann
     >
       <h3 className="text-section">{title}</h3>
       {children !== undefined && <div className="mt-1 max-w-prose">{children}</div>}
-      {actions !== undefined && <div className="mt-3 flex flex-wrap items-center gap-2.5">{actions}</div>}
-      {report !== undefined && <p className="figures mt-3 text-label text-ink-2 select-all">{report}</p>}
+      {actions !== undefined && (
+        <div className="mt-3 flex flex-wrap items-center gap-2.5">{actions}</div>
+      )}
+      {report !== undefined && (
+        <p className="figures mt-3 text-label text-ink-2 select-all">{report}</p>
+      )}
     </section>
   );
 }

@@ -1,4 +1,10 @@
-import { useId, type InputHTMLAttributes, type ReactNode, type SelectHTMLAttributes, type TextareaHTMLAttributes } from "react";
+import {
+  useId,
+  type InputHTMLAttributes,
+  type ReactNode,
+  type SelectHTMLAttributes,
+  type TextareaHTMLAttributes,
+} from "react";
 import { joinClasses } from "./join-classes";
 
 /** What the control inside a field must carry. Spread it: `<TextInput {...props} {...register("serial")} />`. */
@@ -41,7 +47,10 @@ export function Field({ label, error, hint, aside, className, children }: FieldP
       {noted && (
         <p
           id={noteId}
-          className={joinClasses("mt-1", error === undefined ? "text-hint text-ink-2" : "text-[14px]/[19px] text-fault")}
+          className={joinClasses(
+            "mt-1",
+            error === undefined ? "text-hint text-ink-2" : "text-[14px]/[19px] text-fault",
+          )}
         >
           {error ?? hint}
         </p>
@@ -71,13 +80,24 @@ export function TextInput({ size = "form", figures = false, className, ...rest }
     <input
       type="text"
       {...rest}
-      className={joinClasses(CONTROL, HEIGHT[size], figures ? "figures text-[14px]/5" : "text-[15px]/5", className)}
+      className={joinClasses(
+        CONTROL,
+        HEIGHT[size],
+        figures ? "figures text-[14px]/5" : "text-[15px]/5",
+        className,
+      )}
     />
   );
 }
 
 export function TextArea({ className, ...rest }: TextareaHTMLAttributes<HTMLTextAreaElement>) {
-  return <textarea rows={2} {...rest} className={joinClasses(CONTROL, "px-3 py-2.5 text-[15px]/5", className)} />;
+  return (
+    <textarea
+      rows={2}
+      {...rest}
+      className={joinClasses(CONTROL, "px-3 py-2.5 text-[15px]/5", className)}
+    />
+  );
 }
 
 interface SelectProps extends Omit<SelectHTMLAttributes<HTMLSelectElement>, "size"> {
@@ -86,7 +106,13 @@ interface SelectProps extends Omit<SelectHTMLAttributes<HTMLSelectElement>, "siz
 }
 
 /** The browser's own select under our looks: keyboard, phone wheels and readers come with it. */
-export function Select({ size = "form", figures = false, className, children, ...rest }: SelectProps) {
+export function Select({
+  size = "form",
+  figures = false,
+  className,
+  children,
+  ...rest
+}: SelectProps) {
   return (
     <span className={joinClasses("relative block", className)}>
       <select

@@ -1,7 +1,15 @@
 import { joinClasses } from "./join-classes";
 
 /** A key's cap. `plain` takes the colour of the button that it stands on. */
-export function Kbd({ children, plain = false, className }: { children: string; plain?: boolean; className?: string }) {
+export function Kbd({
+  children,
+  plain = false,
+  className,
+}: {
+  children: string;
+  plain?: boolean;
+  className?: string;
+}) {
   return (
     <kbd
       className={joinClasses(

@@ -11,7 +11,13 @@ interface LevelSwatchProps {
 /** A 14 px square of the level's fill under its line. Always beside its number, hence hidden from readers. */
 export function LevelSwatch({ paint, longTerm = false, size = 14 }: LevelSwatchProps) {
   return (
-    <svg className="inline-block flex-none" width={size} height={size} viewBox="0 0 14 14" aria-hidden="true">
+    <svg
+      className="inline-block flex-none"
+      width={size}
+      height={size}
+      viewBox="0 0 14 14"
+      aria-hidden="true"
+    >
       <rect y="1" width="14" height="13" fill={toCss(paint.fill)} />
       <rect width="14" height="2.5" fill={toCss(paint.line)} />
       {longTerm && <rect y="6.5" width="14" height="2.5" fill={toCss(COLOURS.page)} />}

@@ -8,7 +8,13 @@ const GROUND: Record<NoticeGrade, string> = { CAUTION: "bg-caution", WARNING: "b
 /** The alert triangle: black, its mark in the colour behind it. */
 function AlertTriangle({ size }: { size: number }) {
   return (
-    <svg className="flex-none" width={size} height={(size * 22) / 24} viewBox="0 0 24 22" aria-hidden="true">
+    <svg
+      className="flex-none"
+      width={size}
+      height={(size * 22) / 24}
+      viewBox="0 0 24 22"
+      aria-hidden="true"
+    >
       <path
         fill="#000"
         fillRule="evenodd"
@@ -30,7 +36,13 @@ interface SlimNoticeProps {
 /** One line, once in every view that shows a maximum level. Never dismissible, never themed. */
 export function SlimNotice({ grade, lead, children, className }: SlimNoticeProps) {
   return (
-    <p role="note" className={joinClasses("flex items-stretch border border-black bg-white text-[14px]/[19px] text-black", className)}>
+    <p
+      role="note"
+      className={joinClasses(
+        "flex items-stretch border border-black bg-white text-[14px]/[19px] text-black",
+        className,
+      )}
+    >
       <b
         className={joinClasses(
           "flex items-center gap-[7px] border-r border-black py-[5px] pr-3 pl-2.5 font-extrabold tracking-[0.02em] whitespace-nowrap",
@@ -58,7 +70,13 @@ interface BlockNoticeProps {
 }
 
 /** The signal word panel and its sentences, for the calculator and the plan. */
-export function BlockNotice({ grade, lead, children, stacked = false, className }: BlockNoticeProps) {
+export function BlockNotice({
+  grade,
+  lead,
+  children,
+  stacked = false,
+  className,
+}: BlockNoticeProps) {
   return (
     <div
       role="note"

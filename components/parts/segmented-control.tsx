@@ -35,17 +35,34 @@ export function SegmentedControl<Value extends string>({
 }: SegmentedControlProps<Value>) {
   const name = useId();
   return (
-    <fieldset className={joinClasses(wide ? "w-full" : "inline-flex min-w-0 items-center gap-2.5", className)}>
-      <legend className={joinClasses("figures text-label text-ink-2", hideLegend ? "sr-only" : "float-left")}>
+    <fieldset
+      className={joinClasses(
+        wide ? "w-full" : "inline-flex min-w-0 items-center gap-2.5",
+        className,
+      )}
+    >
+      <legend
+        className={joinClasses(
+          "figures text-label text-ink-2",
+          hideLegend ? "sr-only" : "float-left",
+        )}
+      >
         {legend}
       </legend>
-      <span className={joinClasses("flex min-w-0 overflow-x-auto rounded-control border border-edge bg-sheet p-px focus-within:overflow-visible", wide && "w-full")}>
+      <span
+        className={joinClasses(
+          "flex min-w-0 overflow-x-auto rounded-control border border-edge bg-sheet p-px focus-within:overflow-visible",
+          wide && "w-full",
+        )}
+      >
         {segments.map((segment) => (
           <label
             key={segment.value}
             className={joinClasses(
               "figures relative flex items-center justify-center gap-1.5 border-l border-rule px-[11px] text-label font-medium whitespace-nowrap text-ink-2 first:border-l-0",
-              wide ? "flex-1 py-2.5 text-center whitespace-normal!" : "py-[6px] max-md:min-h-[42px]",
+              wide
+                ? "flex-1 py-2.5 text-center whitespace-normal!"
+                : "py-[6px] max-md:min-h-[42px]",
               "not-has-checked:not-has-disabled:hover:bg-wash has-checked:bg-ink has-checked:text-on-ink has-disabled:text-ink-3 has-disabled:line-through",
               "has-focus-visible:z-10 has-focus-visible:outline-3 has-focus-visible:outline-offset-2 has-focus-visible:outline-overprint",
             )}
@@ -60,7 +77,9 @@ export function SegmentedControl<Value extends string>({
               onChange={() => onChange(segment.value)}
             />
             {segment.label}
-            {segment.count !== undefined && <span className="font-normal opacity-80">{segment.count}</span>}
+            {segment.count !== undefined && (
+              <span className="font-normal opacity-80">{segment.count}</span>
+            )}
           </label>
         ))}
       </span>

@@ -11,6 +11,7 @@ interface ShapesProps {
 
 export function Shapes({ shapes, patternId = "" }: ShapesProps): ReactNode {
   // Shapes of a figure are recomputed as a whole and never reordered: their place is their key.
+  // oxlint-disable-next-line react/no-array-index-key
   return shapes.map((shape, at) => <ShapeOf key={at} shape={shape} patternId={patternId} />);
 }
 
@@ -22,7 +23,10 @@ const toFill = (fill: Fill | undefined, patternId: string): string => {
 function ShapeOf({ shape, patternId }: { shape: Shape; patternId: string }): ReactNode {
   const role = shape.role;
   if (shape.kind === "group") {
-    const place = shape.x === undefined && shape.y === undefined ? "" : `translate(${shape.x ?? 0} ${shape.y ?? 0})`;
+    const place =
+      shape.x === undefined && shape.y === undefined
+        ? ""
+        : `translate(${shape.x ?? 0} ${shape.y ?? 0})`;
     const scale = shape.scale === undefined ? "" : ` scale(${shape.scale})`;
     return (
       <g data-role={role} data-band={shape.band} transform={`${place}${scale}`.trim() || undefined}>
@@ -34,7 +38,12 @@ function ShapeOf({ shape, patternId }: { shape: Shape; patternId: string }): Rea
     const halo =
       shape.halo === undefined
         ? {}
-        : { stroke: toCss(shape.halo), strokeWidth: 4, strokeLinejoin: "round" as const, paintOrder: "stroke" };
+        : {
+            stroke: toCss(shape.halo),
+            strokeWidth: 4,
+            strokeLinejoin: "round" as const,
+            paintOrder: "stroke",
+          };
     return (
       <text
         data-role={role}
@@ -58,34 +67,42 @@ function ShapeOf({ shape, patternId }: { shape: Shape; patternId: string }): Rea
     strokeWidth: shape.stroke === undefined ? undefined : (shape.strokeWidth ?? 1),
     strokeDasharray: shape.dash?.join(" "),
   };
-  switch (shape.kind) {
-    case "rect":
-      return (
-        <rect
-          {...pen}
-          x={shape.x}
-          y={shape.y}
-          width={shape.width}
-          height={shape.height}
-          fill={toFill(shape.fill, patternId)}
-          opacity={shape.opacity}
-          shapeRendering={shape.crisp ? "crispEdges" : undefined}
-        />
-      );
-    case "line":
-      return (
-        <line
-          {...pen}
-          x1={shape.x1}
-          y1={shape.y1}
-          x2={shape.x2}
-          y2={shape.y2}
-          shapeRendering={shape.crisp ? "crispEdges" : undefined}
-        />
-      );
-    case "circle":
-      return <circle {...pen} cx={shape.cx} cy={shape.cy} r={shape.r} fill={toFill(shape.fill, patternId)} />;
-    case "path":
-      return <path {...pen} d={shape.d} fill={toFill(shape.fill, patternId)} opacity={shape.opacity} />;
+  if (shape.kind === "rect") {
+    return (
+      <rect
+        {...pen}
+        x={shape.x}
+        y={shape.y}
+        width={shape.width}
+        height={shape.height}
+        fill={toFill(shape.fill, patternId)}
+        opacity={shape.opacity}
+        shapeRendering={shape.crisp ? "crispEdges" : undefined}
+      />
+    );
   }
+  if (shape.kind === "line") {
+    return (
+      <line
+        {...pen}
+        x1={shape.x1}
+        y1={shape.y1}
+        x2={shape.x2}
+        y2={shape.y2}
+        shapeRendering={shape.crisp ? "crispEdges" : undefined}
+      />
+    );
+  }
+  if (shape.kind === "circle") {
+    return (
+      <circle
+        {...pen}
+        cx={shape.cx}
+        cy={shape.cy}
+        r={shape.r}
+        fill={toFill(shape.fill, patternId)}
+      />
+    );
+  }
+  return <path {...pen} d={shape.d} fill={toFill(shape.fill, patternId)} opacity={shape.opacity} />;
 }

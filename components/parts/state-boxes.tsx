@@ -1,7 +1,13 @@
 import { joinClasses } from "./join-classes";
 import { VerdictMark } from "./verdict";
 
-export const STATE_BOX_NAMES = ["captured", "analysed", "in review", "signed off", "published"] as const;
+export const STATE_BOX_NAMES = [
+  "captured",
+  "analysed",
+  "in review",
+  "signed off",
+  "published",
+] as const;
 export type StateBoxName = (typeof STATE_BOX_NAMES)[number];
 
 export interface StateBox {
@@ -15,11 +21,24 @@ export interface StateBox {
 }
 
 /** The five boxes of a series' life, derived from its state by the caller. */
-export function StateBoxes({ boxes, className }: { boxes: readonly StateBox[]; className?: string }) {
+export function StateBoxes({
+  boxes,
+  className,
+}: {
+  boxes: readonly StateBox[];
+  className?: string;
+}) {
   return (
-    <ol className={joinClasses("flex w-full gap-[3px] max-md:flex-col max-md:gap-2.5", className)} aria-label="State of the series">
+    <ol
+      className={joinClasses("flex w-full gap-[3px] max-md:flex-col max-md:gap-2.5", className)}
+      aria-label="State of the series"
+    >
       {boxes.map((box) => (
-        <li key={box.name} className="min-w-0 flex-1" aria-current={box.state === "now" ? "step" : undefined}>
+        <li
+          key={box.name}
+          className="min-w-0 flex-1"
+          aria-current={box.state === "now" ? "step" : undefined}
+        >
           <BoxBar filled={box.filled} next={box.state === "next"} />
           <span
             className={joinClasses(
@@ -47,7 +66,10 @@ function BoxBar({ filled, next }: { filled: number; next: boolean }) {
   const width = Math.round(Math.min(1, Math.max(0, filled)) * 1000) / 10;
   return (
     <svg
-      className={joinClasses("mb-[7px] block h-[9px] w-full border bg-sheet", next ? "border-edge" : "border-ink")}
+      className={joinClasses(
+        "mb-[7px] block h-[9px] w-full border bg-sheet",
+        next ? "border-edge" : "border-ink",
+      )}
       viewBox="0 0 100 9"
       preserveAspectRatio="none"
       aria-hidden="true"
@@ -64,7 +86,15 @@ function BoxBar({ filled, next }: { filled: number; next: boolean }) {
 }
 
 /** The same as five small squares for a list row, with the word beside it. */
-export function StateSquares({ boxes, word, note }: { boxes: readonly StateBox[]; word: string; note: string }) {
+export function StateSquares({
+  boxes,
+  word,
+  note,
+}: {
+  boxes: readonly StateBox[];
+  word: string;
+  note: string;
+}) {
   return (
     <span className="inline-grid grid-cols-[auto_1fr] items-center gap-x-[9px] text-[15px]/[19px]">
       <svg width="58" height="9" viewBox="0 0 58 9" aria-hidden="true">
@@ -79,7 +109,13 @@ export function StateSquares({ boxes, word, note }: { boxes: readonly StateBox[]
               className={box.state === "next" ? "fill-sheet stroke-edge" : "fill-sheet stroke-ink"}
             />
             {box.state !== "next" && (
-              <rect x="0.5" y={box.state === "done" ? 0.5 : 4.5} width="9" height={box.state === "done" ? 8 : 4} className="fill-ink" />
+              <rect
+                x="0.5"
+                y={box.state === "done" ? 0.5 : 4.5}
+                width="9"
+                height={box.state === "done" ? 8 : 4}
+                className="fill-ink"
+              />
             )}
           </g>
         ))}

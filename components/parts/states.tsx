@@ -18,11 +18,18 @@ interface EmptyStateProps {
 
 export function EmptyState({ title, children, actions, figure, className }: EmptyStateProps) {
   return (
-    <section className={joinClasses("border border-rule bg-sheet px-6 py-[22px] max-md:px-phone", className)}>
+    <section
+      className={joinClasses(
+        "border border-rule bg-sheet px-6 py-[22px] max-md:px-phone",
+        className,
+      )}
+    >
       {figure !== undefined && <div className="mb-3">{figure}</div>}
       <h2 className="text-big">{title}</h2>
       <div className="mt-1 max-w-prose text-ink-2">{children}</div>
-      {actions !== undefined && <div className="mt-3.5 flex flex-wrap items-center gap-2.5">{actions}</div>}
+      {actions !== undefined && (
+        <div className="mt-3.5 flex flex-wrap items-center gap-2.5">{actions}</div>
+      )}
     </section>
   );
 }
@@ -48,7 +55,7 @@ export function LoadingState({ label, figure, onRetry }: LoadingStateProps) {
     };
   }, []);
   return (
-    <div role="status" aria-label={label} className="min-h-24">
+    <output aria-label={label} className="block min-h-24">
       {stage !== "quiet" && (
         <>
           <span className="block h-6 w-52 max-w-full bg-wash" />
@@ -66,7 +73,7 @@ export function LoadingState({ label, figure, onRetry }: LoadingStateProps) {
           )}
         </p>
       )}
-    </div>
+    </output>
   );
 }
 
@@ -79,11 +86,15 @@ interface ConnectionBarProps {
 /** A bar under the header, not a dialog. */
 export function ConnectionBar({ children, onRetry }: ConnectionBarProps) {
   return (
-    <div role="status" className="flex items-center gap-3 bg-ink px-gutter py-2.5 text-on-ink max-md:px-phone">
+    <output className="flex items-center gap-3 bg-ink px-gutter py-2.5 text-on-ink max-md:px-phone">
       <p className="mr-auto">{children}</p>
-      <Button size="small" onClick={onRetry} className="border-current! bg-transparent! text-inherit!">
+      <Button
+        size="small"
+        onClick={onRetry}
+        className="border-current! bg-transparent! text-inherit!"
+      >
         Try now
       </Button>
-    </div>
+    </output>
   );
 }

@@ -3,7 +3,15 @@ import { joinClasses } from "./join-classes";
 
 /** A dense table: hairlines between rows, an ink line under the head. Wrap in `TableFrame` where it may be wider than its place. */
 export function Table({ className, ...rest }: ComponentProps<"table">) {
-  return <table {...rest} className={joinClasses("w-full border-collapse border border-rule bg-sheet text-left", className)} />;
+  return (
+    <table
+      {...rest}
+      className={joinClasses(
+        "w-full border-collapse border border-rule bg-sheet text-left",
+        className,
+      )}
+    />
+  );
 }
 
 interface TableFrameProps {
@@ -49,9 +57,21 @@ interface SortThProps extends ThProps {
 }
 
 /** A head that sorts: bold with a triangle while it does. */
-export function SortTh({ sorted, onSort, right = false, children, className, ...rest }: SortThProps) {
+export function SortTh({
+  sorted,
+  onSort,
+  right = false,
+  children,
+  className,
+  ...rest
+}: SortThProps) {
   return (
-    <Th {...rest} right={right} aria-sort={sorted ?? undefined} className={joinClasses("py-0!", className)}>
+    <Th
+      {...rest}
+      right={right}
+      aria-sort={sorted ?? undefined}
+      className={joinClasses("py-0!", className)}
+    >
       <button
         type="button"
         onClick={onSort}
@@ -61,8 +81,17 @@ export function SortTh({ sorted, onSort, right = false, children, className, ...
         )}
       >
         {children}
-        <svg width="9" height="6" viewBox="0 0 9 6" aria-hidden="true" className={sorted === null ? "invisible" : undefined}>
-          <path fill="currentColor" d={sorted === "ascending" ? "M0 6h9L4.5 0z" : "M0 0h9L4.5 6z"} />
+        <svg
+          width="9"
+          height="6"
+          viewBox="0 0 9 6"
+          aria-hidden="true"
+          className={sorted === null ? "invisible" : undefined}
+        >
+          <path
+            fill="currentColor"
+            d={sorted === "ascending" ? "M0 6h9L4.5 0z" : "M0 0h9L4.5 6z"}
+          />
         </svg>
       </button>
     </Th>

@@ -22,7 +22,10 @@ export function Tabs({ label, tabs, className }: TabsProps) {
   return (
     <nav
       aria-label={label}
-      className={joinClasses("flex items-baseline gap-x-[17px] overflow-x-auto overflow-y-hidden max-md:-mx-phone max-md:px-phone", className)}
+      className={joinClasses(
+        "flex items-baseline gap-x-[17px] overflow-x-auto overflow-y-hidden max-md:-mx-phone max-md:px-phone",
+        className,
+      )}
     >
       {tabs.map((tab) => {
         const current = path === tab.href;

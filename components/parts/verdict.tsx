@@ -22,38 +22,32 @@ export function VerdictMark({ kind, size = 14, label }: VerdictMarkProps) {
       aria-label={label}
       aria-hidden={label === undefined ? true : undefined}
     >
-      <VerdictShape kind={kind} />
+      {SHAPES[kind]}
     </svg>
   );
 }
 
-function VerdictShape({ kind }: { kind: VerdictKind }) {
-  const pen = { fill: "none", stroke: "currentColor", strokeWidth: 1.5 };
-  switch (kind) {
-    case "ok":
-    case "warned":
-      return <path {...pen} strokeWidth={2.2} d="M2 7.5 5.6 11 12 3.5" />;
-    case "bad":
-      return (
-        <path
-          fill="currentColor"
-          fillRule="evenodd"
-          d="M1 1h12v12H1zM4.8 3.6 3.6 4.8 5.8 7 3.6 9.2l1.2 1.2L7 8.2l2.2 2.2 1.2-1.2L8.2 7l2.2-2.2-1.2-1.2L7 5.8z"
-        />
-      );
-    case "wait":
-      return <rect {...pen} x="1.8" y="1.8" width="10.4" height="10.4" strokeDasharray="2.6 2" />;
-    case "going":
-      return (
-        <>
-          <rect {...pen} x="1.8" y="1.8" width="10.4" height="10.4" />
-          <rect fill="currentColor" x="1.8" y="7" width="10.4" height="5.2" />
-        </>
-      );
-    case "locked":
-      return <path {...pen} d="M1.5 6.5h10v6.7h-10zM3.7 6.3V4.2a2.8 2.8 0 0 1 5.6 0v2.1" />;
-  }
-}
+const PEN = { fill: "none", stroke: "currentColor", strokeWidth: 1.5 };
+const TICK = <path {...PEN} strokeWidth={2.2} d="M2 7.5 5.6 11 12 3.5" />;
+const SHAPES: Record<VerdictKind, ReactNode> = {
+  ok: TICK,
+  warned: TICK,
+  bad: (
+    <path
+      fill="currentColor"
+      fillRule="evenodd"
+      d="M1 1h12v12H1zM4.8 3.6 3.6 4.8 5.8 7 3.6 9.2l1.2 1.2L7 8.2l2.2 2.2 1.2-1.2L8.2 7l2.2-2.2-1.2-1.2L7 5.8z"
+    />
+  ),
+  wait: <rect {...PEN} x="1.8" y="1.8" width="10.4" height="10.4" strokeDasharray="2.6 2" />,
+  going: (
+    <>
+      <rect {...PEN} x="1.8" y="1.8" width="10.4" height="10.4" />
+      <rect fill="currentColor" x="1.8" y="7" width="10.4" height="5.2" />
+    </>
+  ),
+  locked: <path {...PEN} d="M1.5 6.5h10v6.7h-10zM3.7 6.3V4.2a2.8 2.8 0 0 1 5.6 0v2.1" />,
+};
 
 interface VerdictProps {
   kind: VerdictKind;
@@ -77,7 +71,9 @@ export function Verdict({ kind, children, note }: VerdictProps) {
         <VerdictMark kind={kind} />
         {children}
       </span>
-      {note !== undefined && <span className="figures block pl-5 text-label text-ink-2">{note}</span>}
+      {note !== undefined && (
+        <span className="figures block pl-5 text-label text-ink-2">{note}</span>
+      )}
     </span>
   );
 }
