@@ -1,8 +1,15 @@
-/**
- * Which way imports point, as drawn in DEVELOPERS.md. Tests may reach into any room.
- * @type {import("dependency-cruiser").IConfiguration}
- */
+// @ts-check
+/** Which way imports point, as drawn in DEVELOPERS.md. Tests may reach into any room. */
+
 const test = "\\.test\\.tsx?$|^tests/";
+
+/**
+ * @param {string} name
+ * @param {string} from files that the rule binds
+ * @param {string} to what they must not import
+ * @param {string} why
+ * @returns {import("dependency-cruiser").IForbiddenRuleType}
+ */
 const arrow = (name, from, to, why) => ({
   name,
   severity: "error",
@@ -11,6 +18,7 @@ const arrow = (name, from, to, why) => ({
   to: { path: to },
 });
 
+/** @type {import("dependency-cruiser").IConfiguration} */
 export default {
   forbidden: [
     arrow(

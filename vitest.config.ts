@@ -26,6 +26,7 @@ export default defineConfig({
         extends: true,
         test: {
           name: "rooms",
+          globalSetup: ["tests/support/global-setup.ts"],
           include: ["tests/{db,api,workers,e2e,setup}/**/*.test.ts"],
           testTimeout: 60_000,
           hookTimeout: 120_000,

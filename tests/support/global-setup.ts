@@ -1,0 +1,16 @@
+/** Starts the database cluster of a test run and tells the suites where it is. */
+import type { TestProject } from "vitest/node";
+import { startTestCluster, type TestCluster } from "./test-cluster";
+
+declare module "vitest" {
+  // Vitest reads what is provided from this interface.
+  interface ProvidedContext {
+    cluster: TestCluster;
+  }
+}
+
+export async function setup(project: TestProject): Promise<() => Promise<void>> {
+  const { databasePort, secrets, stop } = await startTestCluster();
+  project.provide("cluster", { databasePort, secrets });
+  return stop;
+}
