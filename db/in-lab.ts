@@ -1,7 +1,7 @@
 /** Transactions that carry who acts and in which lab; row-level security reads it. */
-import { sql, type Kysely } from "kysely";
+import { sql } from "kysely";
 import type { Db, Trx } from "./client";
-import type { Database } from "./schema/database";
+import { toDatabaseError } from "./database-error";
 
 export interface LabScope {
   labId: string;
@@ -12,30 +12,28 @@ export interface LabScope {
 }
 
 /** Runs `act` in one transaction that sees the rows of this lab and no others. */
-export async function inLab<T>(db: Db, scope: LabScope, act: (trx: Trx) => Promise<T>): Promise<T> {
-  return db.transaction().execute(async (trx) => {
-    await setScope(trx, scope.labId, scope.accountId);
-    return act(trx);
-  });
+export function inLab<T>(db: Db, scope: LabScope, act: (trx: Trx) => Promise<T>): Promise<T> {
+  return inScope(db, scope.labId, scope.accountId, act);
 }
 
 /** Runs `act` in one transaction that sees what belongs to the account itself. */
-export async function asAccount<T>(
-  db: Db,
-  accountId: string,
-  act: (trx: Trx) => Promise<T>,
-): Promise<T> {
-  return db.transaction().execute(async (trx) => {
-    await setScope(trx, null, accountId);
-    return act(trx);
-  });
+export function asAccount<T>(db: Db, accountId: string, act: (trx: Trx) => Promise<T>): Promise<T> {
+  return inScope(db, null, accountId, act);
 }
 
-async function setScope(
-  trx: Kysely<Database>,
+async function inScope<T>(
+  db: Db,
   labId: string | null,
   accountId: string | null,
-): Promise<void> {
-  await sql`select set_config('tidemark.lab', ${labId ?? ""}, true),
-    set_config('tidemark.account', ${accountId ?? ""}, true)`.execute(trx);
+  act: (trx: Trx) => Promise<T>,
+): Promise<T> {
+  try {
+    return await db.transaction().execute(async (trx) => {
+      await sql`select set_config('tidemark.lab', ${labId ?? ""}, true),
+        set_config('tidemark.account', ${accountId ?? ""}, true)`.execute(trx);
+      return act(trx);
+    });
+  } catch (error) {
+    throw toDatabaseError(error);
+  }
 }

@@ -1,5 +1,5 @@
-import type { Generated, GeneratedAlways } from "kysely";
-import type { Json, MaybeText, Moment } from "./columns";
+import type { GeneratedAlways } from "kysely";
+import type { JsonWithDefault, MaybeText, Moment } from "./columns";
 
 /** Append only. */
 export interface AuditEventsTable {
@@ -14,5 +14,5 @@ export interface AuditEventsTable {
   subject_type: string;
   subject_id: string;
   series_id: MaybeText;
-  details: Generated<Json<Record<string, unknown>>>;
+  details: JsonWithDefault<Record<string, unknown>>;
 }

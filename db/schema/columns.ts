@@ -11,6 +11,8 @@ export type MaybeMoment = ColumnType<
 >;
 /** json or jsonb: read as T, written as the text of JSON.stringify. */
 export type Json<T> = ColumnType<T, string, string>;
+/** The same with a default in the database. */
+export type JsonWithDefault<T> = ColumnType<T, string | undefined, string>;
 export type MaybeJson<T> = ColumnType<T | null, string | null | undefined, string | null>;
 export type MaybeText = ColumnType<string | null, string | null | undefined, string | null>;
 export type MaybeNumber = ColumnType<number | null, number | null | undefined, number | null>;

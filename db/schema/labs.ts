@@ -1,6 +1,6 @@
 import type { Generated } from "kysely";
 import type { LabSettingsInput } from "../../lib/labs/settings-schema";
-import type { Id, Json, Moment } from "./columns";
+import type { Id, JsonWithDefault, Moment } from "./columns";
 
 export interface LabsTable {
   id: Id;
@@ -9,6 +9,6 @@ export interface LabsTable {
   /** IANA name. */
   time_zone: Generated<string>;
   /** As stored; parse with labSettingsSchema to fill in defaults. */
-  settings: Generated<Json<LabSettingsInput>>;
+  settings: JsonWithDefault<LabSettingsInput>;
   created_at: Moment;
 }
