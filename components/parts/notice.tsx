@@ -1,9 +1,7 @@
-import type { ReactNode } from "react";
+import type { HearingNotice, NoticeSignal } from "@/lib/exposure/notices";
 import { joinClasses } from "./join-classes";
 
-export type NoticeGrade = "CAUTION" | "WARNING";
-
-const GROUND: Record<NoticeGrade, string> = { CAUTION: "bg-caution", WARNING: "bg-warning" };
+const GROUND: Record<NoticeSignal, string> = { CAUTION: "bg-caution", WARNING: "bg-warning" };
 
 /** The alert triangle: black, its mark in the colour behind it. */
 function AlertTriangle({ size }: { size: number }) {
@@ -25,16 +23,13 @@ function AlertTriangle({ size }: { size: number }) {
 }
 
 interface SlimNoticeProps {
-  grade: NoticeGrade;
-  /** The hazard, bold: "Up to 104 dB at 1 m:". */
-  lead: ReactNode;
-  /** Consequence, how to avoid it, the method line. Words come from lib/exposure. */
-  children: ReactNode;
+  /** Signal word, hazard, consequence and method line; words come from lib/exposure. */
+  notice: HearingNotice;
   className?: string;
 }
 
 /** One line, once in every view that shows a maximum level. Never dismissible, never themed. */
-export function SlimNotice({ grade, lead, children, className }: SlimNoticeProps) {
+export function SlimNotice({ notice, className }: SlimNoticeProps) {
   return (
     <p
       role="note"
@@ -46,37 +41,28 @@ export function SlimNotice({ grade, lead, children, className }: SlimNoticeProps
       <b
         className={joinClasses(
           "flex items-center gap-[7px] border-r border-black py-[5px] pr-3 pl-2.5 font-extrabold tracking-[0.02em] whitespace-nowrap",
-          GROUND[grade],
+          GROUND[notice.signal],
         )}
       >
         <AlertTriangle size={17} />
-        {grade}
+        {notice.signal}
       </b>
       <span className="px-3 py-[5px]">
-        <b>{lead}</b> {children}
+        <b>{notice.lead}</b> {notice.text}
       </span>
     </p>
   );
 }
 
 interface BlockNoticeProps {
-  grade: NoticeGrade;
-  /** First sentence, bold. */
-  lead: ReactNode;
-  children: ReactNode;
+  notice: HearingNotice;
   /** The signal word above the text instead of beside it: for narrow columns. */
   stacked?: boolean;
   className?: string;
 }
 
 /** The signal word panel and its sentences, for the calculator and the plan. */
-export function BlockNotice({
-  grade,
-  lead,
-  children,
-  stacked = false,
-  className,
-}: BlockNoticeProps) {
+export function BlockNotice({ notice, stacked = false, className }: BlockNoticeProps) {
   return (
     <div
       role="note"
@@ -90,17 +76,17 @@ export function BlockNotice({
         className={joinClasses(
           "flex items-center gap-[9px] border-b-2 border-black px-3.5 py-1.5 font-extrabold tracking-[0.02em]",
           stacked ? "text-[17px]/6" : "text-[20px]/6 sm:border-r-2 sm:border-b-0 sm:pr-[18px]",
-          GROUND[grade],
+          GROUND[notice.signal],
         )}
       >
         <AlertTriangle size={22} />
-        {grade}
+        {notice.signal}
       </p>
       <div className="px-4 pt-[11px] pb-3">
         <p>
-          <b>{lead}</b>
+          <b>{notice.lead}</b>
         </p>
-        <div className="mt-0.5">{children}</div>
+        <p className="mt-0.5">{notice.text}</p>
       </div>
     </div>
   );

@@ -25,9 +25,9 @@ export function ProgressBar({
   const share = Math.min(1, Math.max(0, done));
   const water = paint ?? STILL;
   return (
-    // The browser's own bar cannot take a level's colours.
-    // oxlint-disable-next-line jsx-a11y/prefer-tag-over-role
     <span
+      // The browser's own bar cannot take a level's colours.
+      // oxlint-disable-next-line jsx-a11y/prefer-tag-over-role
       role="progressbar"
       aria-label={label}
       aria-valuemin={0}

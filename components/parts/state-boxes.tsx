@@ -1,57 +1,45 @@
+import type { Step } from "@/lib/api/series";
+import type { SeriesState } from "@/lib/series/vocabulary";
 import { joinClasses } from "./join-classes";
 import { VerdictMark } from "./verdict";
 
-export const STATE_BOX_NAMES = [
-  "captured",
-  "analysed",
-  "in review",
-  "signed off",
-  "published",
-] as const;
-export type StateBoxName = (typeof STATE_BOX_NAMES)[number];
+type BoxState = "done" | "now" | "next";
 
-export interface StateBox {
-  name: StateBoxName;
-  /** done: reached. now: the series stands here. next: still to come. */
-  state: "done" | "now" | "next";
-  /** How full the box is, 0 to 1; done is 1, next is 0. */
-  filled: number;
-  /** Date and person, or who it needs: "11 May, I. Varley", "needs analyst". */
-  note: string;
-}
+/** The first step that is not done is where the series stands. */
+const toBoxes = (steps: readonly Step[]): { step: Step; state: BoxState }[] => {
+  const now = steps.findIndex((step) => !step.done);
+  return steps.map((step, at) => ({
+    step,
+    state: step.done ? "done" : at === now ? "now" : "next",
+  }));
+};
 
 /** The five boxes of a series' life, derived from its state by the caller. */
-export function StateBoxes({
-  boxes,
-  className,
-}: {
-  boxes: readonly StateBox[];
-  className?: string;
-}) {
+export function StateBoxes({ steps, className }: { steps: readonly Step[]; className?: string }) {
   return (
     <ol
       className={joinClasses("flex w-full gap-[3px] max-md:flex-col max-md:gap-2.5", className)}
       aria-label="State of the series"
     >
-      {boxes.map((box) => (
+      {toBoxes(steps).map(({ step, state }) => (
         <li
-          key={box.name}
+          key={step.step}
           className="min-w-0 flex-1"
-          aria-current={box.state === "now" ? "step" : undefined}
+          aria-current={state === "now" ? "step" : undefined}
         >
-          <BoxBar filled={box.filled} next={box.state === "next"} />
+          <BoxBar filled={step.share} next={state === "next"} />
           <span
             className={joinClasses(
               "flex items-center gap-[5px] text-[15px]/[18px]",
-              box.state === "next" ? "text-ink-2" : "font-[640]",
+              state === "next" ? "text-ink-2" : "font-[640]",
             )}
           >
-            {box.state === "done" && <VerdictMark kind="ok" size={12} />}
-            {box.name}
-            <span className="sr-only">{SAY[box.state]}</span>
+            {state === "done" && <VerdictMark kind="ok" size={12} />}
+            {step.step}
+            <span className="sr-only">{SAY[state]}</span>
           </span>
-          <span className="figures mt-px block truncate text-label text-ink-2" title={box.note}>
-            {box.note}
+          <span className="figures mt-px block truncate text-label text-ink-2" title={step.detail}>
+            {step.detail}
           </span>
         </li>
       ))}
@@ -59,7 +47,7 @@ export function StateBoxes({
   );
 }
 
-const SAY: Record<StateBox["state"], string> = { done: ", done", now: ", now", next: ", to come" };
+const SAY: Record<BoxState, string> = { done: ", done", now: ", now", next: ", to come" };
 
 /** A measuring rod of ten parts, filled as far as the work stands. */
 function BoxBar({ filled, next }: { filled: number; next: boolean }) {
@@ -85,42 +73,59 @@ function BoxBar({ filled, next }: { filled: number; next: boolean }) {
   );
 }
 
-/** The same as five small squares for a list row, with the word beside it. */
-export function StateSquares({
-  boxes,
-  word,
-  note,
-}: {
-  boxes: readonly StateBox[];
-  word: string;
+/** Boxes done in each state; the next one is half full while somebody or something works on it. */
+const SQUARES: Record<SeriesState, { done: number; going: boolean }> = {
+  planned: { done: 0, going: false },
+  capturing: { done: 0, going: true },
+  analysing: { done: 1, going: true },
+  "analysis failed": { done: 1, going: true },
+  "in review": { done: 2, going: true },
+  "signed off": { done: 4, going: false },
+};
+
+interface StateSquaresProps {
+  state: SeriesState;
+  /** "12 of 27 bands", "5 of 11 recordings". */
   note: string;
-}) {
+}
+
+/** The same as five small squares for a list row, with the state's word and a note beside them. */
+export function StateSquares({ state, note }: StateSquaresProps) {
+  const { done, going } = SQUARES[state];
   return (
     <span className="inline-grid grid-cols-[auto_1fr] items-center gap-x-[9px] text-[15px]/[19px]">
       <svg width="58" height="9" viewBox="0 0 58 9" aria-hidden="true">
-        {boxes.map((box, at) => (
-          <g key={box.name} transform={`translate(${at * 12} 0)`}>
-            <rect
-              x="0.5"
-              y="0.5"
-              width="9"
-              height="8"
-              strokeWidth="1"
-              className={box.state === "next" ? "fill-sheet stroke-edge" : "fill-sheet stroke-ink"}
-            />
-            {box.state !== "next" && (
+        {[0, 1, 2, 3, 4].map((box) => {
+          const half = going && box === done;
+          const reached = box < done;
+          return (
+            <g key={box} transform={`translate(${box * 12} 0)`}>
               <rect
                 x="0.5"
-                y={box.state === "done" ? 0.5 : 4.5}
+                y="0.5"
                 width="9"
-                height={box.state === "done" ? 8 : 4}
-                className="fill-ink"
+                height="8"
+                className={joinClasses(
+                  "fill-sheet",
+                  reached || half ? "stroke-ink" : "stroke-edge",
+                )}
               />
-            )}
-          </g>
-        ))}
+              {(reached || half) && (
+                <rect
+                  x="0.5"
+                  y={half ? 4.5 : 0.5}
+                  width="9"
+                  height={half ? 4 : 8}
+                  className="fill-ink"
+                />
+              )}
+            </g>
+          );
+        })}
       </svg>
-      <span>{word}</span>
+      <span className={joinClasses(state === "analysis failed" && "font-semibold text-fault")}>
+        {state}
+      </span>
       <span className="figures col-start-2 text-label text-ink-2">{note}</span>
     </span>
   );
