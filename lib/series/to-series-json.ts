@@ -1,0 +1,126 @@
+/**
+ * From the plan and the usable recordings to the series.json of the contract: what the worker gives
+ * to the engine, and what makes a folder that the analysis command reads.
+ */
+import { AnalysisError } from "../errors/app-error";
+import type { Plan } from "./plan-schema";
+import type { RecordingRole } from "./planned-runs";
+import { seriesSchema, type Run, type Series } from "./series-schema";
+
+/** A recording that may enter an analysis. */
+export interface UsableRun {
+  id: string;
+  role: RecordingRole;
+  levelDb: number | null;
+  variant: string | null;
+  /** Name of the planned recording: unlike uploaded names, one per place. */
+  file: string;
+  digest: string;
+  channel: number;
+}
+
+export interface SeriesSource {
+  loudspeaker: {
+    maker: string;
+    model: string;
+    largestDimensionM: number | null;
+    tuningHz: number | null;
+  };
+  plan: Plan;
+  /** In the order of the plan. */
+  runs: readonly UsableRun[];
+}
+
+export interface SeriesFiles {
+  series: Series;
+  /** What lies behind each name; run_id null for the microphone file. */
+  files: { file: string; digest: string; run_id: string | null }[];
+}
+
+/**
+ * @throws AnalysisError "series.too-few-runs" with fewer than two short-term levels,
+ *   "calibration.missing" where neither calibrator nor sensitivity is there.
+ */
+export function toSeriesJson({ loudspeaker, plan, runs }: SeriesSource): SeriesFiles {
+  const levels = new Set(
+    runs.flatMap((run) => (run.role === "short-term" && run.levelDb !== null ? [run.levelDb] : [])),
+  );
+  if (levels.size < 2) {
+    throw new AnalysisError(
+      "series.too-few-runs",
+      `An analysis compares at least two levels; ${levels.size === 0 ? "no" : "one"} short-term run is usable. Record another level, or keep a failed take with a reason.`,
+      { details: { usableLevels: [...levels] } },
+    );
+  }
+  const withRole = (role: RecordingRole): UsableRun | undefined =>
+    runs.find((r) => r.role === role);
+  const ambient = withRole("ambient");
+  const microphone = plan.microphone;
+  const document = {
+    loudspeaker: `${loudspeaker.maker} ${loudspeaker.model}`,
+    environment: plan.place.environment,
+    distance_m: plan.place.distance_m,
+    ...(plan.place.gate_ms === null ? {} : { gate_ms: plan.place.gate_ms }),
+    ...(loudspeaker.largestDimensionM === null
+      ? {}
+      : { largest_dimension_m: loudspeaker.largestDimensionM }),
+    ...(loudspeaker.tuningHz === null ? {} : { tuning_Hz: loudspeaker.tuningHz }),
+    reference_band_Hz: plan.reference_band_Hz,
+    stimulus: { ...plan.sweep },
+    calibration: toCalibration(plan, withRole("calibrator-before"), withRole("calibrator-after")),
+    ...(microphone === null
+      ? {}
+      : { microphone: { file: MICROPHONE_FILE, kind: microphone.kind } }),
+    ...(ambient === undefined ? {} : { ambient: { file: ambient.file } }),
+    runs: runs.flatMap((run) => toRun(run, plan)),
+    settings: { criteria: plan.criteria },
+  };
+  const named = runs.map((run) => ({ file: run.file, digest: run.digest, run_id: run.id }));
+  return {
+    series: seriesSchema.parse(document),
+    files:
+      microphone === null
+        ? named
+        : [...named, { file: MICROPHONE_FILE, digest: microphone.digest, run_id: null }],
+  };
+}
+
+const MICROPHONE_FILE = "microphone.txt";
+
+function toCalibration(
+  plan: Plan,
+  before: UsableRun | undefined,
+  after: UsableRun | undefined,
+): Record<string, unknown> {
+  const { by, level_dB, frequency_Hz, full_scale_dB } = plan.calibration;
+  if (by === "sensitivity" && full_scale_dB !== null) return { full_scale_dB };
+  // One calibrator recording out of two still calibrates.
+  const first = before ?? after;
+  if (first === undefined) {
+    throw new AnalysisError(
+      "calibration.missing",
+      "No calibrator recording is usable, so levels cannot be told. Record the calibrator at the same input gain, or keep the take with a reason.",
+    );
+  }
+  return {
+    file: first.file,
+    level_dB,
+    frequency_Hz,
+    ...(before !== undefined && after !== undefined ? { after_file: after.file } : {}),
+  };
+}
+
+function toRun(run: UsableRun, plan: Plan): Partial<Run>[] {
+  if (run.levelDb === null) return [];
+  const kind = run.role === "long-term" || run.role === "closing" ? run.role : "short-term";
+  return [
+    {
+      file: run.file,
+      level_dB: run.levelDb,
+      kind,
+      channel: run.channel,
+      ...(run.role === "long-term" ? { conditioning: plan.conditioning } : {}),
+      ...(run.variant === null ? {} : { variant: run.variant }),
+    },
+  ];
+}
