@@ -23,7 +23,12 @@ const parseInt8 = (text: string): number => Number(text);
 
 /** A pool of its own; the caller ends it with destroy(). */
 export function createDatabase(options: DatabaseOptions): Db {
-  return new Kysely<Database>({ dialect: new PostgresDialect({ pool: createPool(options) }) });
+  return createDatabaseOn(createPool(options));
+}
+
+/** For whoever needs the pool besides: the rate limiter and listeners. */
+export function createDatabaseOn(pool: pg.Pool): Db {
+  return new Kysely<Database>({ dialect: new PostgresDialect({ pool }) });
 }
 
 export function createPool(options: DatabaseOptions): pg.Pool {
