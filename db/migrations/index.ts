@@ -5,6 +5,7 @@ import * as capture from "./20261201t0901-capture";
 import * as analyses from "./20261201t0902-analyses";
 import * as audit from "./20261201t0903-audit";
 import * as lookups from "./20261201t0904-lookups";
+import * as captureWalls from "./20261201t1000-capture-walls";
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0900-people": people,
@@ -12,4 +13,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0902-analyses": analyses,
   "20261201t0903-audit": audit,
   "20261201t0904-lookups": lookups,
+  "20261201t1000-capture-walls": captureWalls,
 };

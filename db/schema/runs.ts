@@ -9,6 +9,8 @@ export interface RunsTable {
   series_id: string;
   /** Place in the plan (PlannedRun.slot); null while unassigned. */
   slot: MaybeText;
+  /** The place it is meant for while that is locked. */
+  wanted_slot: MaybeText;
   /** Counts the recordings made for the slot, from 1. */
   take: Generated<number>;
   role: ColumnType<RecordingRole | null, RecordingRole | null | undefined, RecordingRole | null>;

@@ -16,5 +16,7 @@ export interface UploadsTable {
   token_id: MaybeText;
   created_at: Moment;
   expires_at: Moment;
+  /** When it became a run; the row stays a while for a client that lost the answer. */
   finished_at: MaybeMoment;
+  run_id: MaybeText;
 }
