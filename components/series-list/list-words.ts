@@ -1,0 +1,116 @@
+/** What a row of the list says in words, for one criterion. */
+import type { ListLimits, SeriesRow } from "@/lib/api/series";
+import { formatFrequency, formatPlain, NBSP, roundLimitDown } from "@/lib/charts/format";
+import type { Criterion } from "@/lib/series/series-schema";
+
+/** Stable word for the address and for comparing: "thd10-comp3", "thd3", "comp1". */
+export function toCriterionKey(criterion: Criterion): string {
+  const parts: string[] = [];
+  if (criterion.thd_percent !== undefined) parts.push(`thd${criterion.thd_percent}`);
+  if (criterion.compression_dB !== undefined) parts.push(`comp${criterion.compression_dB}`);
+  return parts.join("-");
+}
+
+/** "THD 10 % or compression 3 dB, whichever comes first" */
+export function toCriterionWords(criterion: Criterion): string {
+  const { thd, compression } = toHalves(criterion);
+  if (thd !== null && compression !== null) {
+    return `${thd} or compression ${compression}, whichever comes first`;
+  }
+  return thd ?? `compression ${compression}`;
+}
+
+/** "THD 10 % or 3 dB", where room is short. */
+export function toCriterionShort(criterion: Criterion): string {
+  const { thd, compression } = toHalves(criterion);
+  if (thd !== null && compression !== null) return `${thd} or ${compression}`;
+  return thd ?? `compression ${compression}`;
+}
+
+function toHalves(criterion: Criterion): { thd: string | null; compression: string | null } {
+  const { thd_percent: percent, compression_dB: lossDb } = criterion;
+  return {
+    thd: percent === undefined ? null : `THD ${formatPlain(percent)}${NBSP}%`,
+    compression: lossDb === undefined ? null : `${formatPlain(lossDb)}${NBSP}dB`,
+  };
+}
+
+/** THD 10 % or 3 dB, unless the address says otherwise. */
+export const DEFAULT_CRITERION: Criterion = { thd_percent: 10, compression_dB: 3 };
+const ALWAYS_OFFERED: readonly Criterion[] = [
+  DEFAULT_CRITERION,
+  { thd_percent: 3, compression_dB: 1 },
+  { thd_percent: 10 },
+  { thd_percent: 3 },
+  { compression_dB: 3 },
+  { compression_dB: 1 },
+];
+
+/** The usual criteria, then the lab's own that some shown row holds. */
+export function listCriteria(rows: readonly SeriesRow[]): Criterion[] {
+  const own = rows.flatMap((row) => row.limits.map((limits) => limits.criterion));
+  return [
+    ...new Map([...ALWAYS_OFFERED, ...own].map((c) => [toCriterionKey(c), c] as const)).values(),
+  ];
+}
+
+export const findLimits = (row: SeriesRow, criterionKey: string): ListLimits | null =>
+  row.limits.find((limits) => toCriterionKey(limits.criterion) === criterionKey) ?? null;
+
+export interface TwoLines {
+  words: string;
+  note: string | null;
+}
+
+/** "at least 101" and "80 Hz to 16 kHz"; null where nothing is known yet. */
+export function toReachedWords(limits: ListLimits | null): TwoLines | null {
+  if (limits === null) return null;
+  const { headline } = limits;
+  if (headline === null) {
+    return { words: "no headline", note: limits.headline_missing };
+  }
+  const level = String(roundLimitDown(headline.spl_dB));
+  return {
+    words: headline.at_least ? `at least ${level}` : level,
+    note: `${formatFrequency(headline.from_Hz)} to ${formatFrequency(headline.to_Hz)}`,
+  };
+}
+
+/** "50 Hz at 93 dB" and "run level 96 dB"; "not reached up to" and "the 102 dB run". */
+export function toFirstWords(row: SeriesRow, limits: ListLimits | null): TwoLines | null {
+  if (limits === null || limits.headline === null) return null;
+  const { first } = limits.headline;
+  if (first === null) {
+    const highest = Math.max(...row.levels_dB);
+    if (!Number.isFinite(highest)) return null;
+    return { words: "not reached up to", note: `the ${formatPlain(highest)}${NBSP}dB run` };
+  }
+  const band = formatFrequency(first.nominal_Hz);
+  if (first.status === "below lowest") {
+    const lowest = formatPlain(Math.min(...row.levels_dB));
+    return { words: `${band}, already past it`, note: `at the ${lowest}${NBSP}dB run` };
+  }
+  const at = first.spl_dB === null ? "" : ` at ${roundLimitDown(first.spl_dB)}${NBSP}dB`;
+  return {
+    words: `${band}${at}`,
+    note:
+      first.nominal_dB === null ? null : `run level ${roundLimitDown(first.nominal_dB)}${NBSP}dB`,
+  };
+}
+
+/** "today 10:42", "yesterday", "6 May", "6 May 2025" in the given time zone. */
+export function toChangedWords(at: string, now: Date, timeZone: string | undefined): string {
+  const then = new Date(at);
+  const day = (date: Date): string => date.toLocaleDateString("en-CA", { timeZone });
+  if (day(then) === day(now)) {
+    return `today ${then.toLocaleTimeString("en-GB", { hour: "2-digit", minute: "2-digit", timeZone })}`;
+  }
+  if (day(then) === day(new Date(now.getTime() - 86_400_000))) return "yesterday";
+  const sameYear = day(then).slice(0, 4) === day(now).slice(0, 4);
+  return then.toLocaleDateString("en-GB", {
+    day: "numeric",
+    month: "short",
+    ...(sameYear ? {} : { year: "numeric" }),
+    timeZone,
+  });
+}
