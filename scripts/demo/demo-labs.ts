@@ -1,0 +1,218 @@
+/**
+ * What stands in the demo labs: people, loudspeakers, plans, and how far each series has come.
+ * Every name is invented; the recordings are made by record-series.ts.
+ */
+import type { LoudspeakerInput } from "../../lib/api/loudspeakers";
+import type { Role } from "../../lib/roles/roles";
+import { planSchema, type Plan, type PlanInput } from "../../lib/series/plan-schema";
+import { LOUDSPEAKERS, type LoudspeakerKey } from "./loudspeakers";
+
+export interface DemoMember {
+  name: string;
+  email: string;
+  roles: Role[];
+}
+
+/** A take that went wrong while recording. */
+export type Mishap =
+  | { kind: "bump"; atS: number }
+  | { kind: "stops-early"; lengthS: number; keptBecause: string };
+
+export interface DemoSeries {
+  key: LoudspeakerKey;
+  loudspeaker: LoudspeakerInput;
+  plan: Plan;
+  /** Of the recording interface: SPL of a sine that just reaches full scale. */
+  fullScaleDb: number;
+  /** Slots recorded so far; all of the plan where null. */
+  recordedUpTo: string | null;
+  /** By slot. */
+  mishaps: Record<string, Mishap>;
+}
+
+export interface DemoLab {
+  slug: string;
+  name: string;
+  timeZone: string;
+  members: DemoMember[];
+  series: DemoSeries[];
+}
+
+const levels = (of: number[], longTerm: number[] = []): PlanInput["levels"] =>
+  of.map((level_dB) => ({ level_dB, long_term: longTerm.includes(level_dB) }));
+
+const compose = (
+  key: LoudspeakerKey,
+  loudspeaker: Omit<LoudspeakerInput, "serial" | "tuning_Hz"> & Partial<LoudspeakerInput>,
+  plan: PlanInput,
+  rest: Partial<Pick<DemoSeries, "fullScaleDb" | "recordedUpTo" | "mishaps">> = {},
+): DemoSeries => ({
+  key,
+  loudspeaker: { serial: "", tuning_Hz: null, ...loudspeaker },
+  plan: planSchema.parse({ place: { environment: "anechoic", temperature_C: 21 }, ...plan }),
+  fullScaleDb: 116,
+  recordedUpTo: null,
+  mishaps: {},
+  ...rest,
+});
+
+const MAINS = { power: "mains, 230 V", eq: "off" };
+const BENCH_AMPLIFIER = { amplifier: "bench amplifier, 26 dB", voltage: "2.83 V at 86 dB" };
+
+export const DEMO_LABS: readonly DemoLab[] = [
+  {
+    slug: "saltmarsh",
+    name: "Saltmarsh Acoustics",
+    timeZone: "Europe/London",
+    members: [
+      { name: "Ines Varley", email: "ines@saltmarsh.example", roles: ["tester"] },
+      { name: "Tomas Reith", email: "tomas@saltmarsh.example", roles: ["analyst"] },
+      { name: "Mina Oduya", email: "mina@saltmarsh.example", roles: ["tester", "analyst"] },
+      { name: "Rue Calder", email: "rue@saltmarsh.example", roles: ["reviewer"] },
+      { name: "Ada Lindqvist", email: "ada@saltmarsh.example", roles: ["admin"] },
+    ],
+    series: [
+      compose(
+        "osier8a",
+        {
+          maker: "Withy Lane",
+          model: "Osier 8A",
+          serial: "0231",
+          kind: "active, two-way",
+          largest_dimension_m: 0.38,
+        },
+        {
+          state: {
+            ...MAINS,
+            firmware: "2.1.4",
+            preset: "flat",
+            input: "balanced",
+            volume: "0 dB, full",
+          },
+          levels: levels([76, 86, 96, 102]),
+        },
+      ),
+      compose(
+        "brackenMini",
+        {
+          maker: "Stonecrop Works",
+          model: "Bracken Mini",
+          serial: "A-17",
+          kind: "passive, two-way",
+          largest_dimension_m: 0.24,
+        },
+        { state: BENCH_AMPLIFIER, levels: levels([76, 86, 96, 102]) },
+      ),
+      compose(
+        "harbourTwo",
+        {
+          maker: "Gannet Yard",
+          model: "Harbour Two",
+          serial: "H2-0044",
+          kind: "passive, three-way",
+          largest_dimension_m: 0.33,
+        },
+        { state: BENCH_AMPLIFIER, levels: levels([76, 86, 96, 102]) },
+      ),
+      compose(
+        "loom6",
+        {
+          maker: "Sedge & Daughters",
+          model: "Loom 6",
+          serial: "118",
+          kind: "passive, two-way",
+          largest_dimension_m: 0.33,
+        },
+        { state: BENCH_AMPLIFIER, levels: levels([76, 86, 96, 102], [96, 102]) },
+      ),
+      compose(
+        "fennel5",
+        {
+          maker: "Stonecrop Works",
+          model: "Fennel 5",
+          serial: "F-203",
+          kind: "passive, two-way",
+          largest_dimension_m: 0.3,
+          tuning_Hz: 52,
+        },
+        { state: BENCH_AMPLIFIER, levels: levels([76, 86, 96, 102]) },
+      ),
+      compose(
+        "samphire3",
+        {
+          maker: "Plover & Rook",
+          model: "Samphire 3",
+          serial: "S3-9",
+          kind: "active, battery",
+          largest_dimension_m: 0.18,
+        },
+        {
+          state: { power: "battery, full", volume: "80 %", eq: "off" },
+          levels: levels([70, 76, 82, 88]),
+        },
+        { fullScaleDb: 110 },
+      ),
+      compose(
+        "osier5a",
+        {
+          maker: "Withy Lane",
+          model: "Osier 5A",
+          serial: "0112",
+          kind: "active, two-way",
+          largest_dimension_m: 0.31,
+        },
+        {
+          state: {
+            ...MAINS,
+            firmware: "2.1.4",
+            preset: "flat",
+            input: "balanced",
+            volume: "0 dB, full",
+          },
+          levels: levels([76, 81, 86, 91, 96, 102], [102]),
+        },
+        {
+          recordedUpTo: "short-91",
+          mishaps: {
+            "short-86": {
+              kind: "stops-early",
+              lengthS: 9.4,
+              keptBecause: "The woofer is what 86 dB is for; treble is covered by 81 and 91.",
+            },
+            "short-91": { kind: "bump", atS: 3.05 },
+          },
+        },
+      ),
+    ],
+  },
+  {
+    slug: "northpier",
+    name: "North Pier Stage Test",
+    timeZone: "Europe/Stockholm",
+    members: [
+      { name: "Orla Finch", email: "orla@northpier.example", roles: ["tester", "analyst"] },
+      { name: "Pavel Strand", email: "pavel@northpier.example", roles: ["admin", "reviewer"] },
+    ],
+    series: [
+      compose(
+        "ketch12",
+        {
+          maker: "Gannet Yard",
+          model: "Ketch 12",
+          serial: "K-301",
+          kind: "active, stage",
+          largest_dimension_m: 0.6,
+        },
+        {
+          state: { ...MAINS, preset: "front of house" },
+          levels: levels([88, 98, 108, 114]),
+          calibration: { level_dB: 114 },
+          place: { environment: "anechoic", temperature_C: 19, distance_m: 2, tester: "next-room" },
+        },
+        { fullScaleDb: 128 },
+      ),
+    ],
+  },
+];
+
+export const toVirtualLoudspeaker = (series: DemoSeries) => LOUDSPEAKERS[series.key];
