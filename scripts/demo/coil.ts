@@ -64,7 +64,7 @@ export class Coil implements Stage {
       const gain = 1 / (1 + TEMPERATURE_COEFFICIENT * this.riseK);
       let energy = 0;
       for (let n = start; n < end; n += 1) {
-        const x = block[n] as number;
+        const x = block[n] ?? 0;
         energy += x * x;
         block[n] = x * gain;
       }

@@ -70,7 +70,7 @@ export class Driver implements Stage {
     let { x, velocity, y, portVelocity } = this;
     for (let n = 0; n < block.length; n += 1) {
       const shift = x * perExcursion - offset;
-      const force = ((block[n] as number) * rest) / (1 + shift * shift);
+      const force = ((block[n] ?? 0) * rest) / (1 + shift * shift);
       const pressed = x + y;
       const acceleration = force - damping * velocity - stiffness * x - box * pressed;
       const portAcceleration =
@@ -101,7 +101,7 @@ export class Polynomial implements Stage {
     const { second, third } = this.setting;
     const { scale } = this;
     for (let n = 0; n < block.length; n += 1) {
-      const x = block[n] as number;
+      const x = block[n] ?? 0;
       const v = x * scale;
       block[n] = x * (1 + v * (second + v * third));
     }

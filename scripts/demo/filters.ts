@@ -25,7 +25,7 @@ export class Biquad implements Stage {
     const { b0, b1, b2, a1, a2 } = this.section;
     let { z1, z2 } = this;
     for (let n = 0; n < block.length; n += 1) {
-      const x = block[n] as number;
+      const x = block[n] ?? 0;
       const y = b0 * x + z1;
       z1 = b1 * x - a1 * y + z2;
       z2 = b2 * x - a2 * y;
@@ -50,11 +50,12 @@ function toSection(
   const root = 10 ** (gainDb / 40);
   const a0 = kind === "peak" ? 1 + alpha / root : 1 + alpha;
   const a2 = kind === "peak" ? 1 - alpha / root : 1 - alpha;
-  const [b0, b1, b2] = {
+  const prototypes: Record<typeof kind, [number, number, number]> = {
     "low-pass": [(1 - cos) / 2, 1 - cos, (1 - cos) / 2],
     "high-pass": [(1 + cos) / 2, -1 - cos, (1 + cos) / 2],
     peak: [1 + alpha * root, -2 * cos, 1 - alpha * root],
-  }[kind] as [number, number, number];
+  };
+  const [b0, b1, b2] = prototypes[kind];
   return { b0: b0 / a0, b1: b1 / a0, b2: b2 / a0, a1: (-2 * cos) / a0, a2: a2 / a0 };
 }
 
@@ -104,8 +105,7 @@ export class Parallel implements Stage {
     for (const stage of this.paths) {
       this.path.set(this.input);
       stage.process(this.path);
-      for (let n = 0; n < block.length; n += 1)
-        block[n] = (block[n] as number) + (this.path[n] as number);
+      for (let n = 0; n < block.length; n += 1) block[n] = (block[n] ?? 0) + (this.path[n] ?? 0);
     }
   }
 }

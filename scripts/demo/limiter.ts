@@ -48,7 +48,7 @@ export class Limiter implements Stage {
   process(block: Float64Array): void {
     let { meanSquare, gain } = this;
     for (let n = 0; n < block.length; n += 1) {
-      const x = block[n] as number;
+      const x = block[n] ?? 0;
       meanSquare += this.detector * (x * x - meanSquare);
       const wished = meanSquare > this.kneeStart ? this.toGain(meanSquare) : 1;
       gain += (wished < gain ? this.attack : this.release) * (wished - gain);

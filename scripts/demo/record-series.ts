@@ -126,20 +126,14 @@ const BUMP = { frequencyHz: 9, peak: 4, decayS: 0.05 };
 
 /** What went wrong with a take: somebody ran into the stand, or it was cut off. */
 function befall(samples: Float64Array, mishap: Mishap | null, rateHz: number): Float64Array {
-  switch (mishap?.kind) {
-    case "bump":
-      return samples.map((x, n) => {
-        const sinceS = n / rateHz - mishap.atS;
-        if (sinceS < 0) return x;
-        const bump =
-          BUMP.peak *
-          Math.exp(-sinceS / BUMP.decayS) *
-          Math.sin(2 * Math.PI * BUMP.frequencyHz * sinceS);
-        return Math.max(-1, Math.min(1, x + bump));
-      });
-    case "stops-early":
-      return samples.subarray(0, Math.round(mishap.lengthS * rateHz));
-    case undefined:
-      return samples;
-  }
+  if (mishap === null) return samples;
+  if (mishap.kind === "stops-early")
+    return samples.subarray(0, Math.round(mishap.lengthS * rateHz));
+  return samples.map((x, n) => {
+    const sinceS = n / rateHz - mishap.atS;
+    if (sinceS < 0) return x;
+    const swing =
+      Math.exp(-sinceS / BUMP.decayS) * Math.sin(2 * Math.PI * BUMP.frequencyHz * sinceS);
+    return Math.max(-1, Math.min(1, x + BUMP.peak * swing));
+  });
 }

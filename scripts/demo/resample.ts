@@ -21,8 +21,7 @@ export function upsample(samples: Float64Array, factor: number): Float64Array {
       const from = Math.max(0, -first);
       const to = Math.min(taps, samples.length - first);
       let sum = 0;
-      for (let k = from; k < to; k += 1)
-        sum += (kernel[k] as number) * (samples[first + k] as number);
+      for (let k = from; k < to; k += 1) sum += (kernel[k] ?? 0) * (samples[first + k] ?? 0);
       out[n * factor + phase] = sum;
     }
   }
@@ -60,7 +59,7 @@ export function record(
     const from = Math.max(0, -first);
     const to = Math.min(2 * half, fast.length - first);
     let sum = 0;
-    for (let k = from; k < to; k += 1) sum += (kernel[k] as number) * (fast[first + k] as number);
+    for (let k = from; k < to; k += 1) sum += (kernel[k] ?? 0) * (fast[first + k] ?? 0);
     out[n] = sum;
   }
   return out;

@@ -26,7 +26,7 @@ export function composeNoise(
   const shares = POLES.map((p) => 1 - Math.exp((-2 * Math.PI * p.frequencyHz) / rateHz));
   // Mean square of a one-pole driven by unit white noise is a/(2 - a).
   const cross = (i: number, j: number): number => {
-    const [a, b] = [shares[i] as number, shares[j] as number];
+    const [a, b] = [shares[i] ?? 0, shares[j] ?? 0];
     return ((POLES[i]?.weight ?? 0) * (POLES[j]?.weight ?? 0) * a * b) / (a + b - a * b);
   };
   const meanSquare = POLES.reduce(
@@ -42,9 +42,9 @@ export function composeNoise(
     const white = random.normal();
     let sum = floor * random.normal();
     for (let i = 0; i < state.length; i += 1) {
-      const next = (state[i] as number) + (shares[i] as number) * (white - (state[i] as number));
+      const next = (state[i] ?? 0) + (shares[i] ?? 0) * (white - (state[i] ?? 0));
       state[i] = next;
-      sum += (gains[i] as number) * next;
+      sum += (gains[i] ?? 0) * next;
     }
     if (n >= 0) out[n] = sum;
   }

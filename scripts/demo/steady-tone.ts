@@ -48,8 +48,8 @@ export function measureSteadyTone(
 function toAmplitude(signal: Float64Array, from: number, omega: number): number {
   let [re, im] = [0, 0];
   for (let n = from; n < signal.length; n += 1) {
-    re += (signal[n] as number) * Math.cos(omega * n);
-    im += (signal[n] as number) * Math.sin(omega * n);
+    re += (signal[n] ?? 0) * Math.cos(omega * n);
+    im += (signal[n] ?? 0) * Math.sin(omega * n);
   }
   return (2 * Math.hypot(re, im)) / (signal.length - from);
 }

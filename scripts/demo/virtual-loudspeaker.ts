@@ -130,8 +130,8 @@ export function computeMidGain(loudspeaker: VirtualLoudspeaker, rateHz = MODEL_R
     const omega = (2 * Math.PI * 500 * 4 ** ((i + 0.5) / points)) / rateHz;
     let [re, im] = [0, 0];
     for (let n = 0; n < pulse.length; n += 1) {
-      re += (pulse[n] as number) * Math.cos(omega * n);
-      im += (pulse[n] as number) * Math.sin(omega * n);
+      re += (pulse[n] ?? 0) * Math.cos(omega * n);
+      im += (pulse[n] ?? 0) * Math.sin(omega * n);
     }
     sum += (re * re + im * im) / height ** 2;
   }
@@ -172,7 +172,7 @@ export function recordPlayback(
   const factor = toOversampling(rateHz);
   const pressure = upsample(playback.stimulus, factor);
   const drive = PEAK_AT_0_DB * 10 ** (playback.fullScaleLevelDb / 20);
-  for (let n = 0; n < pressure.length; n += 1) pressure[n] = (pressure[n] as number) * drive;
+  for (let n = 0; n < pressure.length; n += 1) pressure[n] = (pressure[n] ?? 0) * drive;
   playThrough(createLoudspeaker(loudspeaker, rateHz * factor, playback.conditioned), pressure);
   const heard = record(pressure, factor, {
     length: Math.round(recorder.lengthS * rateHz),
@@ -180,7 +180,7 @@ export function recordPlayback(
     driftPpm: recorder.driftPpm,
   });
   const gain = 1 / (playback.midGain * recorder.distanceM);
-  for (let n = 0; n < heard.length; n += 1) heard[n] = (heard[n] as number) * gain;
+  for (let n = 0; n < heard.length; n += 1) heard[n] = (heard[n] ?? 0) * gain;
   return toDigital(heard, rateHz, recorder, random);
 }
 
@@ -221,6 +221,6 @@ function toDigital(
     ? composeNoise(recorder.noise, pressure.length, rateHz, random)
     : null;
   for (let n = 0; n < pressure.length; n += 1)
-    pressure[n] = ((pressure[n] as number) + (noise?.[n] ?? 0)) * scale;
+    pressure[n] = ((pressure[n] ?? 0) + (noise?.[n] ?? 0)) * scale;
   return pressure;
 }
