@@ -1,5 +1,6 @@
 import { defineConfig } from "vitest/config";
 
+// The three projects run one after the other: plain functions, published values, rooms together.
 export default defineConfig({
   resolve: { tsconfigPaths: true },
   test: {
@@ -9,28 +10,29 @@ export default defineConfig({
         extends: true,
         test: {
           name: "unit",
-          include: [
-            "lib/**/*.test.ts",
-            "components/**/*.test.{ts,tsx}",
-            "workers/**/*.test.ts",
-            "db/**/*.test.ts",
-            "scripts/**/*.test.ts",
-          ],
+          include: ["{lib,components,app,workers,db,scripts}/**/*.test.{ts,tsx}"],
+          sequence: { groupOrder: 0 },
         },
       },
       {
         extends: true,
-        test: { name: "checks", include: ["tests/checks/**/*.test.ts"], testTimeout: 60_000 },
+        test: {
+          name: "checks",
+          include: ["tests/checks/**/*.test.ts"],
+          testTimeout: 60_000,
+          sequence: { groupOrder: 1 },
+        },
       },
       {
         extends: true,
         test: {
           name: "rooms",
-          globalSetup: ["tests/support/global-setup.ts"],
           include: ["tests/{db,api,workers,e2e,setup}/**/*.test.ts"],
+          globalSetup: ["tests/support/global-setup.ts"],
           testTimeout: 60_000,
           hookTimeout: 120_000,
           maxWorkers: 2,
+          sequence: { groupOrder: 2 },
         },
       },
     ],

@@ -98,7 +98,7 @@ export function readEnvironment(
     webPort: set.TIDEMARK_WEB_PORT,
     publicUrl:
       set.TIDEMARK_PUBLIC_URL?.replace(/\/+$/, "") ??
-      defaultUrl(set.TIDEMARK_WEB_HOST, set.TIDEMARK_WEB_PORT),
+      toLocalUrl({ webHost: set.TIDEMARK_WEB_HOST, webPort: set.TIDEMARK_WEB_PORT }),
     databasePort: set.TIDEMARK_DB_PORT,
     databaseName: set.TIDEMARK_DB_NAME,
     dataDir,
@@ -183,7 +183,8 @@ function readSecrets(dataDir: string, sources: EnvironmentSources): Secrets {
   return parseSecrets(text, path);
 }
 
-function defaultUrl(webHost: string, webPort: number): string {
+/** Where this machine itself reaches the web server, whatever people call it from outside. */
+export function toLocalUrl({ webHost, webPort }: Pick<Environment, "webHost" | "webPort">): string {
   const everywhere = webHost === "0.0.0.0" || webHost === "::";
   const name = everywhere ? "127.0.0.1" : webHost.includes(":") ? `[${webHost}]` : webHost;
   return `http://${name}:${webPort}`;

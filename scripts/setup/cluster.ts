@@ -36,6 +36,7 @@ export interface Cluster {
   port: number;
   /** Whether this call started the server; false: it ran already. */
   started: boolean;
+  isRunning: () => boolean;
   /** Ends the server, whoever uses it. */
   stop: () => Promise<void>;
 }
@@ -55,16 +56,21 @@ export async function ensureCluster(options: ClusterOptions): Promise<Cluster> {
   const place = await findClusterPlace(options.dataDir);
   const data = join(place.folder, "data");
   const control = (...args: string[]) => asOwner(place, join(bin, "pg_ctl"), [...args, "-D", data]);
-  const stop = (): Promise<void> => stopCluster(place);
+  const handle = {
+    place,
+    port: options.port,
+    isRunning: () => findServerPid(data) !== null,
+    stop: () => stopCluster(place),
+  };
   const running = findServerPid(data);
   if (running !== null && readServerPort(data) === options.port) {
-    return { place, port: options.port, started: false, stop };
+    return { ...handle, started: false };
   }
-  await stop();
+  await stopCluster(place);
   await assertPortFree(options.port, "127.0.0.1", "TIDEMARK_DB_PORT");
   if (!existsSync(join(data, "PG_VERSION"))) await initialise(bin, place, data, options);
   await startServer(control, place, data, options);
-  return { place, port: options.port, started: true, stop };
+  return { ...handle, started: true };
 }
 
 /** Ends the server of a place, whoever uses it; nothing happens where none runs. */
@@ -73,6 +79,14 @@ export async function stopCluster(place: ClusterPlace): Promise<void> {
   const bin = findPostgresBin();
   if (bin === null || findServerPid(data) === null) return;
   await asOwner(place, join(bin, "pg_ctl"), ["stop", "-D", data, "-w", "-t", "60", "-m", "fast"]);
+}
+
+/** Takes a data folder away for good, and the cluster of its own wherever that lies. */
+export async function removeInstallation(dataDir: string): Promise<void> {
+  const place = await findClusterPlace(dataDir);
+  await stopCluster(place);
+  rmSync(place.folder, { recursive: true, force: true });
+  rmSync(dataDir, { recursive: true, force: true });
 }
 
 /**

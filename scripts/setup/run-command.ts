@@ -1,5 +1,6 @@
 /** Runs a program to its end. */
 import { spawn } from "node:child_process";
+import { createInterface } from "node:readline";
 
 export interface CommandOptions {
   cwd?: string;
@@ -7,6 +8,8 @@ export interface CommandOptions {
   /** Shows the output on the terminal (on standard error) instead of keeping it. */
   show?: boolean;
   signal?: AbortSignal;
+  /** Told each line of either stream, without its end. */
+  onLine?: (line: string) => void;
 }
 
 export interface CommandResult {
@@ -39,6 +42,10 @@ export function runCommand(
     child.stderr?.setEncoding("utf8").on("data", (text: string) => {
       output += text;
     });
+    for (const stream of [child.stdout, child.stderr]) {
+      if (stream === null || options.onLine === undefined) continue;
+      createInterface({ input: stream }).on("line", options.onLine);
+    }
     child.on("error", reject);
     child.on("close", (code) => resolve({ code, stdout, output }));
   });

@@ -1,0 +1,15 @@
+/** What a file under scripts/bench exports as `benches`. */
+export interface Bench {
+  /** Key in the JSON, with its unit: "restart_s". */
+  key: string;
+  /** What is measured, for people. */
+  name: string;
+  unit: string;
+  /** How often it runs; the median counts. */
+  runs: number;
+  /** Measures once and gives the figure in `unit`. */
+  run: () => Promise<number>;
+  /** Made before the first run and taken away after the last. */
+  before?: () => Promise<void>;
+  after?: () => Promise<void>;
+}

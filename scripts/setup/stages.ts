@@ -1,0 +1,90 @@
+/** Stages of a check, run one after the other; a failed one does not hide the rest. */
+import { mkdtempSync, rmSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { cloneDir } from "./bootstrap.mjs";
+import { packageFile } from "./package-file";
+import { runCommand } from "./run-command";
+import { readCounts, type TestCounts } from "./test-counts";
+
+export interface Stage {
+  name: string;
+  /**
+   * @returns tests passed and failed; a check that is no test suite counts nothing where it
+   *   passes and one failure where it does not
+   */
+  run: (show: (text: string) => void) => Promise<TestCounts>;
+}
+
+const NONE: TestCounts = { passed: 0, failed: 0 };
+
+/** A program that passes by ending with 0; its output is shown only where it fails. */
+export function commandStage(
+  name: string,
+  args: readonly string[],
+  judge: (stdout: string) => string | null = () => null,
+): Stage {
+  return {
+    name,
+    run: async (show) => {
+      const { code, stdout, output } = await runCommand(process.execPath, args, {
+        cwd: cloneDir,
+        env: { ...process.env, NEXT_TELEMETRY_DISABLED: "1" },
+      });
+      const complaint = code === 0 ? judge(stdout) : output;
+      if (complaint === null) return NONE;
+      show(complaint);
+      return { passed: 0, failed: 1 };
+    },
+  };
+}
+
+/** One run of Vitest over a project; a run without tests is a failure. */
+export function vitestStage(project: string): Stage {
+  return {
+    name: `${project} tests`,
+    run: async (show) => {
+      const folder = mkdtempSync(join(tmpdir(), "tidemark-tests-"));
+      const report = join(folder, "report.json");
+      try {
+        const { code, output } = await runCommand(
+          process.execPath,
+          [
+            packageFile("vitest/vitest.mjs"),
+            "run",
+            `--project=${project}`,
+            "--reporter=default",
+            "--reporter=json",
+            `--outputFile.json=${report}`,
+          ],
+          { cwd: cloneDir, env: { ...process.env, NODE_ENV: "test", NO_COLOR: "1" } },
+        );
+        const counts = readCounts(report, code);
+        if (counts.failed > 0) show(output);
+        return counts;
+      } finally {
+        rmSync(folder, { recursive: true, force: true });
+      }
+    },
+  };
+}
+
+/** @returns the sum over all stages */
+export async function runStages(stages: readonly Stage[]): Promise<TestCounts> {
+  const total = { ...NONE };
+  for (const { name, run } of stages) {
+    const startedAt = Date.now();
+    const counts = await run((text) => console.log(`\n--- ${name} ---\n${text.trimEnd()}\n`)).catch(
+      (error: unknown) => {
+        console.log(`\n--- ${name} ---\n${error instanceof Error ? error.stack : String(error)}\n`);
+        return { passed: 0, failed: 1 };
+      },
+    );
+    total.passed += counts.passed;
+    total.failed += counts.failed;
+    const tests = counts.passed > 0 ? `, ${counts.passed} tests` : "";
+    const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
+    console.log(`${counts.failed === 0 ? "ok    " : "FAILED"}  ${name} (${seconds} s${tests})`);
+  }
+  return total;
+}

@@ -1,0 +1,92 @@
+/** Everything that is built before it runs: the web server's pages and the bundled programs. */
+import { createHash } from "node:crypto";
+import { existsSync, mkdirSync, readdirSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
+import { setTimeout as sleep } from "node:timers/promises";
+import { readText } from "../../lib/config/secrets";
+import { cloneDir } from "./bootstrap.mjs";
+import { buildDir, ensureBundle, hashFile, listBundles } from "./bundles.mjs";
+import { takeLock } from "./lock";
+import { mustRun } from "./run-command";
+import { SetUpError } from "./set-up-error";
+
+const SOURCE_FOLDERS = ["app", "components", "lib", "db", "public"];
+const SOURCE_FILES = [
+  "instrumentation.ts",
+  "next.config.mjs",
+  "package-lock.json",
+  "postcss.config.mjs",
+  "proxy.ts",
+  "tsconfig.json",
+];
+
+/**
+ * Builds what is stale; by content, so that a fresh clone of the same commit and a touched file
+ * tell no lies. Two processes at once build once.
+ *
+ * @param signal ends the build early
+ * @throws SetUpError with the compiler's last lines
+ */
+export async function ensureBuild(signal?: AbortSignal): Promise<void> {
+  const release = await waitForLock(join(buildDir, "lock"), signal);
+  try {
+    for (const bundle of listBundles()) {
+      if (await ensureBundle(bundle)) process.stderr.write(`Built ${bundle.name}.\n`);
+    }
+    await ensureWebBuild(signal);
+  } finally {
+    release();
+  }
+}
+
+async function ensureWebBuild(signal: AbortSignal | undefined): Promise<void> {
+  const stampPath = join(buildDir, "web.stamp.json");
+  const sources = hashSources();
+  if (readText(stampPath) === toStamp(sources)) return;
+  process.stderr.write("Building the web server ...\n");
+  const startedAt = Date.now();
+  try {
+    await mustRun(process.execPath, [join(cloneDir, "node_modules/next/dist/bin/next"), "build"], {
+      cwd: cloneDir,
+      env: { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1" },
+      ...(signal === undefined ? {} : { signal }),
+    });
+  } catch (error) {
+    if (signal?.aborted === true) throw error;
+    throw new SetUpError(
+      `The web server could not be built.\n${error instanceof Error ? error.message : String(error)}`,
+    );
+  }
+  writeFileSync(stampPath, toStamp(sources));
+  process.stderr.write(
+    `Built the web server in ${Math.round((Date.now() - startedAt) / 1000)} s.\n`,
+  );
+}
+
+/** Names the sources and the very build made from them. */
+function toStamp(sources: string): string {
+  return JSON.stringify({ sources, build: readText(join(cloneDir, ".next", "BUILD_ID")) });
+}
+
+function hashSources(): string {
+  const hash = createHash("sha256");
+  const files = [...SOURCE_FILES, ...SOURCE_FOLDERS.flatMap(listFiles)];
+  for (const file of files.toSorted()) hash.update(`${file} ${hashFile(file)}\n`);
+  return hash.digest("hex");
+}
+
+function listFiles(folder: string): string[] {
+  if (!existsSync(join(cloneDir, folder))) return [];
+  return readdirSync(join(cloneDir, folder), { recursive: true, withFileTypes: true })
+    .filter((entry) => entry.isFile() && !/\.test\.tsx?$/.test(entry.name))
+    .map((entry) => join(entry.parentPath, entry.name).slice(cloneDir.length + 1));
+}
+
+async function waitForLock(path: string, signal: AbortSignal | undefined): Promise<() => void> {
+  mkdirSync(buildDir, { recursive: true });
+  for (;;) {
+    const release = takeLock(path);
+    if (typeof release === "function") return release;
+    await sleep(200, undefined, signal === undefined ? {} : { signal });
+  }
+}
