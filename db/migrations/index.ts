@@ -6,6 +6,7 @@ import * as analyses from "./20261201t0902-analyses";
 import * as audit from "./20261201t0903-audit";
 import * as lookups from "./20261201t0904-lookups";
 import * as captureWalls from "./20261201t1000-capture-walls";
+import * as seriesList from "./20261201t1001-series-list";
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0900-people": people,
@@ -14,4 +15,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0903-audit": audit,
   "20261201t0904-lookups": lookups,
   "20261201t1000-capture-walls": captureWalls,
+  "20261201t1001-series-list": seriesList,
 };

@@ -21,6 +21,8 @@ export interface SeriesTable {
   /** Written by a trigger from the loudspeaker. */
   loudspeaker_name: ColumnType<string, string | undefined, never>;
   state: Generated<SeriesState>;
+  /** Made from state, for sorting: 0 planned to 5 signed off. */
+  state_order: ColumnType<number, never, never>;
   plan: Json<Plan>;
   /** Goes up by one with every change of the plan; a writer names the one it read. */
   plan_version: Generated<number>;
