@@ -2,9 +2,9 @@
 import { sql } from "kysely";
 import pg from "pg";
 import { describe, expect, it } from "vitest";
-import { makeLab, useDatabase } from "./support";
+import { makeLab, openDatabase } from "./support";
 
-const bench = useDatabase();
+const bench = openDatabase();
 
 describe("database roles", () => {
   it("leave the application without power over the walls", async () => {

@@ -9,9 +9,9 @@ import { createToken } from "../../db/queries/tokens";
 import { createUpload } from "../../db/queries/uploads";
 import { createAnalysis } from "../../db/queries/analyses";
 import { setExcuse } from "../../db/queries/runs";
-import { makeLab, makeSeries, useDatabase, type Lab } from "./support";
+import { makeLab, makeSeries, openDatabase, type Lab } from "./support";
 
-const bench = useDatabase();
+const bench = openDatabase();
 let own: Lab;
 let other: Lab;
 let otherSeries: Awaited<ReturnType<typeof makeSeries>>;
@@ -215,7 +215,11 @@ describe("row-level security", () => {
         ),
       );
       // Policy, foreign key or missing grant, whichever comes first.
-      await expect(moving, table.name).rejects.toThrow(
+      const refusal = await moving.then(
+        () => "moved",
+        (error: unknown) => String(error),
+      );
+      expect(`${table.name}: ${refusal}`).toMatch(
         /row-level security|foreign key|permission denied/,
       );
     }

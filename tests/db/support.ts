@@ -23,7 +23,7 @@ export interface Bench {
 }
 
 /** One database for the suite; filled in by beforeAll. */
-export function useDatabase(): Bench {
+export function openDatabase(): Bench {
   const bench = {} as Bench;
   beforeAll(async () => {
     bench.database = await createTestDatabase();
