@@ -101,7 +101,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
           kind: "passive, two-way",
           largest_dimension_m: 0.24,
         },
-        { state: BENCH_AMPLIFIER, levels: levels([76, 86, 96, 102]) },
+        { state: BENCH_AMPLIFIER, sweep: { length_s: 5.5 }, levels: levels([76, 86, 96, 102]) },
       ),
       compose(
         "harbourTwo",
@@ -112,7 +112,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
           kind: "passive, three-way",
           largest_dimension_m: 0.33,
         },
-        { state: BENCH_AMPLIFIER, levels: levels([76, 86, 96, 102]) },
+        { state: BENCH_AMPLIFIER, sweep: { length_s: 5.5 }, levels: levels([76, 86, 96, 102]) },
       ),
       compose(
         "loom6",
@@ -135,7 +135,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
           largest_dimension_m: 0.3,
           tuning_Hz: 52,
         },
-        { state: BENCH_AMPLIFIER, levels: levels([76, 86, 96, 102]) },
+        { state: BENCH_AMPLIFIER, sweep: { length_s: 5.5 }, levels: levels([76, 86, 96, 102]) },
       ),
       compose(
         "samphire3",
@@ -205,6 +205,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
         },
         {
           state: { ...MAINS, preset: "front of house" },
+          sweep: { length_s: 5.5 },
           levels: levels([88, 98, 108, 114]),
           calibration: { level_dB: 114 },
           place: { environment: "anechoic", temperature_C: 19, distance_m: 2, tester: "next-room" },
