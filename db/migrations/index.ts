@@ -7,6 +7,10 @@ import * as audit from "./20261201t0903-audit";
 import * as lookups from "./20261201t0904-lookups";
 import * as captureWalls from "./20261201t1000-capture-walls";
 import * as seriesList from "./20261201t1001-series-list";
+import * as review from "./20261201t1100-review";
+import * as publications from "./20261201t1101-publications";
+import * as mail from "./20261201t1102-mail";
+import * as publicLookups from "./20261201t1103-public-lookups";
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0900-people": people,
@@ -16,4 +20,8 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0904-lookups": lookups,
   "20261201t1000-capture-walls": captureWalls,
   "20261201t1001-series-list": seriesList,
+  "20261201t1100-review": review,
+  "20261201t1101-publications": publications,
+  "20261201t1102-mail": mail,
+  "20261201t1103-public-lookups": publicLookups,
 };

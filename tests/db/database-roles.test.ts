@@ -120,13 +120,18 @@ describe("security-definer functions", () => {
       order by 1`.execute(bench.app);
     expect(rows.map((row) => `${row.name}: ${row.result}`)).toEqual([
       "find_account_for_sign_in: TABLE(account_id uuid)",
+      "find_account_link: TABLE(account_id uuid, link_id uuid)",
+      "find_due_mails: TABLE(lab_id uuid, account_id uuid, mail_id uuid)",
       "find_expired_uploads: TABLE(lab_id uuid, upload_id text)",
       "find_forgotten_analyses: TABLE(lab_id uuid, analysis_id uuid)",
       "find_forgotten_checks: TABLE(lab_id uuid, run_id uuid)",
       "find_invitation: TABLE(invitation_id uuid, lab_id uuid)",
+      "find_preview: TABLE(lab_id uuid, preview_id uuid)",
+      "find_publication: TABLE(lab_id uuid, publication_id uuid)",
       "find_session: TABLE(account_id uuid, lab_id uuid)",
       "find_token: TABLE(token_id uuid, lab_id uuid, account_id uuid)",
       "find_unheld_digests: TABLE(digest text)",
+      "list_published: TABLE(lab_id uuid, publication_id uuid)",
     ]);
     for (const row of rows) {
       expect(row).toMatchObject({ path: ["search_path=public, pg_temp"], everybody: false });

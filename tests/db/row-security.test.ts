@@ -1,6 +1,7 @@
 /** The walls between labs, held by PostgreSQL itself. Tables come from its catalogue, not from a list. */
 import { sql } from "kysely";
 import { beforeAll, describe, expect, it } from "vitest";
+import type { Trx } from "../../db/client";
 import { asAccount, inLab } from "../../db/in-lab";
 import { recordEvent } from "../../db/queries/audit";
 import { createInvitation } from "../../db/queries/invitations";
@@ -82,6 +83,7 @@ async function fill(lab: Lab) {
     await sql`insert into analysis_bands
       (analysis_id, lab_id, position, nominal_hz, exact_hz, cause, onset_status, payload)
       values (${analysisId}, ${lab.id}, 0, 63, 63.1, 'none', 'found', '{}')`.execute(trx);
+    await fillReview(trx, lab, series.seriesId, analysisId);
     await recordEvent(trx, lab.admin, {
       act: "series.created",
       subjectType: "series",
@@ -90,6 +92,41 @@ async function fill(lab: Lab) {
     });
   });
   return series;
+}
+
+async function fillReview(trx: Trx, lab: Lab, seriesId: string, analysisId: string) {
+  const { id, admin } = lab;
+  const hash = id.replaceAll("-", "").padEnd(64, "2");
+  await sql`insert into band_decisions (lab_id, analysis_id, nominal_hz, version, cause, computed_cause, decided_by)
+    values (${id}, ${analysisId}, 63, 1, 'limiter', 'limiter', ${admin.accountId})`.execute(trx);
+  await sql`insert into band_comments (lab_id, analysis_id, nominal_hz, words, written_by)
+    values (${id}, ${analysisId}, 63, 'steep', ${admin.accountId})`.execute(trx);
+  await sql`insert into run_requests (lab_id, series_id, level_db, kind, reason, slot, requested_by)
+    values (${id}, ${seriesId}, 91, 'short-term', 'narrower', 'short-91', ${admin.accountId})`.execute(
+    trx,
+  );
+  const signOff = await sql<{ id: string }>`insert into sign_offs
+    (lab_id, series_id, analysis_id, criterion, decisions, decisions_digest, result_digest, signed_by)
+    values (${id}, ${seriesId}, ${analysisId}, '{}', '[]', ${hash}, ${hash}, ${admin.accountId})
+    returning id`.execute(trx);
+  const signOffId = signOff.rows[0]?.id;
+  await sql`insert into publications
+    (lab_id, series_id, sign_off_id, slug, revision, snapshot, digest, published_by)
+    values (${id}, ${seriesId}, ${signOffId}, 'osier-5a', 1, '{}', ${hash}, ${admin.accountId})`.execute(
+    trx,
+  );
+  const preview = await sql<{ id: string }>`insert into previews
+    (lab_id, series_id, sign_off_id, token_hash, for_whom, snapshot, created_by, expires_at)
+    values (${id}, ${seriesId}, ${signOffId}, ${hash}, 'maker', '{}', ${admin.accountId}, now())
+    returning id`.execute(trx);
+  await sql`insert into maker_comments (lab_id, series_id, preview_id, name, email, words)
+    values (${id}, ${seriesId}, ${preview.rows[0]?.id}, 'M', 'm@maker.test', 'thanks')`.execute(
+    trx,
+  );
+  await sql`insert into mails (lab_id, kind, to_address, payload)
+    values (${id}, 'published', 'a@b.test', '{}')`.execute(trx);
+  await sql`insert into notice_choices (lab_id, account_id, kind, wanted)
+    values (${id}, ${admin.accountId}, 'published', true)`.execute(trx);
 }
 
 interface TableFacts {
