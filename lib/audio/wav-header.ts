@@ -65,7 +65,7 @@ export function parseWavHeader(source: ByteSource, file: string): WavHeader {
           "audio.length-lies",
           `puts its samples (byte ${at}) before the description of their format.`,
         );
-      const size = toDataSize(chunk, kind, longData, source, fail);
+      const size = toDataSize(chunk, kind, longData, format.width * format.channels, source, fail);
       return toHeader(format, chunk.at, size, source, fail);
     }
     if (chunk.at + chunk.size > source.size) {
@@ -181,6 +181,7 @@ function toDataSize(
   chunk: Chunk,
   kind: string,
   longData: number | undefined,
+  blockBytes: number,
   source: ByteSource,
   fail: Fail,
 ): number {
@@ -191,7 +192,9 @@ function toDataSize(
         "audio.length-lies",
         `is a ${kind} file without the ds64 chunk that holds its length.`,
       );
-    return longData;
+    // Some writers count the pad byte here.
+    const countsPad = longData % 2 === 0 && longData % blockBytes === 1;
+    return countsPad ? longData - 1 : longData;
   }
   const open = chunk.size === SIZE_IN_DS64 || (chunk.size === 0 && present > 1);
   if (open) {
