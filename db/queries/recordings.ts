@@ -13,7 +13,12 @@ export async function keepRecording(
 ): Promise<void> {
   await trx
     .insertInto("recordings")
-    .values({ lab_id: labId, ...recording })
+    .values({
+      lab_id: labId,
+      digest: recording.digest,
+      bytes: recording.bytes,
+      media: recording.media,
+    })
     .onConflict((conflict) => conflict.columns(["lab_id", "digest"]).doNothing())
     .execute();
 }

@@ -97,6 +97,7 @@ export type RunChange = Partial<{
   level_db: number | null;
   variant: string | null;
   take: number;
+  wanted_slot: string | null;
   channel: number;
   state: RunState;
   reason: string | null;
@@ -124,12 +125,13 @@ export async function updateRun(
 /**
  * Writes what the arrival checks found, unless somebody acted meanwhile.
  *
+ * @param checked what the check read: another channel or place since then wants another check.
  * @returns whether the run was still being checked.
  */
 export async function saveReport(
   trx: Trx,
   labId: string,
-  runId: string,
+  checked: { runId: string; channel: number; slot: string | null },
   outcome: { state: "passed" | "warned" | "failed"; report: ArrivalReport },
 ): Promise<boolean> {
   const row = await trx
@@ -140,8 +142,10 @@ export async function saveReport(
       changed_at: new Date(),
     })
     .where("lab_id", "=", labId)
-    .where("id", "=", runId)
+    .where("id", "=", checked.runId)
     .where("state", "=", "checking")
+    .where("channel", "=", checked.channel)
+    .where("slot", "is not distinct from", checked.slot)
     .returning("id")
     .executeTakeFirst();
   return row !== undefined;

@@ -47,6 +47,18 @@ export async function findUpload(trx: Trx, labId: string, id: string): Promise<U
   return row ?? null;
 }
 
+/** As findUpload; whoever else wants to finish it waits for the end of the transaction. */
+export async function lockUpload(trx: Trx, labId: string, id: string): Promise<UploadRow | null> {
+  const row = await trx
+    .selectFrom("uploads")
+    .selectAll()
+    .where("lab_id", "=", labId)
+    .where("id", "=", id)
+    .forUpdate()
+    .executeTakeFirst();
+  return row ?? null;
+}
+
 /** Unfinished and unexpired ones of a series, oldest first. */
 export async function listUploads(trx: Trx, labId: string, seriesId: string): Promise<UploadRow[]> {
   return trx
@@ -74,10 +86,16 @@ export async function setReceived(
     .execute();
 }
 
-export async function finishUpload(trx: Trx, labId: string, id: string): Promise<void> {
+/** It has become this run. */
+export async function finishUpload(
+  trx: Trx,
+  labId: string,
+  id: string,
+  runId: string,
+): Promise<void> {
   await trx
     .updateTable("uploads")
-    .set({ finished_at: new Date(), received: sql<number>`bytes` })
+    .set({ finished_at: new Date(), run_id: runId, received: sql<number>`bytes` })
     .where("lab_id", "=", labId)
     .where("id", "=", id)
     .execute();

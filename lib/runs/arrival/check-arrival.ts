@@ -1,6 +1,6 @@
 /** The arrival checks of one recording, seconds after it came (docs/domain.md section 9). */
 import { readRecording } from "../../audio/read-recording";
-import { AppError, FileError } from "../../errors/app-error";
+import { FileError, type AppError } from "../../errors/app-error";
 import type { ArrivalCheck, ArrivalReport } from "../arrival-schema";
 import type { ArrivalRequest } from "./arrival-request";
 import { checkFile, plainCheck } from "./file-checks";

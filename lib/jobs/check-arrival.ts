@@ -1,0 +1,17 @@
+/** The job that checks an arrived recording. Ids only: the row is the truth. */
+import { z } from "zod";
+import type { Queues } from "./queues";
+
+export const CHECK_ARRIVAL = "check-arrival";
+
+export const checkArrivalPayloadSchema = z.strictObject({ labId: z.uuid(), runId: z.uuid() });
+export type CheckArrivalPayload = z.infer<typeof checkArrivalPayloadSchema>;
+
+/** Asking again while the job waits changes nothing. */
+export async function enqueueCheckArrival(
+  queues: Pick<Queues, "checks">,
+  payload: CheckArrivalPayload,
+): Promise<void> {
+  const parsed = checkArrivalPayloadSchema.parse(payload);
+  await queues.checks.add(CHECK_ARRIVAL, parsed, { jobId: `check-${parsed.runId}` });
+}
