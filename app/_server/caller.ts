@@ -8,7 +8,7 @@ import { findRoles } from "../../db/queries/members";
 import { findSession, touchSession } from "../../db/queries/sessions";
 import { findToken, findTokenRoles, touchToken } from "../../db/queries/tokens";
 import { toDatabaseError } from "../../db/database-error";
-import { digestSecret, TOKEN_PREFIX } from "../../lib/accounts/secrets";
+import { digestSecret, TOKEN_PREFIX } from "../../lib/account/secrets";
 import { AppError } from "../../lib/errors/app-error";
 import { type Capability, may, type Role, tokenRoles } from "../../lib/roles/roles";
 import { readSessionId } from "./session-cookie";

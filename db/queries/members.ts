@@ -1,4 +1,5 @@
 /** Who belongs to a lab, with which roles. */
+import { AppError } from "../../lib/errors/app-error";
 import type { Role } from "../../lib/roles/roles";
 import type { Trx } from "../client";
 
@@ -26,13 +27,11 @@ export async function listMembers(trx: Trx, labId: string): Promise<MemberRow[]>
   return membersOf(trx, labId).orderBy("a.name").orderBy("a.id").execute();
 }
 
-export async function findMember(
-  trx: Trx,
-  labId: string,
-  accountId: string,
-): Promise<MemberRow | null> {
+/** @throws AppError "not-found" */
+export async function getMember(trx: Trx, labId: string, accountId: string): Promise<MemberRow> {
   const row = await membersOf(trx, labId).where("a.id", "=", accountId).executeTakeFirst();
-  return row ?? null;
+  if (row === undefined) throw new AppError("not-found", "There is no such member of this lab.");
+  return row;
 }
 
 export async function findMemberByEmail(

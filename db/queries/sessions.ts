@@ -39,6 +39,19 @@ export async function createSession(
   return row.id;
 }
 
+/** The lab that the account's newest session worked in. */
+export async function findLastLab(trx: Trx, accountId: string): Promise<string | null> {
+  const row = await trx
+    .selectFrom("sessions")
+    .select("lab_id")
+    .where("account_id", "=", accountId)
+    .where("lab_id", "is not", null)
+    .orderBy("created_at", "desc")
+    .limit(1)
+    .executeTakeFirst();
+  return row?.lab_id ?? null;
+}
+
 /** Notes that the session is in use, once a minute at most. */
 export async function touchSession(trx: Trx, sessionId: string): Promise<void> {
   await trx

@@ -1,5 +1,6 @@
 /** API tokens for scripts. */
 import { sql, type Selectable } from "kysely";
+import { AppError } from "../../lib/errors/app-error";
 import type { Role } from "../../lib/roles/roles";
 import type { Db, Trx } from "../client";
 import type { ApiTokensTable } from "../schema/api-tokens";
@@ -84,13 +85,11 @@ export async function listTokens(trx: Trx, labId: string, accountId?: string): P
   ).execute();
 }
 
-export async function findTokenRow(
-  trx: Trx,
-  labId: string,
-  tokenId: string,
-): Promise<TokenRow | null> {
+/** @throws AppError "not-found" */
+export async function getTokenRow(trx: Trx, labId: string, tokenId: string): Promise<TokenRow> {
   const row = await tokensOf(trx, labId).where("t.id", "=", tokenId).executeTakeFirst();
-  return row ?? null;
+  if (row === undefined) throw new AppError("not-found", "There is no such token.");
+  return row;
 }
 
 export async function revokeToken(trx: Trx, labId: string, tokenId: string): Promise<void> {

@@ -1,0 +1,12 @@
+import { handle } from "@/app/_server/handle";
+import { toTrailEvent } from "@/app/_server/views";
+import { listLabEvents } from "@/db/queries/audit";
+import { listTrail } from "@/lib/api/labs";
+
+export const GET = handle(listTrail, ({ inLab, scope, query }) =>
+  inLab(async (trx) => {
+    const { before, page_size: size } = query;
+    const rows = await listLabEvents(trx, scope.labId, { before, limit: size + 1 });
+    return { events: rows.slice(0, size).map(toTrailEvent), more: rows.length > size };
+  }),
+);

@@ -1,0 +1,32 @@
+/**
+ * A convenience ahead of pages: tells them their address, and sends browsers without a cookie to
+ * the sign-in. It decides nothing: pages and handlers look at the session themselves.
+ */
+import { type NextRequest, NextResponse } from "next/server";
+import { PATH_HEADER } from "@/app/_server/path-header";
+import { sessionCookieName } from "@/app/_server/session-cookie";
+
+const PUBLIC = /^\/(sign-in|invitation)(\/|$)/;
+
+export function proxy(request: NextRequest): NextResponse {
+  const { pathname, search } = request.nextUrl;
+  const path = `${pathname}${search}`;
+  if (!PUBLIC.test(pathname) && !request.cookies.has(sessionCookieName())) {
+    const target = request.nextUrl.clone();
+    target.pathname = "/sign-in";
+    target.search = pathname === "/" ? "" : `?next=${encodeURIComponent(path)}`;
+    return NextResponse.redirect(target);
+  }
+  const headers = new Headers(request.headers);
+  headers.set(PATH_HEADER, path);
+  const response = NextResponse.next({ request: { headers } });
+  response.headers.set("x-frame-options", "DENY");
+  response.headers.set("x-content-type-options", "nosniff");
+  response.headers.set("referrer-policy", "same-origin");
+  return response;
+}
+
+// Never under /api: the proxy would hold whole uploads in memory.
+export const config = {
+  matcher: ["/((?!api/|_next/|.*\\.[a-z0-9]+$).*)"],
+};
