@@ -3,6 +3,7 @@
  * back, whose tweeter warms up, and whose harmonics sink into the noise at the lowest level.
  * For tests of figures and screens; no number in it was measured.
  */
+import type { Criterion } from "../../lib/series/series-schema";
 import { resultSchema, type Quality, type Result } from "../../lib/result/result-schema";
 
 const NOMINAL_HZ = [
@@ -154,6 +155,12 @@ function toRun({ level, kind, file }: (typeof RUNS)[number]) {
   };
 }
 
+const toLimit = <Numbers extends object>(criterion: Criterion, numbers: Numbers) => ({
+  criterion,
+  kind: "short-term" as const,
+  ...numbers,
+});
+
 function toBand(nominal: number, index: number) {
   const hz = exactHz(index);
   const sound = (drive: number): number => round(drive + responseDb(hz) - lossDb(hz, drive));
@@ -261,16 +268,10 @@ function toBand(nominal: number, index: number) {
       },
     ],
     limits: [
-      ...[3, 10].map((thd_percent) => ({
-        criterion: { thd_percent },
-        kind: "short-term" as const,
-        ...(beyond ? tooHigh : limitAt(null)),
-      })),
-      ...[1, 3].map((compression_dB) => ({
-        criterion: { compression_dB },
-        kind: "short-term" as const,
-        ...limitAt(driveAtLoss(hz, compression_dB)),
-      })),
+      ...[3, 10].map((thd_percent) => toLimit({ thd_percent }, beyond ? tooHigh : limitAt(null))),
+      ...[1, 3].map((compression_dB) =>
+        toLimit({ compression_dB }, limitAt(driveAtLoss(hz, compression_dB))),
+      ),
     ],
   };
 }
