@@ -46,7 +46,7 @@ export const bundlePath = (name) => join(buildDir, `${name}.mjs`);
  */
 export async function ensureBundle(bundle) {
   if (isFresh(bundle)) return false;
-  const { build } = await import("esbuild");
+  const { build, stop } = await import("esbuild");
   mkdirSync(buildDir, { recursive: true });
   const draft = `${bundlePath(bundle.name)}.${process.pid}.draft`;
   const result = await build({
@@ -66,6 +66,8 @@ export async function ensureBundle(bundle) {
     metafile: true,
     logLevel: "warning",
   });
+  // Its helper process would stay as long as we do.
+  await stop();
   const inputs = Object.keys(result.metafile.inputs).filter(
     (file) => !file.includes("node_modules/"),
   );

@@ -1,7 +1,7 @@
 /** Programs that come from Debian. */
 import { existsSync, readdirSync } from "node:fs";
 import { delimiter, join } from "node:path";
-import { mustRun, runCommand } from "./run-command";
+import { mustRun } from "./run-command";
 import { SetUpError } from "./set-up-error";
 
 export interface SystemPackage {
@@ -31,21 +31,40 @@ export const program = (name: string): SystemPackage => ({
   present: () => searchPath().some((folder) => existsSync(join(folder, name))),
 });
 
+/** What the way of installing depends on. */
+export interface Machine {
+  isRoot: boolean;
+  hasTerminal: boolean;
+  has: (programName: string) => boolean;
+  /** Runs a command to its end; throws where it fails. */
+  run: (command: readonly string[]) => Promise<unknown>;
+}
+
+const thisMachine: Machine = {
+  isRoot: process.getuid?.() === 0,
+  hasTerminal: process.stdin.isTTY,
+  has: (name) => program(name).present(),
+  run: (command) => mustRun("env", command),
+};
+
 /**
  * Installs what is missing from Debian, as root or by sudo.
  *
  * @throws SetUpError in one sentence where neither is there, or Debian refuses
  */
-export async function ensureSystemPackages(packages: readonly SystemPackage[]): Promise<void> {
+export async function ensureSystemPackages(
+  packages: readonly SystemPackage[],
+  machine: Machine = thisMachine,
+): Promise<void> {
   const missing = packages.filter((one) => !one.present()).map((one) => one.debian);
   if (missing.length === 0) return;
   const byHand = `apt-get install --no-install-recommends ${missing.join(" ")}`;
-  if (!program("apt-get").present()) {
+  if (!machine.has("apt-get")) {
     throw new SetUpError(
       `Missing: ${missing.join(", ")}. This system has no apt-get: install by its own means and run the command again.`,
     );
   }
-  const prefix = await findRootPrefix();
+  const prefix = await findRootPrefix(machine);
   if (prefix === null) {
     throw new SetUpError(
       `Missing: ${missing.join(", ")}. Installing needs root: run "${byHand}" as root once, then this command again.`,
@@ -53,8 +72,11 @@ export async function ensureSystemPackages(packages: readonly SystemPackage[]): 
   }
   process.stderr.write(`Installing ${missing.join(", ")} from Debian ...\n`);
   try {
-    await aptGet(prefix, ["update"]);
-    await aptGet(prefix, ["install", "--yes", "--no-install-recommends", ...missing]);
+    await machine.run([...prefix, ...aptGet("update")]);
+    await machine.run([
+      ...prefix,
+      ...aptGet("install", "--yes", "--no-install-recommends", ...missing),
+    ]);
   } catch (error) {
     throw new SetUpError(
       `Debian could not install ${missing.join(", ")}: the lines below say why; run "${byHand}" as root, then this command again.\n` +
@@ -69,19 +91,24 @@ export async function ensureSystemPackages(packages: readonly SystemPackage[]): 
   }
 }
 
-async function findRootPrefix(): Promise<string[] | null> {
-  if (process.getuid?.() === 0) return [];
-  if (!program("sudo").present()) return null;
+async function findRootPrefix(machine: Machine): Promise<string[] | null> {
+  if (machine.isRoot) return [];
+  if (!machine.has("sudo")) return null;
   // With a terminal sudo may ask for the password; without one only a free pass will do.
-  if (process.stdin.isTTY) return ["sudo"];
-  const { code } = await runCommand("sudo", ["-n", "true"]);
-  return code === 0 ? ["sudo", "-n"] : null;
+  if (machine.hasTerminal) return ["sudo"];
+  return machine.run(["sudo", "-n", "true"]).then(
+    () => ["sudo", "-n"],
+    () => null,
+  );
 }
 
-function aptGet(prefix: readonly string[], args: readonly string[]): Promise<string> {
-  const command = ["env", "DEBIAN_FRONTEND=noninteractive", "apt-get", "--quiet", ...args];
-  return mustRun("env", [...prefix, ...command]);
-}
+const aptGet = (...args: string[]): string[] => [
+  "env",
+  "DEBIAN_FRONTEND=noninteractive",
+  "apt-get",
+  "--quiet",
+  ...args,
+];
 
 function searchPath(): string[] {
   const folders = (process.env["PATH"] ?? "").split(delimiter);
