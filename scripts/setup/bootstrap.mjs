@@ -125,6 +125,8 @@ export function fail(error) {
   process.exitCode = 1;
 }
 
+const STOP_SIGNALS = ["SIGINT", "SIGTERM", "SIGHUP"];
+
 /** @param {string[]} args */
 function runNpm(args) {
   const npm = process.env.npm_execpath;
@@ -145,6 +147,12 @@ function runNpm(args) {
       error.name = "SetUpError";
       reject(error);
     };
+    const end = () => {
+      child.kill("SIGTERM");
+      child.once("exit", () => process.exit(0));
+    };
+    STOP_SIGNALS.forEach((signal) => process.on(signal, end));
+    child.once("exit", () => STOP_SIGNALS.forEach((signal) => process.off(signal, end)));
     child.on("error", (error) => refuse(error.message));
     child.on("exit", (code, signal) =>
       code === 0 ? resolve(undefined) : refuse("ended with " + (signal || code)),

@@ -1,5 +1,5 @@
 /** One holder at a time, told apart from a later process that was given the same number. */
-import { mkdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { linkSync, mkdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { dirname } from "node:path";
 import { z } from "zod";
 import { readText } from "../../lib/config/secrets";
@@ -14,17 +14,27 @@ type Holder = z.infer<typeof holderSchema>;
  */
 export function takeLock(path: string): (() => void) | number {
   mkdirSync(dirname(path), { recursive: true, mode: 0o711 });
+  const me: Holder = { pid: process.pid, started: startOf(process.pid) ?? "" };
   for (;;) {
-    try {
-      const me: Holder = { pid: process.pid, started: startOf(process.pid) ?? "" };
-      writeFileSync(path, JSON.stringify(me), { flag: "wx", mode: 0o600 });
-      return () => rmSync(path, { force: true });
-    } catch (error) {
-      if (!hasErrorCode(error, "EEXIST")) throw error;
-    }
+    if (createWhole(path, JSON.stringify(me))) return () => rmSync(path, { force: true });
     const holder = parseHolder(readText(path));
     if (holder !== null && startOf(holder.pid) === holder.started) return holder.pid;
     rmSync(path, { force: true });
+  }
+}
+
+/** @returns false where the file stands already; a file that appears is complete at once */
+function createWhole(path: string, text: string): boolean {
+  const draft = `${path}.${process.pid}`;
+  writeFileSync(draft, text, { mode: 0o600 });
+  try {
+    linkSync(draft, path);
+    return true;
+  } catch (error) {
+    if (hasErrorCode(error, "EEXIST")) return false;
+    throw error;
+  } finally {
+    rmSync(draft, { force: true });
   }
 }
 
