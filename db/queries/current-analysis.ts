@@ -1,12 +1,6 @@
 /** Which analysis of a series counts now. */
+import type { Progress } from "../../lib/api/series";
 import type { Trx } from "../client";
-
-export interface CurrentAnalysis {
-  id: string;
-  version: number;
-  state: "queued" | "running" | "done" | "failed";
-  inputs_digest: string;
-}
 
 /**
  * The analysis asked for last, cancelled ones left out: asking again for recordings that were
@@ -69,4 +63,23 @@ export async function listOpenAnalyses(
     .where("state", "in", ["queued", "running"])
     .execute();
   return rows.map((row) => row.id);
+}
+
+/** Progress of the analyses under way, by series. */
+export async function listProgress(
+  trx: Trx,
+  labId: string,
+  seriesIds: readonly string[],
+): Promise<Map<string, Progress>> {
+  if (seriesIds.length === 0) return new Map();
+  const rows = await trx
+    .selectFrom("analyses")
+    .select(["series_id", "progress"])
+    .where("lab_id", "=", labId)
+    .where("series_id", "in", seriesIds)
+    .where("state", "=", "running")
+    .execute();
+  return new Map(
+    rows.flatMap((row) => (row.progress === null ? [] : [[row.series_id, row.progress]])),
+  );
 }

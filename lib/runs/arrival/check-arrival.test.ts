@@ -6,7 +6,8 @@ import { planSchema } from "../../series/plan-schema";
 import { toPlannedRuns } from "../../series/planned-runs";
 import { arrivalReportSchema, type CheckCode } from "../arrival-schema";
 import type { ArrivalRequest, ArrivalSibling } from "./arrival-request";
-import { checkArrival, toVerdict } from "./check-arrival";
+import { checkArrival } from "./check-arrival";
+import { toVerdict } from "./verdict";
 
 const plan = planSchema.parse({});
 const planned = toPlannedRuns(plan, "fennel5");

@@ -49,12 +49,6 @@ export async function checkArrival(request: ArrivalRequest): Promise<ArrivalRepo
   }
 }
 
-/** The verdict of a whole report: its worst check. */
-export function toVerdict(report: ArrivalReport): "passed" | "warned" | "failed" {
-  if (report.checks.some((check) => check.verdict === "fail")) return "failed";
-  return report.checks.some((check) => check.verdict === "warn") ? "warned" : "passed";
-}
-
 function unreadable({ run, engineVersion }: ArrivalRequest, error: AppError): ArrivalReport {
   const channel = error.code === "audio.channel-missing";
   return {
