@@ -1,0 +1,12 @@
+import { may, type Role } from "@/lib/roles/roles";
+import type { NavItem } from "./main-nav";
+
+/** The rooms that these roles may enter; without a lab there are none. */
+export function toNavItems(roles: readonly Role[]): NavItem[] {
+  if (!may(roles, "see")) return [];
+  return [
+    { href: "/series", label: "Series" },
+    { href: "/loudspeakers", label: "Loudspeakers" },
+    ...(may(roles, "administer") ? [{ href: "/members", label: "Members" }] : []),
+  ];
+}
