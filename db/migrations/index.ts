@@ -11,6 +11,7 @@ import * as review from "./20261201t1100-review";
 import * as publications from "./20261201t1101-publications";
 import * as mail from "./20261201t1102-mail";
 import * as publicLookups from "./20261201t1103-public-lookups";
+import * as labLookup from "./20261201t1104-lab-lookup";
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0900-people": people,
@@ -24,4 +25,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t1101-publications": publications,
   "20261201t1102-mail": mail,
   "20261201t1103-public-lookups": publicLookups,
+  "20261201t1104-lab-lookup": labLookup,
 };

@@ -70,3 +70,10 @@ export async function foundLab(
     });
   }
 }
+
+/** @param owner database in the role of the owner. By slug. */
+export async function listAllLabs(
+  owner: Db,
+): Promise<{ id: string; slug: string; name: string }[]> {
+  return owner.selectFrom("labs").select(["id", "slug", "name"]).orderBy("slug").execute();
+}

@@ -12,7 +12,7 @@ export const labSchema = z.object({
 });
 export type Lab = z.infer<typeof labSchema>;
 
-const timeZoneSchema = z.string().max(60).refine(isTimeZone, {
+export const timeZoneSchema = z.string().max(60).refine(isTimeZone, {
   error: "Enter a time zone such as Europe/Helsinki or UTC.",
 });
 

@@ -228,7 +228,8 @@ describe("row-level security", () => {
         if (rows[0]?.may !== true) continue;
         tried += 1;
         const name = sql.table(table.name);
-        const act = verb === "update" ? sql`update ${name} set lab_id = lab_id` : sql`delete from ${name}`;
+        const act =
+          verb === "update" ? sql`update ${name} set lab_id = lab_id` : sql`delete from ${name}`;
         const done = await inLab(bench.app, own.admin, (trx) =>
           sql`${act} where lab_id = ${other.id}`.execute(trx),
         );
