@@ -1,0 +1,145 @@
+/**
+ * The two questions to the distortion of a band: is there enough of it to explain the loss, and did it
+ * grow like an overload or only follow the output (docs/onset-notes.md section 5)?
+ */
+import { harmonicsOf, type LevelGroup, type MeanHarmonic } from "./compression";
+import type { Detection } from "./onset/detect";
+
+/** An overload loses level only with this much odd distortion. */
+export const OVERLOAD_ODD_RATIO = 0.2;
+/** Noise alone must stay under this ratio for a verdict. */
+const NOISE_ODD_RATIO = 0.14;
+/** Under this loss, dB, the first question says nothing. */
+const SMALLEST_LOSS_DB = 0.12;
+const LARGEST_GROWTH_NEEDED_DB = 1;
+/**
+ * No memoryless law has an odd ratio under 1/3. From here the ratio speaks for one, and half the growth is asked:
+ * tanh and algebraic laws grow only by about half their loss beyond the output.
+ */
+const MEMORYLESS_ODD_RATIO = 0.3;
+/** From this loss, dB, such a ratio means 6 % and more of odd distortion and decides alone: an arctangent's H3 follows its own output. */
+const TELLING_LOSS_DB = 2;
+const GROWTH_WITHOUT_LOSS_DB = 0.5;
+/** Standard uncertainty of a component in dB is this times 10^(-SNR/20). */
+const AMPLITUDE_SIGMA_DB = 20 / Math.LN10 / Math.SQRT2;
+
+export type OverloadVerdict = "overload" | "no overload" | "no verdict";
+
+export interface DistortionEvidence {
+  verdict: OverloadVerdict;
+  /** rms of the odd harmonics, referred to the input, over the share of amplitude lost; NaN without a loss. */
+  oddRatio: number;
+  /** dB by which H3 grew beyond what follows the output; NaN where unknown. */
+  growthDb: number;
+  growthNeededDb: number;
+  /** Why there is no verdict; "" otherwise. */
+  reason: string;
+}
+
+/**
+ * Asks both questions of band `b` at its highest run.
+ *
+ * @param groups plain short-term levels, ascending.
+ * @param detection of the same band over the same levels.
+ */
+export function weighDistortion(
+  groups: readonly LevelGroup[],
+  detection: Detection,
+  bandIndex: number,
+): DistortionEvidence {
+  const top = groups[detection.top];
+  const none = { oddRatio: Number.NaN, growthDb: Number.NaN, growthNeededDb: Number.NaN };
+  if (!top) return { verdict: "no verdict", ...none, reason: "no run" };
+  const odd = harmonicsOf(top, bandIndex).filter(
+    ({ order, ratio, quality }) => order % 2 === 1 && quality !== null && ratio === ratio,
+  );
+  const third = odd.find(({ order }) => order === 3);
+  if (!third)
+    return {
+      verdict: "no verdict",
+      ...none,
+      reason: "the third harmonic lies above the measured range",
+    };
+
+  const lossDb = detection.lossDb[detection.top] ?? Number.NaN;
+  const respondDb = (order: number): number => responseDb(groups, bandIndex, order);
+  const share = 1 - 10 ** (-lossDb / 20);
+  const hasLoss = lossDb >= SMALLEST_LOSS_DB;
+  const audible = odd.filter(({ quality }) => quality !== "noise");
+  const oddRatio = hasLoss
+    ? Math.sqrt(sum(audible.map(({ inputRatio }) => Math.max(inputRatio, 0)))) / share
+    : Number.NaN;
+  const noiseRatio = Math.sqrt(sum(odd.map((harmonic) => inputFloor(harmonic, respondDb)))) / share;
+  const { growthDb, sigmaDb } = growthOf(groups, detection, bandIndex, third);
+  const memoryless = oddRatio >= MEMORYLESS_ODD_RATIO;
+  const needed = hasLoss
+    ? Math.min(lossDb, LARGEST_GROWTH_NEEDED_DB) * (memoryless ? 0.5 : 1)
+    : GROWTH_WITHOUT_LOSS_DB;
+  const growthNeededDb = Math.max(needed, 3 * sigmaDb);
+  const figures = { oddRatio, growthDb, growthNeededDb };
+
+  const measured = third.quality === "measured" && oddRatio >= OVERLOAD_ODD_RATIO;
+  if (hasLoss && !(noiseRatio <= NOISE_ODD_RATIO) && !measured) {
+    return { verdict: "no verdict", ...figures, reason: "the odd harmonics lie in the noise" };
+  }
+  if (hasLoss && oddRatio < OVERLOAD_ODD_RATIO)
+    return { verdict: "no overload", ...figures, reason: "" };
+  if (memoryless && measured && lossDb >= TELLING_LOSS_DB)
+    return { verdict: "overload", ...figures, reason: "" };
+  const grew = third.quality !== "noise" && growthDb > growthNeededDb;
+  return { verdict: grew ? "overload" : "no overload", ...figures, reason: "" };
+}
+
+const sum = (values: number[]): number => values.reduce((total, value) => total + value, 0);
+
+/** Floor of a harmonic referred to the input: by its own response ratio, or by that of the lowest run. */
+function inputFloor(harmonic: MeanHarmonic, respondDb: (order: number) => number): number {
+  const { ratio, inputRatio, floorRatio, order } = harmonic;
+  if (ratio > 0 && inputRatio > 0) return floorRatio * (inputRatio / ratio);
+  const response = respondDb(order);
+  return floorRatio * (Number.isFinite(response) ? 10 ** (-response / 10) : 1);
+}
+
+/** Linear response at order times the band's frequency re the band, dB, from the lowest run's bands. */
+function responseDb(groups: readonly LevelGroup[], bandIndex: number, order: number): number {
+  const gains = groups[0]?.gainDb;
+  const at = bandIndex + 10 * Math.log10(order);
+  const low = gains?.[Math.floor(at)] ?? Number.NaN;
+  const high = gains?.[Math.ceil(at)] ?? Number.NaN;
+  return low + (at - Math.floor(at)) * (high - low) - (gains?.[bandIndex] ?? Number.NaN);
+}
+
+/** Growth of H3 over the smallest prediction that any linear run makes for it. */
+function growthOf(
+  groups: readonly LevelGroup[],
+  detection: Detection,
+  bandIndex: number,
+  third: MeanHarmonic,
+): { growthDb: number; sigmaDb: number } {
+  const topDb = 10 * Math.log10(third.ratio);
+  const topSigmaDb = sigmaOf(third);
+  let growthDb = Number.NaN;
+  let sigmaDb = topSigmaDb;
+  const last = Math.max(Math.min(detection.firstActive, detection.top), 1);
+  for (const [k, group] of groups.slice(0, last).entries()) {
+    const own = harmonicsOf(group, bandIndex).find(
+      ({ order, quality }) => order === 3 && quality !== null,
+    );
+    const outputStepDb =
+      (groups[detection.top]?.driveDb ?? Number.NaN) -
+      group.driveDb -
+      ((detection.lossDb[detection.top] ?? Number.NaN) - (detection.lossDb[k] ?? Number.NaN));
+    if (!own || !Number.isFinite(outputStepDb)) continue;
+    const inNoise = own.quality === "noise" || !(own.ratio > own.floorRatio);
+    const startDb = 10 * Math.log10(inNoise ? own.floorRatio : own.ratio);
+    const grownDb = topDb - (startDb + 2 * outputStepDb);
+    if (!(grownDb <= growthDb)) {
+      growthDb = grownDb;
+      sigmaDb = Math.hypot(topSigmaDb, inNoise ? 0 : sigmaOf(own));
+    }
+  }
+  return { growthDb, sigmaDb };
+}
+
+const sigmaOf = ({ ratio, floorRatio }: MeanHarmonic): number =>
+  ratio > 0 ? AMPLITUDE_SIGMA_DB * Math.sqrt(floorRatio / ratio) : Infinity;

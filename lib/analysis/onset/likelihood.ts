@@ -1,0 +1,112 @@
+/** How well each law of a plan explains one band's gains, the common gain profiled out. */
+import { ONSET_STEP_DB, type OnsetPlan } from "./onset-plan";
+
+/** One band over the levels of a plan. */
+export interface BandGains {
+  /** [levels] level minus drive, dB; NaN where the band has no value at that level. */
+  gainDb: Float64Array;
+  /** [levels] standard uncertainty of noise and repeats, dB. */
+  sigmaDb: Float64Array;
+  /** [levels] standard uncertainty of the step to this level, dB; common to all bands. */
+  stepSigmaDb: Float64Array;
+}
+
+/** Laws are followed to this much, dB, and this share of the loss. */
+const LAW_ERROR_DB = 0.02;
+const LAW_ERROR_SHARE = 0.02;
+
+export interface OnsetLikelihood {
+  plan: OnsetPlan;
+  /** First column looked at, and how many. */
+  firstColumn: number;
+  columns: number;
+  /** [shapes * columns] -chi^2/2. */
+  logLikelihood: Float64Array;
+  /** [shapes] log of the mean likelihood over the columns: the evidence for a shape. */
+  shapeEvidence: Float64Array;
+  /** [levels] weights 1/sigma^2; 0 where there is no value. */
+  weights: Float64Array;
+  gainDb: Float64Array;
+  /** Uncertainty of the profiled gain, dB. */
+  gainSigmaDb: number;
+}
+
+/**
+ * Likelihood of every shape at every onset from `lowDb` to `highDb`.
+ *
+ * @param gains one band, on the levels of the plan; not modified. At least two finite gains.
+ * @param lossDb [levels] measured loss, dB, that scales the tolerance of a law; NaN as in the gains.
+ * @see docs/onset-notes.md section 3
+ */
+export function computeLikelihood(
+  plan: OnsetPlan,
+  gains: BandGains,
+  lossDb: Float64Array,
+  lowDb: number,
+  highDb: number,
+): OnsetLikelihood {
+  const levels = plan.drivesDb.length;
+  const weights = new Float64Array(levels);
+  const gainDb = new Float64Array(levels);
+  const base = gains.gainDb.find((gain) => Number.isFinite(gain)) ?? 0;
+  let weightSum = 0;
+  let first = 0;
+  let second = 0;
+  for (let k = 0; k < levels; k++) {
+    const gain = gains.gainDb[k] ?? Number.NaN;
+    if (!Number.isFinite(gain)) continue;
+    const law = LAW_ERROR_DB + LAW_ERROR_SHARE * Math.max(lossDb[k] ?? 0, 0);
+    const weight = 1 / ((gains.sigmaDb[k] ?? 0) ** 2 + (gains.stepSigmaDb[k] ?? 0) ** 2 + law ** 2);
+    weights[k] = weight;
+    gainDb[k] = gain - base;
+    weightSum += weight;
+    first += weight * (gain - base);
+    second += weight * (gain - base) ** 2;
+  }
+  const clampColumn = (db: number): number =>
+    Math.min(Math.max(Math.round((db - plan.firstOnsetDb) / ONSET_STEP_DB), 0), plan.columns - 1);
+  const firstColumn = clampColumn(lowDb);
+  const columns = clampColumn(highDb) - firstColumn + 1;
+  const logLikelihood = new Float64Array(plan.shapes.length * columns);
+  const shapeEvidence = new Float64Array(plan.shapes.length);
+  const r1 = new Float64Array(columns);
+  const r2 = new Float64Array(columns);
+  for (let j = 0; j < plan.shapes.length; j++) {
+    r1.fill(first);
+    r2.fill(second);
+    plan.levels.forEach(({ profile, at }, k) => {
+      const weight = weights[k] ?? 0;
+      if (weight === 0) return;
+      const from = j * plan.profileLength + at - firstColumn;
+      const twiceGain = 2 * (gainDb[k] ?? 0);
+      for (let i = 0; i < columns; i++) {
+        const loss = profile[from - i] ?? 0;
+        const weighted = weight * loss;
+        r1[i] = (r1[i] ?? 0) + weighted;
+        r2[i] = (r2[i] ?? 0) + weighted * (loss + twiceGain);
+      }
+    });
+    let best = -Infinity;
+    for (let i = 0; i < columns; i++) {
+      const value = -0.5 * ((r2[i] ?? 0) - (r1[i] ?? 0) ** 2 / weightSum);
+      logLikelihood[j * columns + i] = value;
+      if (value > best) best = value;
+    }
+    let sum = 0;
+    for (let i = 0; i < columns; i++) {
+      const below = (logLikelihood[j * columns + i] ?? 0) - best;
+      if (below > -30) sum += Math.exp(below);
+    }
+    shapeEvidence[j] = best + Math.log(sum / columns);
+  }
+  return {
+    plan,
+    firstColumn,
+    columns,
+    logLikelihood,
+    shapeEvidence,
+    weights,
+    gainDb: gains.gainDb,
+    gainSigmaDb: Math.sqrt(1 / weightSum),
+  };
+}

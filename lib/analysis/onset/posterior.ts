@@ -1,0 +1,207 @@
+/** Posterior of the onset and of any other loss level, from a likelihood and the weights of the shapes. */
+import { getAt } from "../get-at";
+import { ONSET_STEP_DB, type OnsetPlan } from "./onset-plan";
+import type { OnsetLikelihood } from "./likelihood";
+import type { Shape } from "./shapes";
+
+/** One law of the posterior: a shape with its onset. */
+export interface LawSample {
+  onsetDb: number;
+  shape: Shape;
+}
+
+export interface Quantiles {
+  lowDb: number;
+  medianDb: number;
+  highDb: number;
+}
+
+export interface OnsetPosterior {
+  /** Median and 90 % credible interval of the drive at which `lossDb` is lost; never above `ceilingDb`. */
+  quantiles: (lossDb: number, ceilingDb: number) => Quantiles;
+  /** Equally likely laws, in order of their onset. */
+  samples: LawSample[];
+  /** Linear gain of the band, dB, posterior mean. */
+  gainDb: number;
+  gainSigmaDb: number;
+  /** chi^2 of the best law among those with weight. */
+  chiSquare: number;
+  /** Name of the law with the most weight. */
+  law: string;
+  /** Probability that the slope just above the top drive's loss is at most `limit`. */
+  probabilitySlopeUpTo: (limit: number) => number;
+}
+
+/** What the grid cannot resolve is added to both ends of an interval, dB. */
+const INTERVAL_MARGIN_DB = 0.1;
+const SAMPLES = 192;
+const NEGLIGIBLE_LOG = -24;
+
+/**
+ * @param shapePrior [shapes] weights, summing to 1; a shape of weight 0 is left out.
+ */
+export function computePosterior(
+  likelihood: OnsetLikelihood,
+  shapePrior: Float64Array,
+): OnsetPosterior {
+  const { plan, columns, logLikelihood } = likelihood;
+  const used = plan.shapes.map((_, j) => j).filter((j) => (shapePrior[j] ?? 0) > 0);
+  const logPrior = Float64Array.from(shapePrior, Math.log);
+  let best = -Infinity;
+  let bestFit = -Infinity;
+  for (const j of used) {
+    for (let i = 0; i < columns; i++) {
+      const fit = logLikelihood[j * columns + i] ?? 0;
+      if (fit > bestFit) bestFit = fit;
+      if (fit + (logPrior[j] ?? 0) > best) best = fit + (logPrior[j] ?? 0);
+    }
+  }
+  const mass = new Float64Array(plan.shapes.length * columns);
+  const byColumn = new Float64Array(columns);
+  const byShape = new Float64Array(plan.shapes.length);
+  let total = 0;
+  for (const j of used) {
+    const offset = (logPrior[j] ?? 0) - best;
+    for (let i = 0; i < columns; i++) {
+      const log = (logLikelihood[j * columns + i] ?? 0) + offset;
+      if (log < NEGLIGIBLE_LOG) continue;
+      const value = Math.exp(log);
+      mass[j * columns + i] = value;
+      byColumn[i] = (byColumn[i] ?? 0) + value;
+      byShape[j] = (byShape[j] ?? 0) + value;
+      total += value;
+    }
+  }
+  const grid = {
+    firstDb: plan.firstOnsetDb + likelihood.firstColumn * ONSET_STEP_DB,
+    mass,
+    columns,
+    used,
+    total,
+  };
+  const samples = drawSamples(plan, grid, byColumn);
+  return {
+    quantiles: (lossDb, ceilingDb) => quantilesOf(plan, grid, lossDb, ceilingDb),
+    samples,
+    gainDb: meanGain(likelihood, samples),
+    gainSigmaDb: likelihood.gainSigmaDb,
+    chiSquare: -2 * bestFit,
+    law: heaviestLaw(plan, byShape),
+    probabilitySlopeUpTo: (limit) => {
+      const top = plan.drivesDb.at(-1) ?? 0;
+      const flat = samples.filter(
+        ({ shape, onsetDb }) => slopeAt(shape, top - onsetDb) <= limit + 1e-9,
+      );
+      return flat.length / samples.length;
+    },
+  };
+}
+
+/** d(out)/d(in) of a law just below a drive, from a chord of 0.5 dB. */
+export function slopeAt(shape: Shape, offsetDb: number): number {
+  return 1 - (shape.lossDb(offsetDb) - shape.lossDb(offsetDb - 0.5)) / 0.5;
+}
+
+interface MassGrid {
+  firstDb: number;
+  /** [shapes * columns] */
+  mass: Float64Array;
+  columns: number;
+  used: number[];
+  total: number;
+}
+
+function quantilesOf(
+  plan: OnsetPlan,
+  grid: MassGrid,
+  lossDb: number,
+  ceilingDb: number,
+): Quantiles {
+  const { columns, mass, firstDb } = grid;
+  // Drives of the loss lie on the onset's own lattice moved by each shape's offset: spread linearly.
+  const bins = columns + Math.ceil(60 / ONSET_STEP_DB);
+  const histogram = new Float64Array(bins + 1);
+  const lowestOffset = Math.min(0, ...grid.used.map((j) => plan.shapes[j]?.offsetDb(lossDb) ?? 0));
+  for (const j of grid.used) {
+    const offset = plan.shapes[j]?.offsetDb(lossDb) ?? Infinity;
+    const moved = Math.min((offset - lowestOffset) / ONSET_STEP_DB, bins);
+    const whole = Math.floor(moved);
+    const part = moved - whole;
+    for (let i = 0; i < columns; i++) {
+      const value = mass[j * columns + i] ?? 0;
+      if (value === 0) continue;
+      const bin = Math.min(i + whole, bins);
+      histogram[bin] = (histogram[bin] ?? 0) + value * (1 - part);
+      if (part > 0) {
+        const next = Math.min(bin + 1, bins);
+        histogram[next] = (histogram[next] ?? 0) + value * part;
+      }
+    }
+  }
+  const origin = firstDb + lowestOffset - ONSET_STEP_DB / 2;
+  const at = (share: number): number => {
+    let sum = 0;
+    for (let bin = 0; bin <= bins; bin++) {
+      const here = histogram[bin] ?? 0;
+      if (sum + here >= share * grid.total && here > 0) {
+        return Math.min(
+          origin + (bin + (share * grid.total - sum) / here) * ONSET_STEP_DB,
+          ceilingDb,
+        );
+      }
+      sum += here;
+    }
+    return ceilingDb;
+  };
+  return {
+    lowDb: at(0.05) - INTERVAL_MARGIN_DB,
+    medianDb: at(0.5),
+    highDb: Math.min(at(0.95) + INTERVAL_MARGIN_DB, ceilingDb),
+  };
+}
+
+/** Systematic draw: equal steps through the cumulated mass, column by column; nothing random. */
+function drawSamples(plan: OnsetPlan, grid: MassGrid, byColumn: Float64Array): LawSample[] {
+  const samples: LawSample[] = [];
+  let before = 0;
+  for (let i = 0; i < grid.columns; i++) {
+    const here = byColumn[i] ?? 0;
+    if (here === 0) continue;
+    const onsetDb = grid.firstDb + i * ONSET_STEP_DB;
+    let sum = before;
+    for (const j of grid.used) {
+      const value = grid.mass[j * grid.columns + i] ?? 0;
+      if (value === 0) continue;
+      sum += value;
+      while (samples.length < SAMPLES && (samples.length + 0.5) * grid.total <= sum * SAMPLES) {
+        samples.push({ onsetDb, shape: getAt(plan.shapes, j) });
+      }
+    }
+    before += here;
+  }
+  return samples;
+}
+
+function meanGain(likelihood: OnsetLikelihood, samples: LawSample[]): number {
+  const { plan, weights, gainDb } = likelihood;
+  let weightSum = 0;
+  let sum = 0;
+  plan.drivesDb.forEach((drive, k) => {
+    const weight = weights[k] ?? 0;
+    if (weight === 0) return;
+    const loss =
+      samples.reduce((all, { shape, onsetDb }) => all + shape.lossDb(drive - onsetDb), 0) /
+      samples.length;
+    weightSum += weight;
+    sum += weight * ((gainDb[k] ?? 0) + loss);
+  });
+  return sum / weightSum;
+}
+
+function heaviestLaw(plan: OnsetPlan, byShape: Float64Array): string {
+  const weights = new Map<string, number>();
+  plan.shapes.forEach((shape, j) =>
+    weights.set(shape.law, (weights.get(shape.law) ?? 0) + (byShape[j] ?? 0)),
+  );
+  return [...weights].reduce((a, b) => (b[1] > a[1] ? b : a))[0];
+}
