@@ -1,2 +1,0 @@
-/** Version of the computation: goes up whenever the same recordings may give other numbers. */
-export const ENGINE_VERSION = "1.0.0";
