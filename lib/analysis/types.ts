@@ -100,6 +100,8 @@ export interface MeasuredSeries {
   tuningHz: number | undefined;
   /** Sweep start and rate constant R, s: when a band is passed. */
   sweep: { startHz: number; stopHz: number; rateConstantS: number };
+  /** Calibrator after minus before, dB; absent where there was one recording or none. */
+  calibratorChangeDb?: number;
 }
 
 /** Progress of an analysis, by run and stage. */

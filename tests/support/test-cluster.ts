@@ -2,11 +2,10 @@
  * A database cluster for one run of the tests: its own folder, its own port, gone at the end. A
  * folder that a killed run left behind is taken away by the next.
  */
-import { existsSync, readdirSync, rmSync } from "node:fs";
+import { existsSync, readdirSync } from "node:fs";
 import { join } from "node:path";
 import { createSecrets, type Secrets } from "../../lib/config/secrets";
-import { ensureCluster, stopCluster } from "../../scripts/setup/cluster";
-import { findClusterPlace } from "../../scripts/setup/cluster-place";
+import { ensureCluster, removeInstallation } from "../../scripts/setup/cluster";
 import { ensureDatabase, ensureRoles } from "../../scripts/setup/database";
 import { findFreePort } from "../../scripts/setup/ports";
 import { migrate } from "../../scripts/setup/migrate";
@@ -31,17 +30,13 @@ export async function startTestCluster(): Promise<TestCluster & { stop: () => Pr
     databaseName: TEMPLATE_DATABASE,
     secrets: createSecrets(),
   };
-  const cluster = await ensureCluster({
+  await ensureCluster({
     dataDir,
     port: access.databasePort,
     superuserPassword: access.secrets.database.superuser,
     disposable: true,
   });
-  const stop = async (): Promise<void> => {
-    await cluster.stop();
-    rmSync(cluster.place.folder, { recursive: true, force: true });
-    rmSync(dataDir, { recursive: true, force: true });
-  };
+  const stop = (): Promise<void> => removeInstallation(dataDir);
   try {
     await ensureRoles(access);
     await ensureDatabase(access, TEMPLATE_DATABASE);
@@ -58,10 +53,6 @@ async function removeLeftovers(): Promise<void> {
   for (const name of runs) {
     const pid = Number(/^run-(\d+)$/.exec(name)?.[1] ?? Number.NaN);
     if (Number.isNaN(pid) || existsSync(`/proc/${pid}`)) continue;
-    const dataDir = join(testDir, name);
-    const place = await findClusterPlace(dataDir);
-    await stopCluster(place);
-    rmSync(place.folder, { recursive: true, force: true });
-    rmSync(dataDir, { recursive: true, force: true });
+    await removeInstallation(join(testDir, name));
   }
 }

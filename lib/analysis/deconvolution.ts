@@ -1,0 +1,181 @@
+/**
+ * From a recording of the sweep to the response over lag: spectral division by the stimulus, cut off
+ * at the end of the sweep (docs/domain.md section 1). Harmonic n appears R ln n before the linear part.
+ */
+import { AnalysisError } from "../errors/app-error";
+import { planComplexFft, type ComplexFft } from "./fft/complex-fft";
+import { planRealFft, toFftSize, type RealFft } from "./fft/real-fft";
+
+export interface SweepInUse {
+  startHz: number;
+  stopHz: number;
+  rateConstantS: number;
+  lengthS: number;
+  rateHz: number;
+}
+
+/** A stimulus ready to divide by; one serves every run of its size. */
+export interface Deconvolver {
+  readonly size: number;
+  readonly rateHz: number;
+  /** Peak amplitude of the stimulus re full scale: responses are for a sweep of this amplitude. */
+  readonly amplitude: number;
+  /**
+   * @param samples at most size of them; the rest counts as silence.
+   * @returns response over circular lag, [size], recorded peak re full scale per steady sine of the
+   *   sweep's amplitude; and its envelope in the arrival band. Both valid until the next call.
+   */
+  deconvolve(samples: Float32Array | Float64Array): Deconvolved;
+}
+
+export interface Deconvolved {
+  response: Float64Array;
+  envelope: ArrivalEnvelope;
+  /** [size + 2] transfer function, re and im interleaved, zero outside the sweep. */
+  transfer: Float64Array;
+}
+
+/** |analytic response| limited to the arrival band, over lag. */
+export interface ArrivalEnvelope {
+  /** [points] squared. */
+  power: Float64Array;
+  /** Samples of the recording per point. */
+  samplesPerPoint: number;
+}
+
+/** Where arrivals are looked for, as far as the sweep covers it (docs/domain.md section 9). */
+const ARRIVAL_BAND_HZ = [500, 2000] as const;
+/** Share of the expected spectrum below which the stimulus is not divided by: the fades. */
+const WEAKEST_SHARE = 0.35;
+
+/** FFT size that holds recording and stimulus without folding one onto the other. */
+export function toDeconvolutionSize(recording: number, stimulus: number): number {
+  return toFftSize(Math.max(recording, stimulus));
+}
+
+/** Bins of the arrival band; the middle of a sweep that does not cover it. */
+export function toArrivalBandHz({ startHz, stopHz }: SweepInUse): [number, number] {
+  const low = Math.max(ARRIVAL_BAND_HZ[0], 1.5 * startHz);
+  const high = Math.min(ARRIVAL_BAND_HZ[1], 0.95 * stopHz);
+  return high >= 1.5 * low
+    ? [low, high]
+    : [startHz * (stopHz / startHz) ** 0.25, startHz * (stopHz / startHz) ** 0.9];
+}
+
+/**
+ * @param stimulus what was played, with its leads; not modified.
+ * @param size from toDeconvolutionSize.
+ * @throws AnalysisError "stimulus.invalid" where the file holds no such sweep.
+ */
+export function createDeconvolver(
+  stimulus: Float32Array | Float64Array,
+  sweep: SweepInUse,
+  size: number,
+): Deconvolver {
+  const fft = planRealFft(size);
+  fft.data.set(stimulus.subarray(0, size));
+  fft.data.fill(0, Math.min(size, stimulus.length));
+  const spectrum = fft.forward();
+  const amplitude = toStimulusAmplitude(spectrum, sweep, size);
+  invertInPlace(spectrum, sweep, size, amplitude);
+  const [lowHz, highHz] = toArrivalBandHz(sweep);
+  const firstBin = Math.ceil((lowHz * size) / sweep.rateHz);
+  const lastBin = Math.floor((highHz * size) / sweep.rateHz);
+  const zoom = planComplexFft(toFftSize(2 * (lastBin - firstBin + 1)));
+  const transfer = new Float64Array(size + 2);
+  return {
+    size,
+    rateHz: sweep.rateHz,
+    amplitude,
+    deconvolve(samples) {
+      load(fft, samples);
+      const response = fft.filter(fft.forwardPacked(), spectrum, transfer);
+      return { response, transfer, envelope: toEnvelope(transfer, firstBin, lastBin, zoom, size) };
+    },
+  };
+}
+
+function load(fft: RealFft, samples: Float32Array | Float64Array): void {
+  if (samples.length > fft.size) {
+    throw new AnalysisError(
+      "analysis.argument",
+      `${samples.length} samples do not fit a deconvolution of ${fft.size}.`,
+    );
+  }
+  fft.data.set(samples);
+  fft.data.fill(0, samples.length);
+}
+
+/** |X(f)| of a sweep of amplitude 1, in the units of an unscaled DFT. */
+export function toSweepSpectrum(
+  frequencyHz: number,
+  { rateConstantS, rateHz }: SweepInUse,
+): number {
+  return 0.5 * rateHz * Math.sqrt(rateConstantS / frequencyHz);
+}
+
+/** Amplitude from the energy in the inner part of the sweep, where fades and edge ripple do not reach. */
+function toStimulusAmplitude(spectrum: Float64Array, sweep: SweepInUse, size: number): number {
+  const { startHz, stopHz, rateHz } = sweep;
+  const span = stopHz / startHz;
+  const from = Math.ceil((startHz * span ** 0.3 * size) / rateHz);
+  const to = Math.floor((startHz * span ** 0.9 * size) / rateHz);
+  let sum = 0;
+  for (let k = from; k <= to; k += 1) {
+    sum +=
+      (spectrum[2 * k]! ** 2 + spectrum[2 * k + 1]! ** 2) /
+      toSweepSpectrum((k * rateHz) / size, sweep) ** 2;
+  }
+  const amplitude = Math.sqrt(sum / Math.max(1, to - from + 1));
+  if (!(amplitude > 1e-6) || to <= from) {
+    throw new AnalysisError(
+      "stimulus.invalid",
+      `The stimulus holds no sweep from ${startHz} to ${stopHz} Hz.`,
+    );
+  }
+  return amplitude;
+}
+
+/** conj(X) A / |X|^2 from start to stop, 0 elsewhere; held back where the fades leave little of X. */
+function invertInPlace(
+  spectrum: Float64Array,
+  sweep: SweepInUse,
+  size: number,
+  amplitude: number,
+): void {
+  const { startHz, stopHz, rateHz } = sweep;
+  const from = Math.ceil((0.9 * startHz * size) / rateHz);
+  const to = Math.min(size / 2, Math.floor((stopHz * size) / rateHz));
+  for (let k = from; k <= to; k += 1) {
+    const re = spectrum[2 * k]!;
+    const im = spectrum[2 * k + 1]!;
+    const weakest = WEAKEST_SHARE * amplitude * toSweepSpectrum((k * rateHz) / size, sweep);
+    const scale = amplitude / Math.max(re * re + im * im, weakest * weakest);
+    spectrum[2 * k] = re * scale;
+    spectrum[2 * k + 1] = -im * scale;
+  }
+  spectrum.fill(0, 0, 2 * from);
+  spectrum.fill(0, 2 * (to + 1));
+}
+
+function toEnvelope(
+  transfer: Float64Array,
+  firstBin: number,
+  lastBin: number,
+  zoom: ComplexFft,
+  size: number,
+): ArrivalEnvelope {
+  const points = zoom.size;
+  const bins = new Float64Array(2 * points);
+  for (let k = firstBin; k <= lastBin; k += 1) {
+    // Conjugated, so that the forward transform goes back to lag; a raised cosine keeps the flanks short.
+    const weight = 1 - Math.cos((2 * Math.PI * (k - firstBin + 0.5)) / (lastBin - firstBin + 1));
+    bins[2 * (k - firstBin)] = weight * transfer[2 * k]!;
+    bins[2 * (k - firstBin) + 1] = -weight * transfer[2 * k + 1]!;
+  }
+  const lag = zoom.transform(bins);
+  const power = new Float64Array(points);
+  for (let m = 0; m < points; m += 1)
+    power[m] = (lag[2 * m]! ** 2 + lag[2 * m + 1]! ** 2) / size ** 2;
+  return { power, samplesPerPoint: size / points };
+}

@@ -1,0 +1,8 @@
+/** fft.js brings no types; it serves as the check of our own kernel. */
+declare module "fft.js" {
+  export default class FFT {
+    constructor(size: number);
+    createComplexArray(): number[];
+    transform(out: number[], data: ArrayLike<number>): void;
+  }
+}

@@ -1,0 +1,156 @@
+/** FFT of real data as a complex one of half the size. */
+import { planComplexFft, toTwiddles } from "./complex-fft";
+
+const ODD_PARTS = [1, 3, 5, 9, 15];
+
+/** Smallest size of at least points that the real FFT takes: 2^a * {1, 3, 5, 9, 15}, a at least 1. */
+export function toFftSize(points: number): number {
+  const sizes = ODD_PARTS.map((odd) => odd * 2 ** Math.max(1, Math.ceil(Math.log2(points / odd))));
+  return Math.min(...sizes);
+}
+
+export interface RealFft {
+  readonly size: number;
+  /** [size] scratch: fill it with samples before forward, with the packed spectrum before inverse. */
+  readonly data: Float64Array;
+  /**
+   * Transforms the samples in data.
+   * @returns [size] packed half-size transform: make bins of it with unpackBin. Valid until the next call.
+   */
+  forwardPacked(): Float64Array;
+  /**
+   * One-sided spectrum of the samples in data, unscaled.
+   * @returns [2 (size/2 + 1)] re, im interleaved; a new array unless one is given.
+   */
+  forward(into?: Float64Array): Float64Array;
+  /** |X_k|^2, [size/2 + 1], of the samples in data; a new array unless one is given. */
+  power(into?: Float64Array): Float64Array;
+  /**
+   * Multiplies the packed spectrum by a one-sided transfer function and returns to samples.
+   * @param packed from forwardPacked; used as scratch.
+   * @param transfer [2 (size/2 + 1)] re, im interleaved.
+   * @param product receives [2 (size/2 + 1)] the product where given.
+   * @returns [size] samples, scaled as the inverse of forward. Valid until the next call.
+   */
+  filter(packed: Float64Array, transfer: Float64Array, product?: Float64Array): Float64Array;
+}
+
+/** @param size even, half of it 2^a * {1, 3, 5, 9, 15}. */
+export function planRealFft(size: number): RealFft {
+  const half = size / 2;
+  const complex = planComplexFft(half);
+  const data = new Float64Array(size);
+  // e^(-2 pi i k / size) for k up to half / 2: the pair (k, half - k) shares one.
+  const twiddles = toTwiddles(size, Math.floor(half / 2) + 1);
+
+  const forwardPacked = (): Float64Array => complex.transform(data);
+
+  const forward = (into = new Float64Array(size + 2)): Float64Array => {
+    const z = forwardPacked();
+    const zr = z[0]!;
+    const zi = z[1]!;
+    for (let k = 1; 2 * k <= half; k += 1) {
+      const a = 2 * k;
+      const b = 2 * (half - k);
+      const wr = twiddles[a]!;
+      const wi = twiddles[a + 1]!;
+      const evenR = (z[a]! + z[b]!) / 2;
+      const evenI = (z[a + 1]! - z[b + 1]!) / 2;
+      const oddR = (z[a + 1]! + z[b + 1]!) / 2;
+      const oddI = (z[b]! - z[a]!) / 2;
+      const tr = oddR * wr - oddI * wi;
+      const ti = oddR * wi + oddI * wr;
+      into[a] = evenR + tr;
+      into[a + 1] = evenI + ti;
+      into[b] = evenR - tr;
+      into[b + 1] = ti - evenI;
+    }
+    into[0] = zr + zi;
+    into[1] = 0;
+    into[size] = zr - zi;
+    into[size + 1] = 0;
+    return into;
+  };
+
+  const power = (into = new Float64Array(half + 1)): Float64Array => {
+    const z = forwardPacked();
+    for (let k = 1; 2 * k <= half; k += 1) {
+      const a = 2 * k;
+      const b = 2 * (half - k);
+      const wr = twiddles[a]!;
+      const wi = twiddles[a + 1]!;
+      const evenR = (z[a]! + z[b]!) / 2;
+      const evenI = (z[a + 1]! - z[b + 1]!) / 2;
+      const oddR = (z[a + 1]! + z[b + 1]!) / 2;
+      const oddI = (z[b]! - z[a]!) / 2;
+      const tr = oddR * wr - oddI * wi;
+      const ti = oddR * wi + oddI * wr;
+      into[k] = (evenR + tr) ** 2 + (evenI + ti) ** 2;
+      into[half - k] = (evenR - tr) ** 2 + (evenI - ti) ** 2;
+    }
+    into[0] = (z[0]! + z[1]!) ** 2;
+    into[half] = (z[0]! - z[1]!) ** 2;
+    return into;
+  };
+
+  const filter = (
+    z: Float64Array,
+    transfer: Float64Array,
+    product?: Float64Array,
+  ): Float64Array => {
+    // One walk over the pairs (k, half - k): unpack, multiply, pack conjugated for the inverse.
+    const scale = 1 / size;
+    const dcR = (z[0]! + z[1]!) * transfer[0]!;
+    const topR = (z[0]! - z[1]!) * transfer[size]!;
+    for (let k = 1; 2 * k <= half; k += 1) {
+      const a = 2 * k;
+      const b = 2 * (half - k);
+      const wr = twiddles[a]!;
+      const wi = twiddles[a + 1]!;
+      const evenR = (z[a]! + z[b]!) / 2;
+      const evenI = (z[a + 1]! - z[b + 1]!) / 2;
+      const oddR = (z[a + 1]! + z[b + 1]!) / 2;
+      const oddI = (z[b]! - z[a]!) / 2;
+      const tr = oddR * wr - oddI * wi;
+      const ti = oddR * wi + oddI * wr;
+      const xar = evenR + tr;
+      const xai = evenI + ti;
+      const xbr = evenR - tr;
+      const xbi = ti - evenI;
+      const har = xar * transfer[a]! - xai * transfer[a + 1]!;
+      const hai = xar * transfer[a + 1]! + xai * transfer[a]!;
+      const hbr = xbr * transfer[b]! - xbi * transfer[b + 1]!;
+      const hbi = xbr * transfer[b + 1]! + xbi * transfer[b]!;
+      if (product !== undefined) {
+        product[a] = har;
+        product[a + 1] = hai;
+        product[b] = hbr;
+        product[b + 1] = hbi;
+      }
+      const er = (har + hbr) * scale;
+      const ei = (hai - hbi) * scale;
+      const dr = (har - hbr) * scale;
+      const di = (hai + hbi) * scale;
+      // odd = (a - conj b) e^(+2 pi i k / size)
+      const or = dr * wr + di * wi;
+      const oi = di * wr - dr * wi;
+      data[a] = er - oi;
+      data[a + 1] = -(ei + or);
+      data[b] = er + oi;
+      data[b + 1] = ei - or;
+    }
+    data[0] = (dcR + topR) * scale;
+    data[1] = -(dcR - topR) * scale;
+    if (product !== undefined) {
+      product[0] = dcR;
+      product[1] = 0;
+      product[size] = topR;
+      product[size + 1] = 0;
+    }
+    const samples = complex.transform(data);
+    for (let n = 1; n < size; n += 2) samples[n] = -samples[n]!;
+    return samples;
+  };
+
+  return { size, data, forwardPacked, forward, power, filter };
+}
