@@ -148,7 +148,8 @@ function runNpm(args) {
       reject(error);
     };
     const end = () => {
-      child.kill("SIGTERM");
+      // npm would go on to its end; a half-made folder is made anew at the next start.
+      child.kill("SIGKILL");
       child.once("exit", () => process.exit(0));
     };
     STOP_SIGNALS.forEach((signal) => process.on(signal, end));
