@@ -1,3 +1,3 @@
 import { run } from "./setup/bootstrap.mjs";
 
-void run("start", true);
+void run("start");
