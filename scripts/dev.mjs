@@ -1,3 +1,3 @@
 import { run } from "./setup/bootstrap.mjs";
 
-void run("dev");
+void run("dev", true);

@@ -1,3 +1,3 @@
 import { run } from "./setup/bootstrap.mjs";
 
-void run("start");
+void run("start", true);

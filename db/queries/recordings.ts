@@ -53,3 +53,12 @@ export async function findUnheldDigests(db: Db, digests: readonly string[]): Pro
   }>`select digest from find_unheld_digests(${digests}::text[])`.execute(db);
   return rows.map((row) => row.digest);
 }
+
+/** Takes the row of bytes that no run, photo or plan of the lab names any more; the sweep takes the bytes. */
+export async function forgetRecording(trx: Trx, labId: string, digest: string): Promise<void> {
+  await sql`delete from recordings f where f.lab_id = ${labId} and f.digest = ${digest}
+    and not exists (select from runs r where r.lab_id = f.lab_id and r.digest = f.digest)
+    and not exists (select from loudspeakers l where l.lab_id = f.lab_id and l.photo_digest = f.digest)
+    and not exists (select from series s where s.lab_id = f.lab_id
+                     and s.plan -> 'microphone' ->> 'digest' = f.digest)`.execute(trx);
+}

@@ -6,8 +6,8 @@ import { ensureBuild } from "../setup/web-build";
 
 const build: Stage = {
   name: "build",
-  run: async () => {
-    await ensureBuild();
+  run: async (_, signal) => {
+    await ensureBuild(signal);
     return { passed: 0, failed: 0 };
   },
 };

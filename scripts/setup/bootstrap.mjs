@@ -11,6 +11,8 @@ import { fileURLToPath } from "url";
 
 export const cloneDir = dirname(dirname(dirname(fileURLToPath(import.meta.url))));
 
+const STOP_SIGNALS = ["SIGINT", "SIGTERM", "SIGHUP"];
+
 /** Oldest Node that every package takes. */
 const NEEDED_MAJOR = 20;
 const NEEDED_MINOR = 19;
@@ -87,10 +89,13 @@ export async function ensurePackages() {
  * Runs one of our TypeScript commands in this very process, so that signals reach it.
  *
  * @param {string} command file in scripts/commands without extension; exports main(args)
+ * @param {boolean} serves whether it runs until it is asked to end, so that the wish is no failure;
+ *   until it listens for the wish itself, there is nothing yet to end
  */
-export async function run(command) {
+export async function run(command, serves = false) {
   try {
     await prepare();
+    if (serves) STOP_SIGNALS.forEach((signal) => process.on(signal, () => process.exit(0)));
     const tsx = await import("tsx/esm/api");
     tsx.register();
     /** @type {{ main: (args: string[]) => Promise<number | void> }} */
@@ -125,8 +130,6 @@ export function fail(error) {
   process.exitCode = 1;
 }
 
-const STOP_SIGNALS = ["SIGINT", "SIGTERM", "SIGHUP"];
-
 /** @param {string[]} args */
 function runNpm(args) {
   const npm = process.env.npm_execpath;
@@ -148,7 +151,8 @@ function runNpm(args) {
       reject(error);
     };
     const end = () => {
-      child.kill("SIGTERM");
+      // npm would go on to its end; a half-made folder is made anew at the next start.
+      child.kill("SIGKILL");
       child.once("exit", () => process.exit(0));
     };
     STOP_SIGNALS.forEach((signal) => process.on(signal, end));

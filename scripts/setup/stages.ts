@@ -5,6 +5,7 @@ import { join } from "node:path";
 import { cloneDir } from "./bootstrap.mjs";
 import { packageFile } from "./package-file";
 import { runCommand } from "./run-command";
+import { listenForStop } from "./stop-request";
 import { readCounts, type TestCounts } from "./test-counts";
 
 export interface Stage {
@@ -13,7 +14,7 @@ export interface Stage {
    * @returns tests passed and failed; a check that is no test suite counts nothing where it
    *   passes and one failure where it does not
    */
-  run: (show: (text: string) => void) => Promise<TestCounts>;
+  run: (show: (text: string) => void, signal: AbortSignal) => Promise<TestCounts>;
 }
 
 const NONE: TestCounts = { passed: 0, failed: 0 };
@@ -26,10 +27,11 @@ export function commandStage(
 ): Stage {
   return {
     name,
-    run: async (show) => {
+    run: async (show, signal) => {
       const { code, stdout, output } = await runCommand(process.execPath, args, {
         cwd: cloneDir,
         env: { ...process.env, NEXT_TELEMETRY_DISABLED: "1" },
+        signal,
       });
       const complaint = code === 0 ? judge(stdout) : output;
       if (complaint === null) return NONE;
@@ -43,7 +45,7 @@ export function commandStage(
 export function vitestStage(project: string): Stage {
   return {
     name: `${project} tests`,
-    run: async (show) => {
+    run: async (show, signal) => {
       const folder = mkdtempSync(join(tmpdir(), "tidemark-tests-"));
       const report = join(folder, "report.json");
       try {
@@ -57,7 +59,7 @@ export function vitestStage(project: string): Stage {
             "--reporter=json",
             `--outputFile.json=${report}`,
           ],
-          { cwd: cloneDir, env: { ...process.env, NODE_ENV: "test", NO_COLOR: "1" } },
+          { cwd: cloneDir, env: { ...process.env, NODE_ENV: "test", NO_COLOR: "1" }, signal },
         );
         const counts = readCounts(report, code);
         if (counts.failed > 0) show(output);
@@ -69,17 +71,18 @@ export function vitestStage(project: string): Stage {
   };
 }
 
-/** @returns the sum over all stages */
+/** @returns the sum over all stages; an interrupted run has failed */
 export async function runStages(stages: readonly Stage[]): Promise<TestCounts> {
   const total = { ...NONE };
+  const stop = listenForStop();
   for (const { name, run } of stages) {
+    if (stop.signal.aborted) return { ...total, failed: total.failed + 1 };
     const startedAt = Date.now();
-    const counts = await run((text) => console.log(`\n--- ${name} ---\n${text.trimEnd()}\n`)).catch(
-      (error: unknown) => {
-        console.log(`\n--- ${name} ---\n${error instanceof Error ? error.stack : String(error)}\n`);
-        return { passed: 0, failed: 1 };
-      },
-    );
+    const show = (text: string): void => console.log(`\n--- ${name} ---\n${text.trimEnd()}\n`);
+    const counts = await run(show, stop.signal).catch((error: unknown) => {
+      show(error instanceof Error ? (error.stack ?? error.message) : String(error));
+      return { passed: 0, failed: 1 };
+    });
     total.passed += counts.passed;
     total.failed += counts.failed;
     const tests = counts.passed > 0 ? `, ${counts.passed} tests` : "";

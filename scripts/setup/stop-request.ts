@@ -14,6 +14,7 @@ export function listenForStop(): StopRequest {
   const controller = new AbortController();
   const requested = new Promise<void>((resolve) => {
     for (const name of ["SIGINT", "SIGTERM", "SIGHUP"] as const) {
+      process.removeAllListeners(name);
       process.on(name, () => {
         controller.abort();
         resolve();

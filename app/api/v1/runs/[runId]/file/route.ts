@@ -1,0 +1,9 @@
+import { getRun } from "@/db/queries/runs";
+import { downloadRun } from "@/lib/api/runs";
+import { answerFile } from "../../../../../_server/answer-file";
+import { handle } from "../../../../../_server/handle";
+
+export const GET = handle(downloadRun, async ({ params, request, inLab, caller }) => {
+  const run = await inLab((trx) => getRun(trx, caller.labId, params.runId));
+  return answerFile(request, { digest: run.digest, bytes: run.bytes, fileName: run.file_name });
+});
