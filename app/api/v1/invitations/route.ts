@@ -1,6 +1,6 @@
 import { handle } from "@/app/_server/handle";
 import { invite, toInvitationLink } from "@/app/_server/invitations";
-import { toInvitation } from "@/app/_server/views";
+import { toInvitation } from "@/app/_server/views/people";
 import { listInvitations as listRows } from "@/db/queries/invitations";
 import { listNames } from "@/db/queries/members";
 import { createInvitation, listInvitations } from "@/lib/api/members";

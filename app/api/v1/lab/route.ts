@@ -1,5 +1,5 @@
 import { handle } from "@/app/_server/handle";
-import { toLab } from "@/app/_server/views";
+import { toLab } from "@/app/_server/views/people";
 import { recordEvent } from "@/db/queries/audit";
 import { getLab as getRow, updateLab as updateRow } from "@/db/queries/labs";
 import { getLab, updateLab } from "@/lib/api/labs";

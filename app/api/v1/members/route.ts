@@ -1,5 +1,5 @@
 import { handle } from "@/app/_server/handle";
-import { toMember } from "@/app/_server/views";
+import { toMember } from "@/app/_server/views/people";
 import { listMembers as listRows } from "@/db/queries/members";
 import { listMembers } from "@/lib/api/members";
 

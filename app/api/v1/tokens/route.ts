@@ -1,6 +1,6 @@
 import { requireSession } from "@/app/_server/caller";
 import { handle } from "@/app/_server/handle";
-import { toToken } from "@/app/_server/views";
+import { toToken } from "@/app/_server/views/people";
 import { recordEvent } from "@/db/queries/audit";
 import { createToken as createRow, getTokenRow, listTokens as listRows } from "@/db/queries/tokens";
 import { createToken as createSecretToken, digestSecret } from "@/lib/account/secrets";

@@ -1,5 +1,5 @@
 import { handle } from "@/app/_server/handle";
-import { toTrailEvent } from "@/app/_server/views";
+import { toTrailEvent } from "@/app/_server/views/people";
 import { listLabEvents } from "@/db/queries/audit";
 import { listTrail } from "@/lib/api/labs";
 

@@ -1,5 +1,5 @@
 import { handle } from "@/app/_server/handle";
-import { toMember } from "@/app/_server/views";
+import { toMember } from "@/app/_server/views/people";
 import { recordEvent } from "@/db/queries/audit";
 import { getMember, setRoles } from "@/db/queries/members";
 import { setMemberRoles } from "@/lib/api/members";

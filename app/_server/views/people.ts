@@ -1,14 +1,14 @@
 /** From rows of the people side to the shapes of the API. */
-import type { AuditRow } from "../../db/queries/audit";
-import type { InvitationRow } from "../../db/queries/invitations";
-import type { LabRow } from "../../db/queries/labs";
-import type { MemberRow } from "../../db/queries/members";
-import type { TokenRow } from "../../db/queries/tokens";
-import type { Lab, TrailEvent } from "../../lib/api/labs";
-import type { Invitation, Member } from "../../lib/api/members";
-import type { Token } from "../../lib/api/tokens";
-import type { Person } from "../../lib/api/common";
-import { labSettingsSchema } from "../../lib/labs/settings-schema";
+import type { AuditRow } from "../../../db/queries/audit";
+import type { InvitationRow } from "../../../db/queries/invitations";
+import type { LabRow } from "../../../db/queries/labs";
+import type { MemberRow } from "../../../db/queries/members";
+import type { TokenRow } from "../../../db/queries/tokens";
+import type { Lab, TrailEvent } from "../../../lib/api/labs";
+import type { Invitation, Member } from "../../../lib/api/members";
+import type { Token } from "../../../lib/api/tokens";
+import type { Person } from "../../../lib/api/common";
+import { labSettingsSchema } from "../../../lib/labs/settings-schema";
 
 export const toMember = (row: MemberRow): Member => ({
   id: row.accountId,

@@ -1,0 +1,383 @@
+/** Members, invitations, the account and the lab. */
+import { beforeAll, describe, expect, it } from "vitest";
+import { PUT as putPassword } from "../../../app/api/v1/account/password/route";
+import { PATCH as patchAccount } from "../../../app/api/v1/account/route";
+import { DELETE as endSession } from "../../../app/api/v1/account/sessions/[sessionId]/route";
+import { GET as listSessions } from "../../../app/api/v1/account/sessions/route";
+import { DELETE as withdraw } from "../../../app/api/v1/invitations/[invitationId]/route";
+import { POST as accept } from "../../../app/api/v1/invitations/accept/route";
+import { POST as look } from "../../../app/api/v1/invitations/look/route";
+import { GET as listInvitations, POST as invite } from "../../../app/api/v1/invitations/route";
+import { GET as getLab, PATCH as patchLab } from "../../../app/api/v1/lab/route";
+import { DELETE as removeMember } from "../../../app/api/v1/members/[accountId]/route";
+import { PUT as putRoles } from "../../../app/api/v1/members/[accountId]/roles/route";
+import { GET as listMembers } from "../../../app/api/v1/members/route";
+import { GET as listTrail } from "../../../app/api/v1/trail/route";
+import { createAttempts, TRIES_PER_ADDRESS } from "../../../app/_server/attempts";
+import { getPool } from "../../../app/_server/database";
+import { signIn } from "../../../app/_server/sign-in";
+import { inLab } from "../../../db/in-lab";
+import { hashPassword } from "../../../lib/account/passwords";
+import type { TrailEvent } from "../../../lib/api/labs";
+import { createLab, inviteToLab } from "../../../scripts/labs/labs";
+import { type Lab, makeLab, makeMember } from "../../db/support";
+import { call, type Credentials, problemCode, openServer, openSession, PUBLIC_URL } from "./server";
+
+const bench = openServer();
+const PASSWORD = "correct horse battery";
+let own: Lab;
+let other: Lab;
+let admin: Credentials;
+
+beforeAll(async () => {
+  own = await makeLab(bench, "own");
+  other = await makeLab(bench, "other");
+  admin = await openSession(bench, own.admin);
+});
+
+const attempt = (email: string, password: string) =>
+  signIn(bench.app, createAttempts(getPool()), {
+    email,
+    password,
+    ip: "192.0.2.7",
+    userAgent: "t",
+  });
+
+const toSecret = (link: string): string => link.slice(`${PUBLIC_URL}/invitation/`.length);
+
+async function inviteSomebody(email: string, roles: string[], name = ""): Promise<string> {
+  const answer = await call(invite, "POST", admin, { body: { email, name, roles } });
+  expect(answer.status).toBe(201);
+  return toSecret((answer.body as { link: string }).link);
+}
+
+describe("an invitation", () => {
+  it("leads from the link to a member who can sign in", async () => {
+    const secret = await inviteSomebody("New@Own.test", ["analyst", "tester"], "Nell New");
+    const seen = await call(look, "POST", {}, { body: { secret } });
+    expect(seen.body).toEqual({
+      lab: "Lab own",
+      email: "new@own.test",
+      name: "Nell New",
+      roles: ["tester", "analyst"],
+      account_exists: false,
+    });
+    const joined = await call(accept, "POST", {}, { body: { secret, password: PASSWORD } });
+    expect(joined).toMatchObject({ status: 200, body: { email: "new@own.test", lab: "Lab own" } });
+    const { accountId } = await attempt("NEW@own.test", PASSWORD);
+    const members = await call(listMembers, "GET", admin);
+    expect(members.body).toMatchObject({
+      members: expect.arrayContaining([
+        expect.objectContaining({ id: accountId, name: "Nell New", roles: ["tester", "analyst"] }),
+      ]) as unknown,
+    });
+  });
+
+  it("is good for one use, also when tried twice at once", async () => {
+    const secret = await inviteSomebody("once@own.test", ["tester"]);
+    const tries = await Promise.all(
+      [1, 2].map(() => call(accept, "POST", {}, { body: { secret, password: PASSWORD } })),
+    );
+    expect(tries.map((answer) => answer.status).toSorted((a, b) => a - b)[0]).toBe(200);
+    expect(tries.filter((answer) => answer.status === 200)).toHaveLength(1);
+    expect(problemCode(await call(look, "POST", {}, { body: { secret } }))).toBe(
+      "invitation.invalid",
+    );
+  });
+
+  it("asks an existing account for its own password", async () => {
+    await makeMember(
+      bench,
+      other.id,
+      "both@other.test",
+      ["reviewer"],
+      await hashPassword(PASSWORD),
+    );
+    const secret = await inviteSomebody("both@other.test", ["analyst"]);
+    const seen = await call(look, "POST", {}, { body: { secret } });
+    expect(seen.body).toMatchObject({ account_exists: true });
+    const wrong = await call(
+      accept,
+      "POST",
+      {},
+      { body: { secret, password: "another password" } },
+    );
+    expect(problemCode(wrong)).toBe("auth.wrong");
+    expect(wrong.body).toMatchObject({ details: { triesLeft: TRIES_PER_ADDRESS - 1 } });
+    const right = await call(accept, "POST", {}, { body: { secret, password: PASSWORD } });
+    expect(right.status).toBe(200);
+  });
+
+  it("refuses a weak password and stays good", async () => {
+    const secret = await inviteSomebody("weak@own.test", ["tester"]);
+    const weak = await call(accept, "POST", {}, { body: { secret, password: "short" } });
+    expect(problemCode(weak)).toBe("password.weak");
+    expect((await call(look, "POST", {}, { body: { secret } })).status).toBe(200);
+  });
+
+  it("is listed without its secret and can be withdrawn, by its own lab alone", async () => {
+    const secret = await inviteSomebody("gone@own.test", ["tester"]);
+    const listed = (await call(listInvitations, "GET", admin)).body as {
+      invitations: { id: string; email: string }[];
+    };
+    expect(JSON.stringify(listed)).not.toContain(secret);
+    const id = listed.invitations.find((one) => one.email === "gone@own.test")?.id ?? "";
+    const stranger = await openSession(bench, other.admin);
+    const foreign = await call(withdraw, "DELETE", stranger, { params: { invitationId: id } });
+    expect(problemCode(foreign)).toBe("not-found");
+    const done = await call(withdraw, "DELETE", admin, { params: { invitationId: id } });
+    expect(done.status).toBe(204);
+    expect(problemCode(await call(look, "POST", {}, { body: { secret } }))).toBe(
+      "invitation.invalid",
+    );
+  });
+
+  it.each([
+    [{ email: "x", roles: ["tester"] }, "email"],
+    [{ email: "x@y.test", roles: [] }, "roles"],
+    [{ email: "x@y.test", roles: ["owner"] }, "roles.0"],
+    [{ email: "x@y.test", roles: ["tester"], more: 1 }, ""],
+  ])("of %j is refused with its field", async (body, path) => {
+    const answer = await call(invite, "POST", admin, { body });
+    expect(problemCode(answer)).toBe("request.invalid");
+    expect(answer.body).toMatchObject({ errors: [expect.objectContaining({ path })] });
+  });
+
+  it("to a member is refused", async () => {
+    const body = { email: "admin@own.test", roles: ["tester"] };
+    expect(problemCode(await call(invite, "POST", admin, { body }))).toBe("conflict.exists");
+  });
+});
+
+describe("signing in", () => {
+  it("says how many tries are left, then refuses even the right password for a while", async () => {
+    const email = "tried@own.test";
+    await makeMember(bench, own.id, email, ["tester"], await hashPassword(PASSWORD));
+    for (let left = TRIES_PER_ADDRESS - 1; left >= 0; left -= 1) {
+      await expect(attempt(email, "wrong password")).rejects.toMatchObject({
+        code: "auth.wrong",
+        details: { triesLeft: left },
+      });
+    }
+    const refused = await attempt(email, PASSWORD).catch((error: unknown) => error);
+    expect(refused).toMatchObject({ code: "auth.rate-limited", status: 429 });
+    const { retryAfterS } = (refused as { details: { retryAfterS: number } }).details;
+    expect(retryAfterS).toBeGreaterThan(14 * 60);
+    expect(retryAfterS).toBeLessThanOrEqual(15 * 60);
+  });
+
+  it("counts tries that come at the same moment", async () => {
+    const tries = await Promise.allSettled(
+      Array.from({ length: TRIES_PER_ADDRESS + 4 }, () => attempt("crowd@own.test", "wrong one")),
+    );
+    const codes = tries.map((outcome) =>
+      outcome.status === "rejected" ? (outcome.reason as { code: string }).code : "in",
+    );
+    expect(codes.filter((code) => code === "auth.wrong")).toHaveLength(TRIES_PER_ADDRESS);
+    expect(codes.filter((code) => code === "auth.rate-limited")).toHaveLength(4);
+  });
+
+  it("answers an unknown address like a wrong password", async () => {
+    const unknown = await attempt("nobody@own.test", PASSWORD).catch((error: unknown) => error);
+    expect(unknown).toMatchObject({ code: "auth.wrong", message: "Address or password is wrong." });
+  });
+
+  it("forgets the tries after the right password", async () => {
+    const email = "forgiven@own.test";
+    await makeMember(bench, own.id, email, ["tester"], await hashPassword(PASSWORD));
+    await attempt(email, "wrong password").catch(() => undefined);
+    await attempt(email, PASSWORD);
+    await expect(attempt(email, "wrong password")).rejects.toMatchObject({
+      details: { triesLeft: TRIES_PER_ADDRESS - 1 },
+    });
+  });
+
+  it("keeps no address in its counters", async () => {
+    const keys = await bench.app.selectFrom("rate_limits").select("key").execute();
+    expect(keys.length).toBeGreaterThan(1);
+    expect(keys.filter(({ key }) => /@|192\.0\.2/.test(key))).toEqual([]);
+  });
+
+  it("lets nobody in uncounted where the database is away", async () => {
+    const { default: pg } = await import("pg");
+    const away = new pg.Pool({ connectionString: "postgres://x:y@127.0.0.1:1/z" });
+    const { count } = createAttempts(away);
+    await expect(count("a@b.test", "192.0.2.1")).rejects.toMatchObject({
+      code: "database.unavailable",
+    });
+    await away.end();
+  });
+});
+
+describe("the account", () => {
+  it("changes its password, ends its other sessions and keeps this one", async () => {
+    const email = "changer@own.test";
+    const member = await makeMember(bench, own.id, email, ["tester"], await hashPassword(PASSWORD));
+    const [here, there] = [await openSession(bench, member), await openSession(bench, member)];
+    const change = (current: string, next: string) =>
+      call(putPassword, "PUT", here, { body: { current, next } });
+    expect(problemCode(await change("not my password", "another long one"))).toBe("auth.wrong");
+    expect(problemCode(await change(PASSWORD, "short"))).toBe("password.weak");
+    expect((await change(PASSWORD, "another long one")).body).toEqual({ ended_sessions: 1 });
+    expect((await call(getLab, "GET", here)).status).toBe(200);
+    expect(problemCode(await call(getLab, "GET", there))).toBe("auth.required");
+    await expect(attempt(email, PASSWORD)).rejects.toMatchObject({ code: "auth.wrong" });
+    await attempt(email, "another long one");
+  });
+
+  it("lists its sessions and ends one, but none of somebody else's", async () => {
+    const member = await makeMember(bench, own.id, "sessions@own.test", ["tester"]);
+    const [here, there] = [await openSession(bench, member), await openSession(bench, member)];
+    const listed = (await call(listSessions, "GET", here)).body as {
+      sessions: { id: string; current: boolean }[];
+    };
+    expect(listed.sessions.map((session) => session.current).filter(Boolean)).toHaveLength(1);
+    expect(listed.sessions).toHaveLength(2);
+    const end = (sessionId: string) => call(endSession, "DELETE", here, { params: { sessionId } });
+    expect((await end(there.sessionId)).status).toBe(204);
+    expect(problemCode(await call(getLab, "GET", there))).toBe("auth.required");
+    const others = await openSession(bench, own.admin);
+    expect(problemCode(await end(others.sessionId))).toBe("not-found");
+    expect((await call(getLab, "GET", others)).status).toBe(200);
+  });
+
+  it("changes name and theme", async () => {
+    const member = await makeMember(bench, own.id, "named@own.test", ["tester"]);
+    const session = await openSession(bench, member);
+    const body = { name: "Ned", theme: "dark" };
+    const answer = await call(patchAccount, "PATCH", session, { body });
+    expect(answer.body).toMatchObject({ account: body });
+  });
+});
+
+describe("members", () => {
+  it("keep a last admin, over the API too", async () => {
+    const lonely = await makeLab(bench, "lonely");
+    const session = await openSession(bench, lonely.admin);
+    const params = { accountId: lonely.admin.accountId };
+    const demoted = await call(putRoles, "PUT", session, { params, body: { roles: ["tester"] } });
+    expect(problemCode(demoted)).toBe("member.last-admin");
+    expect(problemCode(await call(removeMember, "DELETE", session, { params }))).toBe(
+      "member.last-admin",
+    );
+    expect((await call(getLab, "GET", session)).status).toBe(200);
+  });
+
+  it("of another lab do not exist", async () => {
+    const params = { accountId: other.admin.accountId };
+    const body = { roles: ["tester"] };
+    expect(problemCode(await call(putRoles, "PUT", admin, { params, body }))).toBe("not-found");
+    expect(problemCode(await call(removeMember, "DELETE", admin, { params }))).toBe("not-found");
+  });
+
+  it.each(["tester", "analyst", "reviewer"] as const)(
+    "without admin administer nothing: %s",
+    async (role) => {
+      const member = await makeMember(bench, own.id, `${role}@own.test`, [role]);
+      const session = await openSession(bench, member);
+      const params = { accountId: member.accountId };
+      const tried = [
+        await call(putRoles, "PUT", session, { params, body: { roles: ["admin"] } }),
+        await call(removeMember, "DELETE", session, { params }),
+        await call(listInvitations, "GET", session),
+        await call(invite, "POST", session, { body: { email: "a@b.test", roles: ["admin"] } }),
+        await call(patchLab, "PATCH", session, { body: { name: "x" } }),
+        await call(listTrail, "GET", session),
+      ];
+      for (const answer of tried) expect(problemCode(answer)).toBe("auth.forbidden");
+      expect((await call(listMembers, "GET", session)).status).toBe(200);
+    },
+  );
+});
+
+describe("the lab", () => {
+  it("takes name, time zone and settings, and says so in the trail", async () => {
+    const body = {
+      time_zone: "Europe/Helsinki",
+      settings: { two_person_rule: false, exposure_rule: "eu" },
+    };
+    const changed = await call(patchLab, "PATCH", admin, { body });
+    expect(changed.body).toMatchObject({
+      time_zone: "Europe/Helsinki",
+      settings: { two_person_rule: false, exposure_rule: "eu", retention_days: null },
+    });
+    const trail = (await call(listTrail, "GET", admin, { query: "?page_size=1" })).body as {
+      events: TrailEvent[];
+      more: boolean;
+    };
+    expect(trail.more).toBe(true);
+    expect(trail.events).toMatchObject([{ act: "lab.changed", who: { name: "admin@own.test" } }]);
+  });
+
+  it.each([
+    [{ time_zone: "Mars/Olympus" }, "time_zone"],
+    [
+      { settings: { arrival: { level_warn_dB: 3, level_fail_dB: 1 } } },
+      "settings.arrival.level_warn_dB",
+    ],
+    [{ settings: { unknown: 1 } }, "settings"],
+  ])("refuses %j", async (body, path) => {
+    const answer = await call(patchLab, "PATCH", admin, { body });
+    expect(problemCode(answer)).toBe("request.invalid");
+    expect(answer.body).toMatchObject({ errors: [{ path }] });
+  });
+
+  it("shows its own trail and no other lab's", async () => {
+    const stranger = await openSession(bench, other.admin);
+    const trail = (await call(listTrail, "GET", stranger)).body as { events: TrailEvent[] };
+    const subjects = trail.events.map((event) => event.subject_id);
+    expect(subjects).not.toContain(own.id);
+    const page = await call(listTrail, "GET", admin, { query: "?page_size=100" });
+    const acts = (page.body as { events: TrailEvent[] }).events.map((event) => event.act);
+    for (const act of ["account.signed-in", "invitation.created", "member.joined"]) {
+      expect(acts).toContain(act);
+    }
+  });
+});
+
+describe("a lab from the terminal", () => {
+  const databases = () => ({ owner: bench.owner, app: bench.app, publicUrl: PUBLIC_URL });
+
+  it("stands with a link for its first admin", async () => {
+    const link = await createLab(databases(), {
+      slug: "fen",
+      name: "Fen Acoustics",
+      adminEmail: "Ada@fen.test",
+      timeZone: "Europe/Helsinki",
+    });
+    const body = { secret: toSecret(link), name: "Ada Fen", password: PASSWORD };
+    expect((await call(accept, "POST", {}, { body })).status).toBe(200);
+    const { accountId } = await attempt("ada@fen.test", PASSWORD);
+    const row = await bench.owner
+      .selectFrom("labs")
+      .select(["id", "time_zone"])
+      .where("slug", "=", "fen")
+      .executeTakeFirstOrThrow();
+    expect(row.time_zone).toBe("Europe/Helsinki");
+    const session = await openSession(bench, { labId: row.id, accountId });
+    expect((await call(listMembers, "GET", session)).body).toMatchObject({
+      members: [{ name: "Ada Fen", roles: ["admin"] }],
+    });
+    const again = await inviteToLab(databases(), {
+      slug: "fen",
+      email: "bo@fen.test",
+      roles: ["tester", "admin"],
+    });
+    const seen = await call(look, "POST", {}, { body: { secret: toSecret(again) } });
+    expect(seen.body).toMatchObject({ lab: "Fen Acoustics", roles: ["tester", "admin"] });
+  });
+
+  it.each([
+    [{ name: "X", adminEmail: "a@b.test" }, "--slug is missing"],
+    [{ slug: "A b", name: "X", adminEmail: "a@b.test" }, "small letters"],
+    [{ slug: "x", name: "X" }, "--admin-email is missing"],
+    [{ slug: "x", name: "X", adminEmail: "a@b.test", timeZone: "Nowhere" }, "time zone"],
+    [{ slug: "own", name: "X", adminEmail: "a@b.test" }, 'There is a lab "own" already'],
+  ])("%j is refused with the reason", async (given, why) => {
+    await expect(createLab(databases(), given)).rejects.toThrow(why);
+    const labs = await inLab(bench.app, own.admin, (trx) =>
+      trx.selectFrom("labs").select("slug").execute(),
+    );
+    expect(labs).toEqual([{ slug: "own" }]);
+  });
+});
