@@ -107,7 +107,10 @@ function toHarmonicCurve(
   { grid, topHz, fundamentalValid }: AssemblyContext,
 ): MeasuredRun["harmonics"][number] {
   const quality = Array.from(power, (p, c): Quality | null =>
-    fundamentalValid[c] === true && clean[c]! > 0 && orderExists(order, grid.edgeHz[c + 1]!, topHz)
+    fundamentalValid[c] === true &&
+    clean[c]! > 0 &&
+    !Number.isNaN(p) &&
+    orderExists(order, grid.edgeHz[c + 1]!, topHz)
       ? toQuality(p - floor[c]!, floor[c]!)
       : null,
   );
@@ -159,9 +162,9 @@ function toCellThd(
     fundamentalValid[c] === true
       ? HARMONIC_ORDERS.filter((order) => orderExists(order, grid.edgeHz[c + 1]!, topHz))
       : [];
-  const parts = orders.map((order) => {
+  const parts = orders.flatMap((order) => {
     const { power, floor } = raw.orders[order - 1]!;
-    return { order, clean: power[c]! - floor[c]!, floor: floor[c]! };
+    return Number.isNaN(power[c]!) ? [] : [{ order, clean: power[c]! - floor[c]!, floor: floor[c]! }];
   });
   return toThd(parts, isAbove(clean[c]!, raw.orders[0]!.floor[c]!) ? clean[c]! : 0);
 }
@@ -183,9 +186,10 @@ function toBandMeasure(
   const fundamental = present ? clean : 0;
   const parts: Component[] = HARMONIC_ORDERS.filter(
     (order) => present && orderExists(order, band.highHz, topHz),
-  ).map((order) => {
+  ).flatMap((order) => {
     const noise = mean(raw.orders[order - 1]!.floor);
-    return { order, clean: mean(raw.orders[order - 1]!.power) - noise, floor: noise };
+    const total = mean(raw.orders[order - 1]!.power);
+    return Number.isNaN(total) ? [] : [{ order, clean: total - noise, floor: noise }];
   });
   const thd = toThd(parts, fundamental);
   const cellSpl = splDb.subarray(first, first + CELLS_PER_BAND);

@@ -6,21 +6,22 @@ import { assembleRun, type AssemblyContext } from "./assemble-run";
 import { thirdOctaves, twentyFourthOctaves, type Grid } from "./bands";
 import { Plans } from "./cell-power";
 import { measureRun, type MeasuringContext, type RawRun } from "./measure-run";
-import { toMicrophoneResponse, type MicrophoneResponse, type MicrophoneTable } from "./microphone";
+import { toMicrophoneResponse, type MicrophoneResponse } from "./microphone";
 import { measureNoise } from "./noise-floor";
 import { toGateWindow, toOrderWindows } from "./order-windows";
 import { toRunWarnings } from "./run-warnings";
 import { measureScale, type Scale } from "./scale";
 import { toPlayedStimulus } from "./stimulus-in-use";
 import { SweepFinder } from "./sweep-in-recording";
+import { isTableName, toTableRun, toTableWarning, type RunTable } from "./table-run";
 import type { MeasuredSeries, OnProgress, Recording } from "./types";
 
 /** Where recordings come from: a folder, a store, or memory. */
 export interface SeriesSource {
   /** @param channel from 1. */
   readRecording(file: string, channel: number, loopbackChannel?: number): Promise<Recording>;
-  /** Frequency and level of a microphone file. */
-  readMicrophone(file: string): Promise<Pick<MicrophoneTable, "frequencyHz" | "levelDb">>;
+  /** A microphone file, or a run that was reduced elsewhere. */
+  readTable(file: string): Promise<RunTable>;
 }
 
 export interface MeasureOptions {
@@ -51,19 +52,42 @@ export async function measureSeries(
   const warnings = [...scale.warnings];
   const raw: RawRun[] = [];
   for (const run of series.runs) {
-    const recording = await source.readRecording(run.file, run.channel, run.loopback_channel);
-    onProgress?.({ file: run.file, stage: "read", done: 0, total: 3 });
-    requireRate(recording, series.stimulus.rate_Hz);
-    const result = measureRun(
-      recording,
-      { kind: run.kind, sweeps: run.sweeps, periodS: run.period_s },
-      context,
-      onProgress,
-    );
-    warnings.push(...toRunWarnings(result, run.file, context.finder.stimulus.sweep));
+    const result = isTableName(run.file)
+      ? await readTableRun(run, source, context, scale, warnings)
+      : await measureRecordedRun(run, source, context, warnings, onProgress);
     raw.push(result);
+    onProgress?.({ file: run.file, stage: "levels", done: raw.length, total: series.runs.length });
   }
   return { measured: assembleSeries(series, raw, context, scale), warnings };
+}
+
+async function measureRecordedRun(
+  run: Run,
+  source: SeriesSource,
+  context: MeasuringContext,
+  warnings: Warning[],
+  onProgress: OnProgress | undefined,
+): Promise<RawRun> {
+  const recording = await source.readRecording(run.file, run.channel, run.loopback_channel);
+  onProgress?.({ file: run.file, stage: "read", done: 0, total: 3 });
+  const { sweep } = context.finder.stimulus;
+  requireRate(recording, sweep.rateHz);
+  const shape = { kind: run.kind, sweeps: run.sweeps, periodS: run.period_s };
+  const result = measureRun(recording, shape, context, onProgress);
+  warnings.push(...toRunWarnings(result, run.file, sweep));
+  return result;
+}
+
+async function readTableRun(
+  run: Run,
+  source: SeriesSource,
+  { edgeHz }: MeasuringContext,
+  { fullScaleDb }: Scale,
+  warnings: Warning[],
+): Promise<RawRun> {
+  const table = await source.readTable(run.file);
+  warnings.push(toTableWarning(run.file, table));
+  return toTableRun(table, run.file, edgeHz, fullScaleDb);
 }
 
 function requireReference(runs: readonly Run[]): void {
@@ -123,7 +147,7 @@ async function readMicrophone(
   const calibratorHz =
     calibration !== undefined && "frequency_Hz" in calibration ? calibration.frequency_Hz : 1000;
   return toMicrophoneResponse(
-    { ...microphone, ...(await source.readMicrophone(microphone.file)) },
+    { ...microphone, ...(await source.readTable(microphone.file)) },
     calibratorHz,
   );
 }

@@ -5,6 +5,7 @@ import type { Series } from "../series/series-schema";
 import type { Environment } from "../series/vocabulary";
 import { measureTone, toFullScaleDb } from "./calibration";
 import type { Plans } from "./cell-power";
+import { isTableName } from "./table-run";
 import type { Recording } from "./types";
 
 /** Pressure doubles on the ground: ground-plane results are referred to the free field. */
@@ -41,7 +42,8 @@ export async function measureScale(
   plans: Plans,
 ): Promise<Scale> {
   const { calibration, environment, distance_m: distanceM } = series;
-  if (calibration === undefined) {
+  const tablesOnly = series.runs.every((run) => isTableName(run.file));
+  if (calibration === undefined && !tablesOnly) {
     throw new AnalysisError(
       "calibration.missing",
       "The series has no calibration: give a calibrator recording with its level, or full_scale_dB.",
@@ -52,6 +54,9 @@ export async function measureScale(
   const distanceDb = environment === "near-field" ? 0 : 20 * Math.log10(distanceM);
   const placeDb = distanceDb + (environment === "ground-plane" ? GROUND_PLANE_DB : 0);
   warnOfPlace(series, splValid, warnings);
+  // Tables state their levels themselves.
+  if (calibration === undefined)
+    return { fullScaleDb: 0, splValid, calibratorChangeDb: undefined, warnings };
   if ("full_scale_dB" in calibration) {
     return {
       fullScaleDb: calibration.full_scale_dB + placeDb,

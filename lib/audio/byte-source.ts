@@ -12,14 +12,14 @@ export function toByteSource(bytes: Uint8Array): ByteSource {
   return { size: bytes.length, read: (offset, length) => bytes.subarray(offset, offset + length) };
 }
 
-/** Opens a file, hands it to use, and closes it whatever happens. */
+/** Opens a file, hands it to work, and closes it whatever happens. */
 export async function withFileSource<T>(
   path: string,
-  use: (source: ByteSource) => T | Promise<T>,
+  work: (source: ByteSource) => T | Promise<T>,
 ): Promise<T> {
   const descriptor = openSync(path, "r");
   try {
-    return await use(toFileSource(descriptor));
+    return await work(toFileSource(descriptor));
   } finally {
     closeSync(descriptor);
   }

@@ -10,7 +10,7 @@ import { WAV_FORMATS, writeWav } from "./write-wav";
 
 const bytes = (...parts: (string | number[] | Uint8Array)[]): Uint8Array =>
   Uint8Array.from(
-    parts.flatMap((p) => (typeof p === "string" ? [...p].map((c) => c.charCodeAt(0)) : [...p])),
+    parts.flatMap((p) => (typeof p === "string" ? Array.from(p, (c) => c.charCodeAt(0)) : [...p])),
   );
 const u16 = (n: number): number[] => [n & 255, (n >> 8) & 255];
 const u32 = (n: number): number[] => [...u16(n & 0xffff), ...u16(Math.floor(n / 65_536))];

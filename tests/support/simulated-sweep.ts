@@ -155,6 +155,7 @@ export function toMemorySource(
       const found = recordings.find((r) => r.file === file);
       return found === undefined ? Promise.reject(new Error(`no ${file}`)) : Promise.resolve(found);
     },
-    readMicrophone: () => Promise.resolve(microphone ?? { frequencyHz: [], levelDb: [] }),
+    readTable: () =>
+      Promise.resolve({ ...(microphone ?? { frequencyHz: [], levelDb: [] }), harmonics: [] }),
   };
 }

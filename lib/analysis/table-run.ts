@@ -1,0 +1,130 @@
+/** A run that was reduced elsewhere to a table: its levels and harmonics in the cells of the grid. */
+import { AnalysisError } from "../errors/app-error";
+import type { Warning } from "../result/result-schema";
+import type { OrderPower, RawRun } from "./measure-run";
+import { HARMONIC_ORDERS } from "./orders";
+
+/** What the engine takes of a table of frequency and level. */
+export interface RunTable {
+  /** [points] ascending, Hz. */
+  frequencyHz: readonly number[];
+  /** [points] dB SPL. */
+  levelDb: readonly number[];
+  thdPercent?: readonly number[];
+  harmonics: readonly {
+    order: number;
+    unit: "dB SPL" | "dB re fundamental" | "percent";
+    values: readonly number[];
+  }[];
+}
+
+export const TABLE_EXTENSIONS = [".csv", ".tsv", ".txt", ".frd"] as const;
+const STEPS_PER_CELL = 4;
+/** A table says no floor: its numbers are taken to hold down to this, re the fundamental. */
+const ASSUMED_FLOOR = 1e-8;
+/** Stands for the window that is not known: only the scatter of a level follows from it. */
+const ASSUMED_WINDOW_S = 1;
+
+export const isTableName = (file: string): boolean =>
+  TABLE_EXTENSIONS.some((extension) => file.toLowerCase().endsWith(extension));
+
+/**
+ * @param edgeHz [cells + 1] edges of excitation frequency.
+ * @param fullScaleDb the scale on which the powers are kept.
+ * @throws AnalysisError "table.not-readable" where the table does not reach into the grid.
+ */
+export function toTableRun(
+  table: RunTable,
+  file: string,
+  edgeHz: Float64Array,
+  fullScaleDb: number,
+): RawRun {
+  const read = createReader(table.frequencyHz);
+  const toPower = (levelDb: readonly number[]): Float64Array =>
+    Float64Array.from({ length: edgeHz.length - 1 }, (_, c) => {
+      let sum = 0;
+      for (let i = 0; i < STEPS_PER_CELL; i += 1) {
+        const hz = edgeHz[c]! * (edgeHz[c + 1]! / edgeHz[c]!) ** ((i + 0.5) / STEPS_PER_CELL);
+        sum += 10 ** ((read(levelDb, hz) - fullScaleDb) / 10);
+      }
+      return sum / STEPS_PER_CELL;
+    });
+  const power = toPower(table.levelDb);
+  if (!power.some((p) => p > 0)) {
+    throw new AnalysisError(
+      "table.not-readable",
+      `${file} holds no level within the sweep's range.`,
+      { file },
+    );
+  }
+  const floor = power.map((p) => p * ASSUMED_FLOOR);
+  const toOrder = (order: number): OrderPower => {
+    const found = table.harmonics.find((h) => h.order === order);
+    return {
+      order,
+      power:
+        found === undefined ? power.map(() => Number.NaN) : toPower(toLevels(found, table.levelDb)),
+      floor,
+      windowS: ASSUMED_WINDOW_S,
+    };
+  };
+  const unknown = Number.NaN;
+  return {
+    orders: [
+      { order: 1, power, floor, windowS: ASSUMED_WINDOW_S },
+      ...HARMONIC_ORDERS.map(toOrder),
+    ],
+    gatedPower: null,
+    latencyS: unknown,
+    driftPpm: unknown,
+    peakDbfs: unknown,
+    clipped: false,
+    snrDb: unknown,
+    missing: 0,
+    loopbackDb: null,
+  };
+}
+
+export function toTableWarning(file: string, { harmonics }: RunTable): Warning {
+  const none =
+    harmonics.length === 0
+      ? "It holds no harmonics, so distortion limits and causes that need them are not assessed."
+      : "Its harmonics are taken as measured.";
+  return {
+    code: "run.table",
+    message: `${file} is a table: noise floor, clipping, latency and the true step are not known. ${none}`,
+    file,
+  };
+}
+
+function toLevels(
+  { unit, values }: RunTable["harmonics"][number],
+  fundamentalDb: readonly number[],
+): number[] {
+  if (unit === "dB SPL") return [...values];
+  return values.map(
+    (value, i) =>
+      (fundamentalDb[i] ?? Number.NaN) +
+      (unit === "percent" ? 20 * Math.log10(value / 100) : value),
+  );
+}
+
+/** Linear in dB over ln f; NaN outside the table. */
+function createReader(
+  frequencyHz: readonly number[],
+): (levels: readonly number[], hz: number) => number {
+  const ln = frequencyHz.map((f) => Math.log(f));
+  return (levels, hz) => {
+    const at = Math.log(hz);
+    if (at < ln[0]! || at > ln.at(-1)!) return Number.NaN;
+    let low = 0;
+    let high = ln.length - 1;
+    while (high - low > 1) {
+      const middle = (low + high) >> 1;
+      if (ln[middle]! <= at) low = middle;
+      else high = middle;
+    }
+    const share = (at - ln[low]!) / (ln[high]! - ln[low]!);
+    return levels[low]! * (1 - share) + levels[high]! * share;
+  };
+}

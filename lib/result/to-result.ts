@@ -1,0 +1,99 @@
+/** From what was measured and found to the result that is printed, kept and shown: numbers rounded to what they carry. */
+import type { Assessment } from "../analysis/assess-series";
+import { ENGINE_VERSION } from "../analysis/engine-version";
+import type { MeasuredRun, MeasuredSeries } from "../analysis/types";
+import type { Series } from "../series/series-schema";
+import { resultSchema, type Result, type ResultRun, type Warning } from "./result-schema";
+
+/** @param warnings of the measuring part; those of the assessment follow them. */
+export function toResult(
+  series: Series,
+  measured: MeasuredSeries,
+  assessment: Assessment,
+  warnings: readonly Warning[],
+): Result {
+  const { bands, shape, headline, programme } = assessment;
+  return resultSchema.parse({
+    engine: { name: "tidemark", version: ENGINE_VERSION },
+    settings: series.settings,
+    environment: series.environment,
+    distance_m: series.distance_m,
+    spl_valid: measured.splValid,
+    grid_Hz: roundFor("grid_Hz", measured.gridHz),
+    runs: measured.runs.map((run) => roundFor("runs", toResultRun(run, measured.splValid))),
+    bands: roundFor("bands", bands),
+    shape: roundFor("shape", shape),
+    headline: roundFor("headline", headline),
+    programme: roundFor("programme", programme),
+    warnings: [...warnings, ...assessment.warnings],
+  });
+}
+
+function toResultRun(run: MeasuredRun, splValid: boolean): ResultRun {
+  return {
+    file: run.file,
+    level_dB: run.levelDb,
+    drive_dB: run.driveDb,
+    kind: run.kind,
+    ...(run.variant === undefined ? {} : { variant: run.variant }),
+    ...(run.conditioning === undefined ? {} : { conditioning: run.conditioning }),
+    measured_level_dB: splValid ? run.measuredLevelDb : null,
+    latency_s: run.latencyS,
+    drift_ppm: run.driftPpm,
+    peak_dBFS: run.peakDbfs,
+    clipped: run.clipped,
+    snr_dB: run.snrDb,
+    spl_dB: [...run.splDb],
+    floor_dB: [...run.floorDb],
+    harmonics: run.harmonics.map(({ order, splDb, floorDb, quality }) => ({
+      order,
+      spl_dB: [...splDb],
+      floor_dB: [...floorDb],
+      quality,
+    })),
+    thd_percent: [...run.thdPercent],
+    thd_quality: run.thdQuality,
+    thd_orders: run.thdOrders,
+  };
+}
+
+/** What a person stated stands as stated. */
+const AS_STATED = new Set([
+  "criterion",
+  "conditioning",
+  "level_dB",
+  "crest_dB",
+  "nominal_Hz",
+  "order",
+]);
+const DIGITS = 4;
+const FREQUENCY_DIGITS = 6;
+
+/** Rounds by the unit in the name; NaN and infinities become null. */
+function roundFor(key: string, value: unknown): unknown {
+  if (AS_STATED.has(key)) return value;
+  if (typeof value === "number") return roundNumber(key, value);
+  if (value instanceof Float64Array) return Array.from(value, (x) => roundNumber(key, x));
+  if (Array.isArray(value)) return value.map((item: unknown) => roundFor(key, item));
+  if (value !== null && typeof value === "object") {
+    return Object.fromEntries(
+      Object.entries(value).map(([name, item]: [string, unknown]) => [name, roundFor(name, item)]),
+    );
+  }
+  return value;
+}
+
+function roundNumber(key: string, value: number): number | null {
+  if (!Number.isFinite(value)) return null;
+  if (key === "drive_dB") return toSteps(value, 1000);
+  if (key === "uncertainty_dB") return Math.max(0.01, toSteps(value, 100));
+  if (/_dB(A|FS)?$/.test(key)) return toSteps(value, 100);
+  if (key.endsWith("_Hz")) return Number(value.toPrecision(FREQUENCY_DIGITS));
+  if (key.endsWith("_s")) return toSteps(value, 1e6);
+  if (key.endsWith("_ppm")) return toSteps(value, 10);
+  return Number(value.toPrecision(DIGITS));
+}
+
+/** Adding zero turns -0 into 0. */
+const toSteps = (value: number, perUnit: number): number =>
+  Math.round(value * perUnit) / perUnit + 0;

@@ -1,0 +1,85 @@
+/**
+ * The analysis command: folder in, JSON out (docs/contract.md). Exit 0: analysed; 2: the input is at
+ * fault, said in one line of JSON; 1: our fault.
+ */
+import { renameSync, statSync, writeFileSync } from "node:fs";
+import { resolve } from "node:path";
+import { parseArgs } from "node:util";
+import { analyseSeries } from "../../lib/analysis/analyse-series";
+import type { OnProgress } from "../../lib/analysis/types";
+import { AppError } from "../../lib/errors/app-error";
+import { toResultText } from "../../lib/result/result-text";
+import type { Result } from "../../lib/result/result-schema";
+import { createFolderSource, readSeriesText } from "../../lib/series/folder-source";
+import { parseSeries } from "../../lib/series/parse-series";
+
+const USAGE = "analyse <folder> [--out result.json]";
+const INPUT_AT_FAULT = 2;
+
+async function main(): Promise<void> {
+  const { folder, out } = readArguments();
+  if (!statSync(folder, { throwIfNoEntry: false })?.isDirectory()) {
+    throw new AppError("series.file-missing", `There is no folder ${folder}.`);
+  }
+  const series = parseSeries(readSeriesText(folder));
+  const progress = process.stderr.isTTY ? { onProgress: showProgress } : {};
+  const result = await analyseSeries(series, createFolderSource(folder), progress);
+  if (process.stderr.isTTY) process.stderr.write("\r\u001B[K");
+  sayWarnings(result);
+  write(toResultText(result), out);
+}
+
+function readArguments(): { folder: string; out: string | undefined } {
+  try {
+    const { values, positionals } = parseArgs({
+      options: { out: { type: "string" } },
+      allowPositionals: true,
+    });
+    const [folder, ...more] = positionals;
+    if (folder === undefined || more.length > 0)
+      throw new Error(`one folder is needed, ${positionals.length} given`);
+    return { folder: resolve(folder), out: values.out };
+  } catch (error) {
+    throw new AppError(
+      "request.invalid",
+      `${error instanceof Error ? error.message : String(error)}. Usage: ${USAGE}`,
+    );
+  }
+}
+
+const showProgress: OnProgress = ({ file, stage }) => {
+  process.stderr.write(`\r\u001B[K${file === null ? "" : `${file}: `}${stage}`);
+};
+
+function sayWarnings({ warnings }: Result): void {
+  for (const { code, message } of warnings) process.stderr.write(`warning ${code}: ${message}\n`);
+}
+
+/** A file appears whole or not at all. */
+function write(text: string, out: string | undefined): void {
+  if (out === undefined) {
+    process.stdout.write(text);
+    return;
+  }
+  const path = resolve(out);
+  const draft = `${path}.${process.pid}.draft`;
+  writeFileSync(draft, text);
+  renameSync(draft, path);
+}
+
+function explain(error: unknown): void {
+  if (error instanceof AppError && error.status < 500) {
+    const { code, message, file, details } = error;
+    const detail = Object.keys(details).length === 0 ? undefined : details;
+    process.stderr.write(`${JSON.stringify({ code, message, file, detail })}\n`);
+    process.exitCode = INPUT_AT_FAULT;
+    return;
+  }
+  process.stderr.write(
+    `${error instanceof Error ? (error.stack ?? error.message) : String(error)}\n`,
+  );
+  process.exitCode = 1;
+}
+
+process.stdout.on("error", () => process.exit(1));
+main().catch(explain);
