@@ -164,7 +164,9 @@ function toCellThd(
       : [];
   const parts = orders.flatMap((order) => {
     const { power, floor } = raw.orders[order - 1]!;
-    return Number.isNaN(power[c]!) ? [] : [{ order, clean: power[c]! - floor[c]!, floor: floor[c]! }];
+    return Number.isNaN(power[c]!)
+      ? []
+      : [{ order, clean: power[c]! - floor[c]!, floor: floor[c]! }];
   });
   return toThd(parts, isAbove(clean[c]!, raw.orders[0]!.floor[c]!) ? clean[c]! : 0);
 }

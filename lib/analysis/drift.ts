@@ -7,8 +7,11 @@ import type { Plans } from "./cell-power";
 
 const POINTS = 8192;
 const BEFORE_S = 0.01;
-const FROM_HZ = 300;
+/** Above the bass, whose limiters and ports bend the phase; below what the noise takes. */
+const FROM_HZ = 1000;
 const TO_HZ = 12_000;
+/** All-pass delay over this range that a loudspeaker may have of its own, s. */
+const OWN_DELAY_S = 0.2e-3;
 const STEPS_PER_OCTAVE = 24;
 
 /**
@@ -33,6 +36,11 @@ export function estimateDriftPpm(
   const delay = toExcessDelay(response, arrivalLag, { stopHz, startHz, rateHz }, points, plans);
   const slope = fitSlope(delay, rateHz / points, lowHz, highHz);
   return (-slope / rateHz / rateConstantS) * 1e6;
+}
+
+/** What a loudspeaker's own phase can feign, ppm: a smaller estimate says nothing. */
+export function toDriftUncertaintyPpm(rateConstantS: number): number {
+  return (OWN_DELAY_S / (rateConstantS * Math.log(TO_HZ / FROM_HZ))) * 1e6;
 }
 
 interface Weighted {

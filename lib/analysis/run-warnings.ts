@@ -1,6 +1,7 @@
 /** What the front of the engine has to say about a run, in the tester's words. */
 import type { Warning } from "../result/result-schema";
 import type { SweepInUse } from "./deconvolution";
+import { toDriftUncertaintyPpm } from "./drift";
 import type { RawRun } from "./measure-run";
 
 const LEAST_SNR_DB = 20;
@@ -27,7 +28,7 @@ export function toRunWarnings(raw: RawRun, file: string, sweep: SweepInUse): War
       `${file} lacks ${(raw.missing / sweep.rateHz).toFixed(3)} s of the sweep at its ${raw.latencyS < 0 ? "start" : "end"}.`,
     );
   }
-  if (Math.abs(raw.driftPpm) > DRIFT_PPM) {
+  if (Math.abs(raw.driftPpm) > Math.max(DRIFT_PPM, toDriftUncertaintyPpm(sweep.rateConstantS))) {
     warn(
       "run.clock-drift",
       `${file}: player and recorder differ by about ${raw.driftPpm.toFixed(0)} ppm. Magnitudes hold; frequencies are off by as much.`,
