@@ -10,10 +10,12 @@ declare module "vitest" {
 }
 
 export async function setup(project: TestProject): Promise<() => Promise<void>> {
-  const { databasePort, secrets, stop } = await startTestCluster();
+  const { databasePort, secrets, stop, endAtOnce } = await startTestCluster();
   project.provide("cluster", { databasePort, secrets });
-  // Interrupted, Vitest would end without the teardown and leave the server running.
-  const interrupted = (): void => void stop().finally(() => process.exit(130));
-  for (const name of ["SIGINT", "SIGTERM"] as const) process.once(name, interrupted);
-  return stop;
+  // Interrupted, Vitest ends without the teardown; the next run takes the files away.
+  process.once("exit", endAtOnce);
+  return async () => {
+    process.off("exit", endAtOnce);
+    await stop();
+  };
 }

@@ -22,7 +22,13 @@ export const TEMPLATE_DATABASE = "tidemark_template";
 
 const testDir = join(cloneDir, ".tidemark", "test");
 
-export async function startTestCluster(): Promise<TestCluster & { stop: () => Promise<void> }> {
+export interface RunningTestCluster extends TestCluster {
+  stop: () => Promise<void>;
+  /** Ends the server without waiting, and leaves its files. */
+  endAtOnce: () => void;
+}
+
+export async function startTestCluster(): Promise<RunningTestCluster> {
   await removeLeftovers();
   const dataDir = join(testDir, `run-${process.pid}`);
   const access = {
@@ -30,7 +36,7 @@ export async function startTestCluster(): Promise<TestCluster & { stop: () => Pr
     databaseName: TEMPLATE_DATABASE,
     secrets: createSecrets(),
   };
-  await ensureCluster({
+  const cluster = await ensureCluster({
     dataDir,
     port: access.databasePort,
     superuserPassword: access.secrets.database.superuser,
@@ -45,7 +51,12 @@ export async function startTestCluster(): Promise<TestCluster & { stop: () => Pr
     await stop();
     throw error;
   }
-  return { databasePort: access.databasePort, secrets: access.secrets, stop };
+  return {
+    databasePort: access.databasePort,
+    secrets: access.secrets,
+    stop,
+    endAtOnce: cluster.endAtOnce,
+  };
 }
 
 async function removeLeftovers(): Promise<void> {
