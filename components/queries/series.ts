@@ -65,12 +65,12 @@ export function useCreateSeries() {
   });
 }
 
-export function useUpdatePlan(seriesId: string) {
+export function useUpdatePlan() {
   const client = useQueryClient();
   return useMutation({
-    mutationFn: (input: { plan: PlanInput; planVersion: number }) =>
+    mutationFn: (input: { seriesId: string; plan: PlanInput; planVersion: number }) =>
       callApi(updatePlan, {
-        params: { seriesId },
+        params: { seriesId: input.seriesId },
         body: { plan: input.plan, plan_version: input.planVersion },
       }),
     onSuccess: (series) => takeSeries(client, series),

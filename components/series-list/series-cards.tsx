@@ -1,0 +1,58 @@
+"use client";
+
+import { StateSquares } from "../parts/state-boxes";
+import { findLimits, toChangedWords } from "./list-words";
+import { FirstCell, ReachedCell } from "./row-cells";
+import { SeriesName, type RowsProps } from "./series-table";
+import { SmallWall } from "./small-wall";
+
+/** The same rows on a phone: one under the other. */
+export function SeriesCards({ rows, criterionKey, now, timeZone }: RowsProps) {
+  return (
+    <ul aria-label="Series" className="border-y border-rule bg-sheet md:hidden">
+      {rows.map((row) => {
+        const limits = findLimits(row, criterionKey);
+        return (
+          <li key={row.id} className="border-t border-rule px-phone py-3.5 first:border-t-0">
+            <div className="flex items-start justify-between gap-4">
+              <div className="min-w-0">
+                <SeriesName row={row} />
+              </div>
+              <p className="figures flex-none text-right text-label text-ink-2">
+                {row.number}
+                <br />
+                <time dateTime={row.changed_at}>
+                  {toChangedWords(row.changed_at, now, timeZone)}
+                </time>
+              </p>
+            </div>
+            <div className="mt-2">
+              <StateSquares state={row.state} note={row.state_detail} />
+            </div>
+            {limits !== null && (
+              <>
+                <div className="mt-2.5">
+                  <SmallWall limits={limits} />
+                </div>
+                <dl className="mt-2 grid grid-cols-2 gap-4">
+                  <div>
+                    <dt className="figures text-label text-ink-2">reached</dt>
+                    <dd>
+                      <ReachedCell limits={limits} unit />
+                    </dd>
+                  </div>
+                  <div>
+                    <dt className="figures text-label text-ink-2">gives out first</dt>
+                    <dd>
+                      <FirstCell row={row} limits={limits} />
+                    </dd>
+                  </div>
+                </dl>
+              </>
+            )}
+          </li>
+        );
+      })}
+    </ul>
+  );
+}
