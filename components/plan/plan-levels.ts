@@ -38,6 +38,3 @@ export function withLongTermRun(levels: readonly PlannedLevel[]): PlannedLevel[]
   const loudest = Math.max(...free.map((l) => l.level_dB));
   return levels.map((l) => (l.level_dB === loudest ? { ...l, long_term: true } : l));
 }
-
-export const sortLevels = (levels: readonly PlannedLevel[]): PlannedLevel[] =>
-  [...levels].sort((a, b) => a.level_dB - b.level_dB);
