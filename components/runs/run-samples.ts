@@ -83,7 +83,6 @@ export function makeUpload(change: Partial<UploadItem> = {}): UploadItem {
     slot: null,
     state: "sending",
     fault: null,
-    url: null,
     ...change,
   };
 }

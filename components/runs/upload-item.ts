@@ -8,8 +8,6 @@ export type UploadState =
   /** The connection was lost; it goes on by itself. */
   | "retrying"
   | "failed"
-  /** Begun before the page was loaded; the file must be chosen again. */
-  | "unfinished"
   | "done";
 
 export interface UploadItem {
@@ -24,8 +22,6 @@ export interface UploadItem {
   state: UploadState;
   /** Why it failed, in the server's words. */
   fault: string | null;
-  /** Address of the upload at the server, where there is one. */
-  url: string | null;
 }
 
 /** "uploading, 2 s left", "stopped; its bytes are kept". */
@@ -45,8 +41,6 @@ export function toUploadWords(item: UploadItem): string {
       return "no connection; goes on by itself";
     case "failed":
       return item.fault ?? "refused";
-    case "unfinished":
-      return "unfinished; choose the file again to go on";
     case "done":
       return "received";
   }

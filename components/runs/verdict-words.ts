@@ -4,7 +4,7 @@ import type { RunView } from "@/lib/api/runs";
 import { formatCount, formatNumber, formatPlain, NBSP } from "@/lib/charts/format";
 import type { ArrivalCheck } from "@/lib/runs/arrival-schema";
 import type { RunRow } from "./run-rows";
-import { toUploadWords } from "./upload-item";
+import { toUploadWords, type UploadItem } from "./upload-item";
 
 export interface VerdictWords {
   kind: VerdictKind;
@@ -16,19 +16,20 @@ export interface VerdictWords {
 /** The row's verdict: the recording's where there is one, else what stands in its way. */
 export function toRowVerdict(row: RunRow): VerdictWords {
   const { upload, slot } = row;
-  if (upload !== null && upload.state !== "done") {
-    return {
-      kind: upload.state === "failed" ? "bad" : "going",
-      words: upload.state === "failed" ? "refused" : toUploadWords(upload),
-      note: upload.state === "failed" ? toUploadWords(upload) : null,
-    };
-  }
+  if (upload !== null && upload.state !== "done") return toUploadVerdict(upload);
   if (row.run !== null) return toRunVerdict(row.run);
   if (slot.excused !== null) {
     return { kind: "ok", words: "excused", note: `“${slot.excused}”` };
   }
   if (!slot.open) return { kind: "locked", words: slot.lock_reason ?? "not open yet", note: null };
   return { kind: "wait", words: toDueWords(row), note: null };
+}
+
+/** A file on its way, or refused with the server's reason. */
+export function toUploadVerdict(upload: UploadItem): VerdictWords {
+  const words = toUploadWords(upload);
+  if (upload.state === "failed") return { kind: "bad", words: "refused", note: words };
+  return { kind: upload.state === "waiting" ? "wait" : "going", words, note: null };
 }
 
 /** What is held against what, where the first recording is still to come. */

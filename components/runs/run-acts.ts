@@ -1,0 +1,13 @@
+/** What a person may do with recordings; the table hands it down, the screen carries it out. */
+import type { RunAct, RunView } from "@/lib/api/runs";
+import type { RunRow } from "./run-rows";
+
+export interface RunActs {
+  act: (run: RunView, act: RunAct) => Promise<void>;
+  replace: (row: RunRow, files: File[]) => void;
+  excuse: (row: RunRow, reason: string | null) => Promise<void>;
+  remove: (run: RunView) => Promise<void>;
+  stopUpload: (id: string) => void;
+  goOnUpload: (id: string) => void;
+  discardUpload: (id: string) => void;
+}

@@ -1,0 +1,66 @@
+/** Sends one file by the tus protocol: goes on after a lost connection and after a reload. */
+import { DetailedError, Upload } from "tus-js-client";
+import { problemSchema } from "@/lib/api/common";
+import { UPLOADS_PATH } from "@/lib/api/runs";
+import type { ChosenFile, StartTransfer } from "./upload-controller";
+
+/** The first tries follow quickly; then one each 15 s, for an hour. */
+const RETRY_DELAYS_MS = [0, 1000, 3000, 5000, ...Array.from({ length: 240 }, () => 15_000)];
+const CHUNK_BYTES = 16 * 1024 * 1024;
+/** No answer, a lock that another request still holds, or a fault of the moment. */
+const PASSING = new Set([0, 423, 502, 503, 504]);
+
+/** @param seriesId the series that the files belong to; the same file for another one starts anew. */
+export function makeTusTransfer(seriesId: string): StartTransfer {
+  return (chosen, events) => {
+    const { file, slot } = chosen;
+    const upload = new Upload(file, {
+      endpoint: UPLOADS_PATH,
+      chunkSize: CHUNK_BYTES,
+      retryDelays: RETRY_DELAYS_MS,
+      removeFingerprintOnSuccess: true,
+      metadata: { seriesId, fileName: file.name, ...(slot === null ? {} : { slot }) },
+      fingerprint: () => Promise.resolve(toFingerprint(seriesId, chosen)),
+      onProgress: (sent) => events.onProgress(sent),
+      onShouldRetry: (error) => {
+        const again = PASSING.has(error.originalResponse?.getStatus() ?? 0);
+        if (again) events.onRetrying();
+        return again;
+      },
+      onError: (error) => events.onFault(toFaultWords(error)),
+      onSuccess: ({ lastResponse }) =>
+        events.onDone(lastResponse.getHeader("tidemark-run-id") ?? null),
+    });
+    void upload.findPreviousUploads().then((earlier) => {
+      const [last] = earlier;
+      if (last !== undefined) upload.resumeFromPreviousUpload(last);
+      upload.start();
+    });
+    return {
+      stop: () => upload.abort(),
+      discard: () => upload.abort(true).catch(() => undefined),
+    };
+  };
+}
+
+/** Name, size and time of change tell a file from a new recording under the old name. */
+export function toFingerprint(seriesId: string, { file, slot }: ChosenFile): string {
+  return ["tidemark", seriesId, slot ?? "", file.name, file.size, file.lastModified].join("|");
+}
+
+/** The server's own sentence where it sent one. */
+function toFaultWords(error: Error): string {
+  if (error instanceof DetailedError) {
+    const parsed = problemSchema.safeParse(parseJson(error.originalResponse?.getBody() ?? ""));
+    if (parsed.success) return parsed.data.detail;
+  }
+  return "The file could not be sent. Check the connection and try again.";
+}
+
+function parseJson(text: string): unknown {
+  try {
+    return JSON.parse(text) as unknown;
+  } catch {
+    return undefined;
+  }
+}
