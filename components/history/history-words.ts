@@ -1,0 +1,35 @@
+/** Days of a history, newest first, in the lab's time zone. */
+import type { HistoryEvent } from "@/lib/api/series";
+
+export interface HistoryDay {
+  /** "12 May 2026" */
+  day: string;
+  events: { event: HistoryEvent; time: string }[];
+}
+
+export function toHistoryDays(
+  events: readonly HistoryEvent[],
+  timeZone: string | undefined,
+): HistoryDay[] {
+  const days: HistoryDay[] = [];
+  for (const event of events) {
+    const at = new Date(event.at);
+    const day = at.toLocaleDateString("en-GB", {
+      day: "numeric",
+      month: "long",
+      year: "numeric",
+      timeZone,
+    });
+    const time = at.toLocaleTimeString("en-GB", { hour: "2-digit", minute: "2-digit", timeZone });
+    const last = days.at(-1);
+    if (last?.day === day) last.events.push({ event, time });
+    else days.push({ day, events: [{ event, time }] });
+  }
+  return days;
+}
+
+/** "Ines Varley", "Ines Varley, by token bench", "Tidemark" where a worker did it. */
+export function toWhoWords(event: HistoryEvent): string {
+  const who = event.who?.name ?? "Tidemark";
+  return event.by_token === null ? who : `${who}, by token ${event.by_token}`;
+}
