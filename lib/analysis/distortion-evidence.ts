@@ -109,7 +109,10 @@ function responseDb(groups: readonly LevelGroup[], bandIndex: number, order: num
   return low + (at - Math.floor(at)) * (high - low) - (gains?.[bandIndex] ?? Number.NaN);
 }
 
-/** Growth of H3 over the smallest prediction that any linear run makes for it. */
+/**
+ * Growth of H3 over what the output's growth predicts from a linear run: from the run that shows it most surely,
+ * since the quietest runs predict it only within their noise.
+ */
 function growthOf(
   groups: readonly LevelGroup[],
   detection: Detection,
@@ -118,27 +121,24 @@ function growthOf(
 ): { growthDb: number; sigmaDb: number } {
   const topDb = 10 * Math.log10(third.ratio);
   const topSigmaDb = sigmaOf(third);
-  let growthDb = Number.NaN;
-  let sigmaDb = topSigmaDb;
+  const lossAt = (k: number): number => detection.lossDb[k] ?? Number.NaN;
+  const topDriveDb = groups[detection.top]?.driveDb ?? Number.NaN;
   const last = Math.max(Math.min(detection.firstActive, detection.top), 1);
+  let best = { growthDb: Number.NaN, sigmaDb: topSigmaDb };
   for (const [k, group] of groups.slice(0, last).entries()) {
     const own = harmonicsOf(group, bandIndex).find(
       ({ order, quality }) => order === 3 && quality !== null,
     );
-    const outputStepDb =
-      (groups[detection.top]?.driveDb ?? Number.NaN) -
-      group.driveDb -
-      ((detection.lossDb[detection.top] ?? Number.NaN) - (detection.lossDb[k] ?? Number.NaN));
+    const outputStepDb = topDriveDb - group.driveDb - (lossAt(detection.top) - lossAt(k));
     if (!own || !Number.isFinite(outputStepDb)) continue;
+    // In the noise, the noise itself makes the prediction: the growth is then a safe lower bound.
     const inNoise = own.quality === "noise" || !(own.ratio > own.floorRatio);
     const startDb = 10 * Math.log10(inNoise ? own.floorRatio : own.ratio);
-    const grownDb = topDb - (startDb + 2 * outputStepDb);
-    if (!(grownDb <= growthDb)) {
-      growthDb = grownDb;
-      sigmaDb = Math.hypot(topSigmaDb, inNoise ? 0 : sigmaOf(own));
-    }
+    const growthDb = topDb - (startDb + 2 * outputStepDb);
+    const sigmaDb = Math.hypot(topSigmaDb, inNoise ? 0 : sigmaOf(own));
+    if (!(growthDb - 3 * sigmaDb <= best.growthDb - 3 * best.sigmaDb)) best = { growthDb, sigmaDb };
   }
-  return { growthDb, sigmaDb };
+  return best;
 }
 
 const sigmaOf = ({ ratio, floorRatio }: MeanHarmonic): number =>

@@ -2,7 +2,7 @@
 import type { OnsetPosterior } from "./onset/posterior";
 
 const STEP_DB = 1;
-const LAW_STRIDE = 3;
+const LAW_STRIDE = 6;
 
 /** Expected and measured level along the law, dB; both on the scale of `gainDb` plus drive. */
 export interface LawCurve {

@@ -14,6 +14,8 @@ export interface BandGains {
 /** Laws are followed to this much, dB, and this share of the loss. */
 const LAW_ERROR_DB = 0.02;
 const LAW_ERROR_SHARE = 0.02;
+/** Likelihoods this far below the best do not count: a millionth. */
+export const NEGLIGIBLE_LOG = -14;
 
 export interface OnsetLikelihood {
   plan: OnsetPlan;
@@ -22,6 +24,8 @@ export interface OnsetLikelihood {
   columns: number;
   /** [shapes * columns] -chi^2/2. */
   logLikelihood: Float64Array;
+  /** [shapes] largest of its row. */
+  shapeBest: Float64Array;
   /** [shapes] log of the mean likelihood over the columns: the evidence for a shape. */
   shapeEvidence: Float64Array;
   /** [levels] weights 1/sigma^2; 0 where there is no value. */
@@ -68,24 +72,28 @@ export function computeLikelihood(
   const firstColumn = clampColumn(lowDb);
   const columns = clampColumn(highDb) - firstColumn + 1;
   const logLikelihood = new Float64Array(plan.shapes.length * columns);
+  const shapeBest = new Float64Array(plan.shapes.length);
   const shapeEvidence = new Float64Array(plan.shapes.length);
   const r1 = new Float64Array(columns);
   const r2 = new Float64Array(columns);
   for (let j = 0; j < plan.shapes.length; j++) {
     r1.fill(first);
     r2.fill(second);
-    plan.levels.forEach(({ profile, at }, k) => {
+    for (const [k, { profile, at }] of plan.levels.entries()) {
       const weight = weights[k] ?? 0;
-      if (weight === 0) return;
+      if (weight === 0) continue;
+      const { lossDb: table } = profile;
       const from = j * plan.profileLength + at - firstColumn;
       const twiceGain = 2 * (gainDb[k] ?? 0);
-      for (let i = 0; i < columns; i++) {
-        const loss = profile[from - i] ?? 0;
+      // Later columns hold onsets so far above this level that nothing is lost there.
+      const end = Math.min(columns, at - firstColumn - (profile.start[j] ?? 0) + 1);
+      for (let i = 0; i < end; i++) {
+        const loss = table[from - i] ?? 0;
         const weighted = weight * loss;
         r1[i] = (r1[i] ?? 0) + weighted;
         r2[i] = (r2[i] ?? 0) + weighted * (loss + twiceGain);
       }
-    });
+    }
     let best = -Infinity;
     for (let i = 0; i < columns; i++) {
       const value = -0.5 * ((r2[i] ?? 0) - (r1[i] ?? 0) ** 2 / weightSum);
@@ -95,8 +103,9 @@ export function computeLikelihood(
     let sum = 0;
     for (let i = 0; i < columns; i++) {
       const below = (logLikelihood[j * columns + i] ?? 0) - best;
-      if (below > -30) sum += Math.exp(below);
+      if (below > NEGLIGIBLE_LOG) sum += Math.exp(below);
     }
+    shapeBest[j] = best;
     shapeEvidence[j] = best + Math.log(sum / columns);
   }
   return {
@@ -104,6 +113,7 @@ export function computeLikelihood(
     firstColumn,
     columns,
     logLikelihood,
+    shapeBest,
     shapeEvidence,
     weights,
     gainDb: gains.gainDb,

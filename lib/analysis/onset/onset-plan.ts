@@ -8,6 +8,13 @@ const BELOW_TOP_DB = 34;
 const BELOW_LOWEST_DB = 10;
 const ABOVE_TOP_DB = 1;
 
+export interface LossProfile {
+  /** [shapes * profileLength] */
+  lossDb: Float64Array;
+  /** [shapes] first index of a row that is not zero. */
+  start: Int32Array;
+}
+
 export interface OnsetPlan {
   /** [levels] drives, dB, ascending. */
   drivesDb: Float64Array;
@@ -17,9 +24,9 @@ export interface OnsetPlan {
   columns: number;
   /**
    * [levels] a loss curve per shape on the grid's step, and where a level stands in it: the loss of shape j with its
-   * onset in column i is `profile[j * profileLength + at - i]`. Levels a whole number of steps apart share a profile.
+   * onset in column i is `profile.lossDb[j * profileLength + at - i]`. Levels a whole number of steps apart share a profile.
    */
-  levels: { profile: Float64Array; at: number }[];
+  levels: { profile: LossProfile; at: number }[];
   profileLength: number;
   /** Index of the first shape of each family, and one past its last. */
   range: Record<Family, readonly [number, number]>;
@@ -52,7 +59,7 @@ export function planOnset(drivesDb: readonly number[]): OnsetPlan {
   // Index m of a profile is a drive m - (columns - 1) steps above the onset, less the phase of the level on the grid.
   const span = Math.ceil((top - firstOnsetDb) / ONSET_STEP_DB) + 1;
   const profileLength = span + columns;
-  const profiles = new Map<number, Float64Array>();
+  const profiles = new Map<number, LossProfile>();
   const levels = drivesDb.map((drive) => {
     const steps = (drive - firstOnsetDb) / ONSET_STEP_DB;
     const whole = Math.floor(steps + 1e-6);
@@ -86,15 +93,19 @@ function profileOf(
   length: number,
   columns: number,
   phase: number,
-): Float64Array {
-  const profile = new Float64Array(shapes.length * length);
+): LossProfile {
+  const table = new Float64Array(shapes.length * length);
+  const start = new Int32Array(shapes.length);
   shapes.forEach((shape, j) => {
     // From the top down: below its first zero a loss curve stays zero.
     for (let m = length - 1; m >= 0; m--) {
       const lossDb = shape.lossDb((m - (columns - 1) + phase) * ONSET_STEP_DB);
-      if (lossDb === 0) break;
-      profile[j * length + m] = lossDb;
+      if (lossDb === 0) {
+        start[j] = m + 1;
+        break;
+      }
+      table[j * length + m] = lossDb;
     }
   });
-  return profile;
+  return { lossDb: table, start };
 }

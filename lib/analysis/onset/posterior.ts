@@ -1,7 +1,7 @@
 /** Posterior of the onset and of any other loss level, from a likelihood and the weights of the shapes. */
 import { getAt } from "../get-at";
 import { ONSET_STEP_DB, type OnsetPlan } from "./onset-plan";
-import type { OnsetLikelihood } from "./likelihood";
+import { NEGLIGIBLE_LOG, type OnsetLikelihood } from "./likelihood";
 import type { Shape } from "./shapes";
 
 /** One law of the posterior: a shape with its onset. */
@@ -35,7 +35,6 @@ export interface OnsetPosterior {
 /** What the grid cannot resolve is added to both ends of an interval, dB. */
 const INTERVAL_MARGIN_DB = 0.1;
 const SAMPLES = 192;
-const NEGLIGIBLE_LOG = -24;
 
 /**
  * @param shapePrior [shapes] weights, summing to 1; a shape of weight 0 is left out.
@@ -45,17 +44,15 @@ export function computePosterior(
   shapePrior: Float64Array,
 ): OnsetPosterior {
   const { plan, columns, logLikelihood } = likelihood;
-  const used = plan.shapes.map((_, j) => j).filter((j) => (shapePrior[j] ?? 0) > 0);
+  const allowed = plan.shapes.flatMap((_, j) => ((shapePrior[j] ?? 0) > 0 ? [j] : []));
   const logPrior = Float64Array.from(shapePrior, Math.log);
-  let best = -Infinity;
-  let bestFit = -Infinity;
-  for (const j of used) {
-    for (let i = 0; i < columns; i++) {
-      const fit = logLikelihood[j * columns + i] ?? 0;
-      if (fit > bestFit) bestFit = fit;
-      if (fit + (logPrior[j] ?? 0) > best) best = fit + (logPrior[j] ?? 0);
-    }
-  }
+  const bestOf = (j: number): number => (likelihood.shapeBest[j] ?? 0) + (logPrior[j] ?? 0);
+  const best = allowed.reduce((most, j) => Math.max(most, bestOf(j)), -Infinity);
+  const bestFit = allowed.reduce(
+    (most, j) => Math.max(most, likelihood.shapeBest[j] ?? 0),
+    -Infinity,
+  );
+  const used = allowed.filter((j) => bestOf(j) - best >= NEGLIGIBLE_LOG);
   const mass = new Float64Array(plan.shapes.length * columns);
   const byColumn = new Float64Array(columns);
   const byShape = new Float64Array(plan.shapes.length);
@@ -80,8 +77,17 @@ export function computePosterior(
     total,
   };
   const samples = drawSamples(plan, grid, byColumn);
+  const known = new Map<number, Quantiles>();
   return {
-    quantiles: (lossDb, ceilingDb) => quantilesOf(plan, grid, lossDb, ceilingDb),
+    quantiles: (lossDb, ceilingDb) => {
+      const free = known.get(lossDb) ?? quantilesOf(plan, grid, lossDb);
+      known.set(lossDb, free);
+      return {
+        lowDb: Math.min(free.lowDb, ceilingDb),
+        medianDb: Math.min(free.medianDb, ceilingDb),
+        highDb: Math.min(free.highDb, ceilingDb),
+      };
+    },
     samples,
     gainDb: meanGain(likelihood, samples),
     gainSigmaDb: likelihood.gainSigmaDb,
@@ -111,12 +117,7 @@ interface MassGrid {
   total: number;
 }
 
-function quantilesOf(
-  plan: OnsetPlan,
-  grid: MassGrid,
-  lossDb: number,
-  ceilingDb: number,
-): Quantiles {
+function quantilesOf(plan: OnsetPlan, grid: MassGrid, lossDb: number): Quantiles {
   const { columns, mass, firstDb } = grid;
   // Drives of the loss lie on the onset's own lattice moved by each shape's offset: spread linearly.
   const bins = columns + Math.ceil(60 / ONSET_STEP_DB);
@@ -144,19 +145,18 @@ function quantilesOf(
     for (let bin = 0; bin <= bins; bin++) {
       const here = histogram[bin] ?? 0;
       if (sum + here >= share * grid.total && here > 0) {
-        return Math.min(
-          origin + (bin + (share * grid.total - sum) / here) * ONSET_STEP_DB,
-          ceilingDb,
-        );
+        return bin === bins
+          ? Infinity
+          : origin + (bin + (share * grid.total - sum) / here) * ONSET_STEP_DB;
       }
       sum += here;
     }
-    return ceilingDb;
+    return Infinity;
   };
   return {
     lowDb: at(0.05) - INTERVAL_MARGIN_DB,
     medianDb: at(0.5),
-    highDb: Math.min(at(0.95) + INTERVAL_MARGIN_DB, ceilingDb),
+    highDb: at(0.95) + INTERVAL_MARGIN_DB,
   };
 }
 

@@ -28,7 +28,7 @@ export function priorOf(
 /** Bands speak for each other over about an octave: weight exp(-(d/REACH)^2 / 2) at d bands. */
 const REACH_BANDS = 4;
 /** Together they count as no more than this many independent bands: step errors are common to them. */
-const MOST_VOICES = 4;
+const MOST_VOICES = 2;
 /** The band keeps this share of its own prior, whatever others say. */
 const OWN_SHARE = 0.15;
 /** One band rules a shape out by this much log evidence at most: a crossover band may follow no such law at all. */
