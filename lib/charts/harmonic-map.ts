@@ -1,12 +1,11 @@
-/** Harmonics by band (one run) and by run (one band), in slate; in the noise is hatched, never a number. */
+/** Harmonics by band of one run, in slate; in the noise is hatched, never a number. */
 import type { Band, BandLevel } from "../result/result-schema";
 import type { Figure, Shape } from "./figure";
 import { round2 } from "./figure";
-import { formatPercentCell, formatPercentPlain, formatPlain } from "./format";
+import { formatPercentCell } from "./format";
 import { HARMONIC_ORDERS, harmonicSample } from "./harmonic-lines";
 import { NOISE, toPatterns } from "./patterns";
 import type { BandScale } from "./scales";
-import { isPlain, type SeriesLevel } from "./series-levels";
 import { COLOURS, slateStep } from "./tokens";
 
 /** value: in percent. noise: not resolvable. absent: the order does not exist in this band. */
@@ -25,9 +24,6 @@ const cellOf = (level: BandLevel | undefined, order: number): HarmonicCell => {
   const harmonic = level?.harmonics.find((h) => h.order === order);
   return harmonic === undefined ? { state: "absent" } : toCell(harmonic.percent, harmonic.quality);
 };
-
-export const thdCell = (level: Pick<BandLevel, "thd_percent" | "thd_quality">): HarmonicCell =>
-  toCell(level.thd_percent, level.thd_quality);
 
 export interface HarmonicRow {
   readonly order: number;
@@ -167,82 +163,5 @@ export function toHarmonicMap(
           : []),
       ],
     },
-  };
-}
-
-export interface BandHarmonicRow {
-  readonly level: SeriesLevel;
-  readonly cells: readonly HarmonicCell[];
-  readonly thd: HarmonicCell;
-  readonly orders: string;
-}
-
-/** @returns a row per plain run of the band, quietest first. */
-export const toBandHarmonicRows = (band: Band, levels: readonly SeriesLevel[]): BandHarmonicRow[] =>
-  levels.flatMap((level): BandHarmonicRow[] => {
-    const run = band.levels.find(
-      (candidate) => isPlain(candidate) && candidate.level_dB === level.levelDb,
-    );
-    if (run === undefined) return [];
-    return [
-      {
-        level,
-        cells: HARMONIC_ORDERS.map((order) => cellOf(run, order)),
-        thd: thdCell(run),
-        orders: run.thd_orders,
-      },
-    ];
-  });
-
-const TABLE = { head: 20, row: 24, cellHeight: 22.5, left: 52, thdWidth: 32, gap: 3.5 };
-
-/** The table of the band detail: run by harmonic, THD at the right. */
-export function toBandHarmonics(rows: readonly BandHarmonicRow[], width = 352): Figure {
-  const step = (width - TABLE.left - TABLE.thdWidth - TABLE.gap) / HARMONIC_ORDERS.length;
-  const thdX = width - TABLE.thdWidth;
-  const head = (text: string, x: number, bold = false): Shape => ({
-    kind: "text",
-    x: round2(x),
-    y: 12,
-    text,
-    size: 11,
-    fill: COLOURS.ink2,
-    anchor: "middle",
-    ...(bold ? { weight: 600 as const } : {}),
-  });
-  return {
-    width,
-    height: TABLE.head + rows.length * TABLE.row,
-    patterns: toPatterns([]),
-    shapes: [
-      { kind: "text", x: 0, y: 12, text: "run", size: 11, fill: COLOURS.ink2 },
-      ...HARMONIC_ORDERS.map((order, at) => head(`H${order}`, TABLE.left + (at + 0.5) * step)),
-      head("THD", thdX + TABLE.thdWidth / 2, true),
-      ...rows.flatMap((row, at): Shape[] => {
-        const y = TABLE.head + at * TABLE.row;
-        const box = (x: number, cellWidth: number): CellBox => ({
-          x: round2(x),
-          y,
-          width: round2(cellWidth),
-          height: TABLE.cellHeight,
-        });
-        return [
-          { kind: "rect", x: 0, y: y + 3, width: 9, height: 2, fill: row.level.paint.line },
-          { kind: "rect", x: 0, y: y + 5, width: 9, height: 14, fill: row.level.paint.fill },
-          {
-            kind: "text",
-            x: 14,
-            y: y + 16,
-            text: formatPlain(row.level.levelDb),
-            size: 12,
-            fill: COLOURS.ink2,
-          },
-          ...row.cells.flatMap((cell, nth) =>
-            cellShapes(cell, box(TABLE.left + nth * step, step - 1.5), formatPercentPlain),
-          ),
-          ...cellShapes(row.thd, box(thdX, TABLE.thdWidth), formatPercentPlain, true),
-        ];
-      }),
-    ],
   };
 }

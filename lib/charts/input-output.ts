@@ -233,7 +233,7 @@ function lossWords(place: Place, points: readonly IoPoint[]): Shape[] {
       kind: "text",
       role: "loss",
       x: Math.min(toPlotX(place, last.expectedDb) + 5, place.plot.x + place.plot.width),
-      y: toPlotY(place, last.measuredDb) + 20,
+      y: lossWordsY(place, points, last),
       text: formatSignedDb(last.compressionDb),
       size: 12,
       weight: 600,
@@ -242,6 +242,19 @@ function lossWords(place: Place, points: readonly IoPoint[]): Shape[] {
       halo: COLOURS.sheet,
     },
   ];
+}
+
+const LOSS_WORDS_PX = 58;
+
+/** Under the last point, and under the line to the point before it. */
+function lossWordsY(place: Place, points: readonly IoPoint[], last: IoPoint): number {
+  const y = toPlotY(place, last.measuredDb);
+  const before = points.at(-2);
+  if (before === undefined) return y + 20;
+  const slope =
+    (toPlotY(place, before.measuredDb) - y) /
+    Math.max(1, toPlotX(place, last.expectedDb) - toPlotX(place, before.expectedDb));
+  return round2(Math.max(y + 20, y + slope * LOSS_WORDS_PX + 16));
 }
 
 /** A square of the level's colour with its whiskers. */
