@@ -21,6 +21,7 @@ import { BandDetail } from "./band-detail";
 import { CriterionSwitch } from "./criterion-switch";
 import { EmptyWall } from "./empty-wall";
 import { HeadlineLine } from "./headline-line";
+import { InputOutput } from "./input-output";
 import { OutputLimitFigure } from "./output-limit-figure";
 import { ResultNotes } from "./result-notes";
 import { RunStrip } from "./run-strip";
@@ -167,7 +168,7 @@ function Workspace({ result, version, watched }: WorkspaceProps) {
               band={band}
               criterion={criterion}
               onMove={onSelect}
-              figure={null}
+              figure={<InputOutput result={result} band={band} />}
             />
           </aside>
         )}
