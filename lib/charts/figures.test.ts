@@ -1,6 +1,5 @@
 import { describe, expect, it } from "vitest";
 import { makeSampleResult } from "../../tests/support/sample-result";
-import type { ListLimits } from "../api/series";
 import { toCompressionMap, toMapRows } from "./compression-map";
 import { toPlotX, toPlotY } from "./curve-figure";
 import { flattenShapes, type RectShape, type Shape, type TextShape } from "./figure";
@@ -9,7 +8,6 @@ import { causeKey, causeShapes, CAUSE_NAMES, decisionShapes } from "./marks";
 import { toBandScale } from "./scales";
 import { selectionShapes, tabShapes } from "./selection";
 import { listPlainLevels, toSeriesLevels } from "./series-levels";
-import { toLevelBars, toSmallWall } from "./small-wall";
 import { COLOURS } from "./tokens";
 
 const result = makeSampleResult();
@@ -97,42 +95,6 @@ describe("input against output", () => {
     );
     expect(toInputOutputFigure({ band: { ...band, levels }, levels: [] })).toBeNull();
   });
-});
-
-describe("the wall of a list row", () => {
-  const row = (status: ListLimits["wall"][number]["status"], spl: number | null) => ({
-    nominal_Hz: 63,
-    status,
-    spl_dB: spl,
-    reached_dB: spl,
-  });
-  it.each([
-    ["found", 83, ["water", "cap"]],
-    ["not reached", 83, ["water"]],
-    ["below lowest", 75, ["below-lowest", "cap"]],
-    ["not assessed", 83, ["not-assessed"]],
-    ["found", null, ["in-noise"]],
-  ] as const)("%s at %s dB is %s", (status, spl, roles) => {
-    const shapes = flattenShapes(toSmallWall([row(status, spl)]).shapes);
-    expect(shapes.flatMap((s) => s.role ?? []).filter((role) => role !== "rule")).toEqual(roles);
-  });
-  it("is on a fixed scale of 60 to 106 dB", () => {
-    const [at60, at83, at120] = [60, 83, 120].map(
-      (db) => rects(toSmallWall([row("not reached", db)]).shapes, "water")[0],
-    );
-    expect(at60?.height).toBe(0);
-    expect(at83?.height).toBe(19);
-    expect(at120?.height).toBe(38);
-  });
-});
-
-describe("level bars", () => {
-  it("rise from 8 to 22 px", () => {
-    const bars = rects(toLevelBars([102, 76, 96, 86]).shapes, "bar");
-    expect(bars.map((bar) => Math.round(bar.height))).toEqual([8, 13, 17, 22]);
-  });
-  it("have nothing for no level", () =>
-    expect(toLevelBars([])).toMatchObject({ width: 0, shapes: [] }));
 });
 
 describe("levels of a series", () => {
