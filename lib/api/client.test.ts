@@ -20,7 +20,8 @@ const operation = defineOperation({
 const answering =
   (response: () => Response, seen: Request[] = []): typeof fetch =>
   (input, init) => {
-    seen.push(new Request(new URL(String(input), "http://lab.test"), init));
+    const path = input instanceof Request ? input.url : input;
+    seen.push(new Request(new URL(path, "http://lab.test"), init));
     return Promise.resolve(response());
   };
 

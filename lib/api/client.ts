@@ -135,9 +135,10 @@ export function toApiPath(
     return encodeURIComponent(value);
   });
   const search = new URLSearchParams();
-  for (const [name, value] of Object.entries((query ?? {}) as Record<string, unknown>)) {
+  const asked = (query ?? {}) as Record<string, string | number | boolean | null | undefined>;
+  for (const [name, value] of Object.entries(asked)) {
     if (value === undefined || value === null || value === "") continue;
-    search.set(name, String(value as string | number | boolean));
+    search.set(name, String(value));
   }
   const text = search.toString();
   return text === "" ? path : `${path}?${text}`;

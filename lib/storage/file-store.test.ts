@@ -63,9 +63,12 @@ describe("the file store", () => {
     expect((await stat(storedPath())).ino).toBe(first.ino);
   });
 
-  it.each(["open", "stream"] as const)("says storage.missing on %s of nothing", async (act) => {
-    await expect(store()[act](digest)).rejects.toMatchObject({ code: "storage.missing" });
-  });
+  it.each(["open", "stream", "localPath"] as const)(
+    "says storage.missing on %s of nothing",
+    async (act) => {
+      await expect(store()[act](digest)).rejects.toMatchObject({ code: "storage.missing" });
+    },
+  );
 
   it("refuses a digest that is a path", async () => {
     await expect(store().has("../../etc/passwd")).rejects.toBeInstanceOf(AppError);

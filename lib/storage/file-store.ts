@@ -15,6 +15,11 @@ export function createFileStore(folder: string): RecordingStore {
     put: (stagedPath, digest) => putFile(folder, stagedPath, digest),
     open: (digest) => openFile(toPath(folder, digest), digest),
     stream: (digest, range) => streamFile(toPath(folder, digest), digest, range),
+    localPath: async (digest) => {
+      const path = toPath(folder, digest);
+      if ((await sizeOf(path)) === null) throw missing(digest);
+      return path;
+    },
     has: async (digest) => (await sizeOf(toPath(folder, digest))) !== null,
     remove: (digest) => rm(toPath(folder, digest), { force: true }),
     freeBytes: () => freeBytesAt(folder),

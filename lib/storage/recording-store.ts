@@ -34,6 +34,12 @@ export interface RecordingStore {
   open(digest: string): Promise<OpenRecording>;
   /** @throws AppError "storage.missing" */
   stream(digest: string, range?: ByteRange): Promise<ReadableStream<Uint8Array>>;
+  /**
+   * A path under which a computing process of this machine reads the bytes.
+   *
+   * @throws AppError "storage.missing"
+   */
+  localPath(digest: string): Promise<string>;
   has(digest: string): Promise<boolean>;
   /** No error where nothing is there. */
   remove(digest: string): Promise<void>;
