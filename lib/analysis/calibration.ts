@@ -13,7 +13,7 @@ export interface Tone {
 }
 
 const SHORTEST_S = 0.3;
-const LONGEST_SEARCH = 2 ** 17;
+const LONGEST_SEARCH = 2 ** 16;
 const BLOCK_S = 0.2;
 /** A calibrator at another frequency than stated is another calibrator. */
 const FREQUENCY_TOLERANCE = 0.05;

@@ -24,7 +24,7 @@ export class Plans {
   }
 }
 
-/** |H|^2 is sampled without folding at twice the window, and in a narrow bass cell not coarser than this. */
+/** |H|^2 is sampled without folding at twice the window, and in the narrow cells of the bass not coarser than this times the order. */
 const COARSEST_BIN_HZ = 1.5;
 
 /**
@@ -44,7 +44,9 @@ export function measureCellPower(
   plans: Plans,
 ): Float64Array {
   const { weights, before, lead, order } = window;
-  const fft = plans.fft(toFftSize(Math.max(2 * weights.length, rateHz / COARSEST_BIN_HZ)));
+  const fft = plans.fft(
+    toFftSize(Math.max(2 * weights.length, rateHz / (COARSEST_BIN_HZ * order))),
+  );
   const size = response.length;
   let from = Math.round(arrivalLag - lead) - before;
   from = ((from % size) + size) % size;

@@ -3,8 +3,9 @@
  * at the end of the sweep (docs/domain.md section 1). Harmonic n appears R ln n before the linear part.
  */
 import { AnalysisError } from "../errors/app-error";
+import type { Plans } from "./cell-power";
 import { planComplexFft, type ComplexFft } from "./fft/complex-fft";
-import { planRealFft, toFftSize, type RealFft } from "./fft/real-fft";
+import { toFftSize, type RealFft } from "./fft/real-fft";
 
 export interface SweepInUse {
   startHz: number;
@@ -31,8 +32,6 @@ export interface Deconvolver {
 export interface Deconvolved {
   response: Float64Array;
   envelope: ArrivalEnvelope;
-  /** [size + 2] transfer function, re and im interleaved, zero outside the sweep. */
-  transfer: Float64Array;
 }
 
 /** |analytic response| limited to the arrival band, over lag. */
@@ -71,8 +70,9 @@ export function createDeconvolver(
   stimulus: Float32Array | Float64Array,
   sweep: SweepInUse,
   size: number,
+  plans: Plans,
 ): Deconvolver {
-  const fft = planRealFft(size);
+  const fft = plans.fft(size);
   fft.data.set(stimulus.subarray(0, size));
   fft.data.fill(0, Math.min(size, stimulus.length));
   const spectrum = fft.forward();
@@ -82,15 +82,19 @@ export function createDeconvolver(
   const firstBin = Math.ceil((lowHz * size) / sweep.rateHz);
   const lastBin = Math.floor((highHz * size) / sweep.rateHz);
   const zoom = planComplexFft(toFftSize(2 * (lastBin - firstBin + 1)));
-  const transfer = new Float64Array(size + 2);
+  const kept = {
+    first: firstBin,
+    last: lastBin,
+    bins: new Float64Array(2 * (lastBin - firstBin + 1)),
+  };
   return {
     size,
     rateHz: sweep.rateHz,
     amplitude,
     deconvolve(samples) {
       load(fft, samples);
-      const response = fft.filter(fft.forwardPacked(), spectrum, transfer);
-      return { response, transfer, envelope: toEnvelope(transfer, firstBin, lastBin, zoom, size) };
+      const response = fft.filter(fft.forwardPacked(), spectrum, kept);
+      return { response, envelope: toEnvelope(kept.bins, zoom, size) };
     },
   };
 }
@@ -106,12 +110,9 @@ function load(fft: RealFft, samples: Float32Array | Float64Array): void {
   fft.data.fill(0, samples.length);
 }
 
-/** |X(f)| of a sweep of amplitude 1, in the units of an unscaled DFT. */
-export function toSweepSpectrum(
-  frequencyHz: number,
-  { rateConstantS, rateHz }: SweepInUse,
-): number {
-  return 0.5 * rateHz * Math.sqrt(rateConstantS / frequencyHz);
+/** |X|^2 of a sweep of amplitude 1 at bin 1, in the units of an unscaled DFT: it falls as 1/f. */
+function toPowerAtFirstBin({ rateConstantS, rateHz }: SweepInUse, size: number): number {
+  return 0.25 * rateHz * rateConstantS * size;
 }
 
 /** Amplitude from the energy in the inner part of the sweep, where fades and edge ripple do not reach. */
@@ -121,12 +122,9 @@ function toStimulusAmplitude(spectrum: Float64Array, sweep: SweepInUse, size: nu
   const from = Math.ceil((startHz * span ** 0.3 * size) / rateHz);
   const to = Math.floor((startHz * span ** 0.9 * size) / rateHz);
   let sum = 0;
-  for (let k = from; k <= to; k += 1) {
-    sum +=
-      (spectrum[2 * k]! ** 2 + spectrum[2 * k + 1]! ** 2) /
-      toSweepSpectrum((k * rateHz) / size, sweep) ** 2;
-  }
-  const amplitude = Math.sqrt(sum / Math.max(1, to - from + 1));
+  for (let k = from; k <= to; k += 1)
+    sum += k * (spectrum[2 * k]! ** 2 + spectrum[2 * k + 1]! ** 2);
+  const amplitude = Math.sqrt(sum / Math.max(1, to - from + 1) / toPowerAtFirstBin(sweep, size));
   if (!(amplitude > 1e-6) || to <= from) {
     throw new AnalysisError(
       "stimulus.invalid",
@@ -146,11 +144,11 @@ function invertInPlace(
   const { startHz, stopHz, rateHz } = sweep;
   const from = Math.ceil((0.9 * startHz * size) / rateHz);
   const to = Math.min(size / 2, Math.floor((stopHz * size) / rateHz));
+  const weakest = (WEAKEST_SHARE * amplitude) ** 2 * toPowerAtFirstBin(sweep, size);
   for (let k = from; k <= to; k += 1) {
     const re = spectrum[2 * k]!;
     const im = spectrum[2 * k + 1]!;
-    const weakest = WEAKEST_SHARE * amplitude * toSweepSpectrum((k * rateHz) / size, sweep);
-    const scale = amplitude / Math.max(re * re + im * im, weakest * weakest);
+    const scale = amplitude / Math.max(re * re + im * im, weakest / k);
     spectrum[2 * k] = re * scale;
     spectrum[2 * k + 1] = -im * scale;
   }
@@ -158,20 +156,15 @@ function invertInPlace(
   spectrum.fill(0, 2 * (to + 1));
 }
 
-function toEnvelope(
-  transfer: Float64Array,
-  firstBin: number,
-  lastBin: number,
-  zoom: ComplexFft,
-  size: number,
-): ArrivalEnvelope {
+function toEnvelope(kept: Float64Array, zoom: ComplexFft, size: number): ArrivalEnvelope {
   const points = zoom.size;
   const bins = new Float64Array(2 * points);
-  for (let k = firstBin; k <= lastBin; k += 1) {
+  const count = kept.length / 2;
+  for (let k = 0; k < count; k += 1) {
     // Conjugated, so that the forward transform goes back to lag; a raised cosine keeps the flanks short.
-    const weight = 1 - Math.cos((2 * Math.PI * (k - firstBin + 0.5)) / (lastBin - firstBin + 1));
-    bins[2 * (k - firstBin)] = weight * transfer[2 * k]!;
-    bins[2 * (k - firstBin) + 1] = -weight * transfer[2 * k + 1]!;
+    const weight = 1 - Math.cos((2 * Math.PI * (k + 0.5)) / count);
+    bins[2 * k] = weight * kept[2 * k]!;
+    bins[2 * k + 1] = -weight * kept[2 * k + 1]!;
   }
   const lag = zoom.transform(bins);
   const power = new Float64Array(points);

@@ -38,8 +38,9 @@ describe("estimateDriftPpm", () => {
       noiseRms: 1e-5,
       driftPpm,
     });
-    const { deconvolved, lag } = new SweepFinder(played).find(recording);
-    const estimate = estimateDriftPpm(deconvolved.response, lag, played.sweep, new Plans());
+    const plans = new Plans();
+    const { deconvolved, lag } = new SweepFinder(played, plans).find(recording);
+    const estimate = estimateDriftPpm(deconvolved.response, lag, played.sweep, plans);
     // The cut at the end of the sweep is no minimum phase: a few microseconds of delay, some ppm.
     expect(Math.abs(estimate - driftPpm)).toBeLessThan(15);
   });

@@ -5,7 +5,7 @@
  */
 import type { Plans } from "./cell-power";
 
-const POINTS = 8192;
+const POINTS = 4096;
 const BEFORE_S = 0.01;
 /** Above the bass, whose limiters and ports bend the phase; below what the noise takes. */
 const FROM_HZ = 1000;

@@ -259,8 +259,10 @@ function measurePeak({ samples, fullScale }: Recording): { peakDbfs: number; cli
   for (let n = 0; n < samples.length; n += 1) {
     const size = Math.abs(samples[n]!);
     if (size > peak) peak = size;
-    run = size >= fullScale ? run + 1 : 0;
-    if (run > longest) longest = run;
+    if (size >= fullScale) {
+      run += 1;
+      if (run > longest) longest = run;
+    } else run = 0;
   }
   return { peakDbfs: 20 * Math.log10(peak), clipped: longest >= CLIPPED_SAMPLES || peak > 1 };
 }

@@ -26,6 +26,8 @@ export interface SeriesSource {
 
 export interface MeasureOptions {
   onProgress?: OnProgress;
+  /** Tables of earlier series, to be used again by a process that analyses many. */
+  plans?: Plans;
 }
 
 export const DEFAULT_REFERENCE_BAND_HZ = [500, 2000] as const;
@@ -43,10 +45,9 @@ const FIRST_VALID = Math.SQRT2;
 export async function measureSeries(
   series: Series,
   source: SeriesSource,
-  { onProgress }: MeasureOptions = {},
+  { onProgress, plans = new Plans() }: MeasureOptions = {},
 ): Promise<{ measured: MeasuredSeries; warnings: Warning[] }> {
   requireReference(series.runs);
-  const plans = new Plans();
   const scale = await measureScale(series, (file) => source.readRecording(file, 1), plans);
   const context = await toMeasuringContext(series, source, plans);
   const warnings = [...scale.warnings];
@@ -127,7 +128,7 @@ async function toMeasuringContext(
   const { startHz, stopHz, rateConstantS, rateHz } = played.sweep;
   const room = ambient === undefined ? null : await source.readRecording(ambient.file, 1);
   return {
-    finder: new SweepFinder(played),
+    finder: new SweepFinder(played, plans),
     plans,
     edgeHz: twentyFourthOctaves(startHz, stopHz).edgeHz,
     windows: toOrderWindows(rateConstantS, rateHz),

@@ -16,6 +16,8 @@ export interface NoiseDensity {
 }
 
 const LONGEST_BLOCK_S = 0.35;
+/** So many blocks settle a density to a few tenths of a decibel in the narrowest band; they are spread over the whole. */
+const MOST_BLOCKS = 32;
 const SHORTEST_S = 0.1;
 /** Ambient and silence within this ratio, octave by octave, are the same noise and share their time. */
 const SAME_NOISE_RATIO = 2;
@@ -39,7 +41,8 @@ export function measureNoise(
   );
   const byFrequency = new Float64Array(size / 2 + 1);
   let blocks = 0;
-  for (let from = 0; from + size <= samples.length; from += size / 2, blocks += 1) {
+  const hop = Math.max(size / 2, Math.floor((samples.length - size) / MOST_BLOCKS));
+  for (let from = 0; from + size <= samples.length; from += hop, blocks += 1) {
     for (let n = 0; n < size; n += 1) fft.data[n] = window[n]! * samples[from + n]!;
     const power = plans.power(fft);
     for (let k = 0; k < power.length; k += 1) byFrequency[k]! += power[k]!;

@@ -48,9 +48,7 @@ function toPlayedFile(
     );
   }
   const sweepLength = Math.round(shape.lengthS * shape.rateHz);
-  let peak = 0;
-  for (const x of samples) peak = Math.max(peak, Math.abs(x));
-  const sweepStart = samples.findIndex((x) => Math.abs(x) > START_SHARE * peak);
+  const sweepStart = toFirstAbove(samples, START_SHARE * toPeak(samples));
   // One part in a thousand of the sweep may be missing: fades hide the very ends.
   if (sweepStart < 0 || samples.length - sweepStart < 0.999 * sweepLength) {
     throw new AnalysisError(
@@ -60,4 +58,18 @@ function toPlayedFile(
     );
   }
   return { samples, sweep: { ...shape, ...toFileSweepTiming(shape) }, sweepStart, sweepLength };
+}
+
+function toPeak(samples: Recording["samples"]): number {
+  let peak = 0;
+  for (let n = 0; n < samples.length; n += 1) {
+    const size = Math.abs(samples[n]!);
+    if (size > peak) peak = size;
+  }
+  return peak;
+}
+
+function toFirstAbove(samples: Recording["samples"], size: number): number {
+  for (let n = 0; n < samples.length; n += 1) if (Math.abs(samples[n]!) > size) return n;
+  return -1;
 }

@@ -1,4 +1,5 @@
 /** Finds the sweep, or each sweep of a train, in a recording of any length. */
+import type { Plans } from "./cell-power";
 import { findArrival, requireSweep, type Arrival } from "./arrival";
 import {
   createDeconvolver,
@@ -41,12 +42,16 @@ const STRONG_SHARE = 0.25;
 export class SweepFinder {
   readonly #deconvolvers = new Map<number, Deconvolver>();
 
-  constructor(readonly stimulus: PlayedStimulus) {}
+  constructor(
+    readonly stimulus: PlayedStimulus,
+    readonly plans: Plans,
+  ) {}
 
   deconvolver(recordingLength: number): Deconvolver {
     const { samples, sweep } = this.stimulus;
     const size = toDeconvolutionSize(recordingLength, samples.length);
-    const known = this.#deconvolvers.get(size) ?? createDeconvolver(samples, sweep, size);
+    const known =
+      this.#deconvolvers.get(size) ?? createDeconvolver(samples, sweep, size, this.plans);
     this.#deconvolvers.set(size, known);
     return known;
   }

@@ -35,7 +35,7 @@ export function readWav(
   requireLength(header.frames, file);
   const samples = wanted.map(() => new Float32Array(header.frames));
   const blockBytes = header.width * header.channels;
-  const framesPerRead = Math.max(1, Math.floor(BLOCK_BYTES / blockBytes));
+  const framesPerRead = Math.max(4, 4 * Math.floor(BLOCK_BYTES / blockBytes / 4));
   const decode = toDecoder(header);
   for (let done = 0; done < header.frames; done += framesPerRead) {
     const frames = Math.min(framesPerRead, header.frames - done);
@@ -133,7 +133,24 @@ const decodeInt16: Decode = (bytes, at, step, into) => {
 };
 
 const decodeInt24: Decode = (bytes, at, step, into) => {
-  for (let n = 0, i = at; n < into.length; n += 1, i += step) {
+  // Mono: four samples lie in three words.
+  const packed = step === 3 && (bytes.byteOffset + at) % 4 === 0;
+  const whole = packed ? into.length - (into.length % 4) : 0;
+  const words = new Int32Array(
+    packed ? bytes.buffer : new ArrayBuffer(0),
+    packed ? bytes.byteOffset + at : 0,
+    (whole * 3) / 4,
+  );
+  for (let n = 0, i = 0; n < whole; n += 4, i += 3) {
+    const a = words[i]!;
+    const b = words[i + 1]!;
+    const c = words[i + 2]!;
+    into[n] = (a << 8) * 2 ** -31;
+    into[n + 1] = (((a >>> 16) & 0xff00) | (b << 16)) * 2 ** -31;
+    into[n + 2] = (((b >>> 8) & 0xffff00) | (c << 24)) * 2 ** -31;
+    into[n + 3] = (c & ~0xff) * 2 ** -31;
+  }
+  for (let n = whole, i = at + whole * step; n < into.length; n += 1, i += step) {
     into[n] =
       (((bytes[i] as number) << 8) |
         ((bytes[i + 1] as number) << 16) |

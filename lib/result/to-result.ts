@@ -3,7 +3,7 @@ import type { Assessment } from "../analysis/assess-series";
 import { ENGINE_VERSION } from "../analysis/engine-version";
 import type { MeasuredRun, MeasuredSeries } from "../analysis/types";
 import type { Series } from "../series/series-schema";
-import { resultSchema, type Result, type ResultRun, type Warning } from "./result-schema";
+import type { Result, ResultRun, Warning } from "./result-schema";
 
 /** @param warnings of the measuring part; those of the assessment follow them. */
 export function toResult(
@@ -13,20 +13,20 @@ export function toResult(
   warnings: readonly Warning[],
 ): Result {
   const { bands, shape, headline, programme } = assessment;
-  return resultSchema.parse({
+  return {
     engine: { name: "tidemark", version: ENGINE_VERSION },
     settings: series.settings,
     environment: series.environment,
     distance_m: series.distance_m,
     spl_valid: measured.splValid,
-    grid_Hz: roundFor("grid_Hz", measured.gridHz),
+    grid_Hz: roundFor("grid_Hz", [...measured.gridHz]),
     runs: measured.runs.map((run) => roundFor("runs", toResultRun(run, measured.splValid))),
     bands: roundFor("bands", bands),
     shape: roundFor("shape", shape),
     headline: roundFor("headline", headline),
     programme: roundFor("programme", programme),
     warnings: [...warnings, ...assessment.warnings],
-  });
+  };
 }
 
 function toResultRun(run: MeasuredRun, splValid: boolean): ResultRun {
@@ -70,11 +70,14 @@ const DIGITS = 4;
 const FREQUENCY_DIGITS = 6;
 
 /** Rounds by the unit in the name; NaN and infinities become null. */
-function roundFor(key: string, value: unknown): unknown {
+function roundFor<T>(key: string, value: T): T {
+  return round(key, value) as T;
+}
+
+function round(key: string, value: unknown): unknown {
   if (AS_STATED.has(key)) return value;
   if (typeof value === "number") return roundNumber(key, value);
-  if (value instanceof Float64Array) return Array.from(value, (x) => roundNumber(key, x));
-  if (Array.isArray(value)) return value.map((item: unknown) => roundFor(key, item));
+  if (Array.isArray(value)) return value.map((item: unknown) => round(key, item));
   if (value !== null && typeof value === "object") {
     return Object.fromEntries(
       Object.entries(value).map(([name, item]: [string, unknown]) => [name, roundFor(name, item)]),

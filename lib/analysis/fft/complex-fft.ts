@@ -152,36 +152,95 @@ const radix2: Pass = (x, y, w, points, stride) => {
   }
 };
 
-/** Any odd radix by its definition: only ever the last, short passes. */
-const oddRadix = (radix: number): Pass => {
-  const roots = toTwiddles(radix, radix);
-  return (x, y, w, points, stride) => {
-    const part = points / radix;
-    const s2 = 2 * stride;
-    const span = part * s2;
-    for (let p = 0; p < part; p += 1) {
-      let tr = 1;
-      let ti = 0;
-      for (let q = 0; q < radix; q += 1) {
-        for (let c = 0; c < s2; c += 2) {
-          let sumR = 0;
-          let sumI = 0;
-          for (let m = 0; m < radix; m += 1) {
-            const root = 2 * ((m * q) % radix);
-            const at = p * s2 + m * span + c;
-            sumR += x[at]! * roots[root]! - x[at + 1]! * roots[root + 1]!;
-            sumI += x[at]! * roots[root + 1]! + x[at + 1]! * roots[root]!;
-          }
-          const to = (radix * p + q) * s2 + c;
-          y[to] = sumR * tr - sumI * ti;
-          y[to + 1] = sumR * ti + sumI * tr;
-        }
-        const nextR = tr * w[2 * p]! - ti * w[2 * p + 1]!;
-        ti = tr * w[2 * p + 1]! + ti * w[2 * p]!;
-        tr = nextR;
-      }
+const SIN_60 = Math.sin(Math.PI / 3);
+
+const radix3: Pass = (x, y, w, points, stride) => {
+  const part = points / 3;
+  const s2 = 2 * stride;
+  const span = part * s2;
+  for (let p = 0; p < part; p += 1) {
+    const w1r = w[2 * p]!;
+    const w1i = w[2 * p + 1]!;
+    const w2r = w1r * w1r - w1i * w1i;
+    const w2i = 2 * w1r * w1i;
+    const base = p * s2;
+    let o = 3 * base;
+    for (let i = base; i < base + s2; i += 2, o += 2) {
+      const j = i + span;
+      const k = j + span;
+      const sr = x[j]! + x[k]!;
+      const si = x[j + 1]! + x[k + 1]!;
+      const dr = SIN_60 * (x[j + 1]! - x[k + 1]!);
+      const di = SIN_60 * (x[k]! - x[j]!);
+      const mr = x[i]! - 0.5 * sr;
+      const mi = x[i + 1]! - 0.5 * si;
+      y[o] = x[i]! + sr;
+      y[o + 1] = x[i + 1]! + si;
+      y[o + s2] = (mr + dr) * w1r - (mi + di) * w1i;
+      y[o + s2 + 1] = (mr + dr) * w1i + (mi + di) * w1r;
+      y[o + 2 * s2] = (mr - dr) * w2r - (mi - di) * w2i;
+      y[o + 2 * s2 + 1] = (mr - dr) * w2i + (mi - di) * w2r;
     }
-  };
+  }
 };
 
-const PASSES: Record<number, Pass> = { 2: radix2, 3: oddRadix(3), 4: radix4, 5: oddRadix(5) };
+const COS_72 = Math.cos((2 * Math.PI) / 5);
+const COS_144 = Math.cos((4 * Math.PI) / 5);
+const SIN_72 = Math.sin((2 * Math.PI) / 5);
+const SIN_144 = Math.sin((4 * Math.PI) / 5);
+
+const radix5: Pass = (x, y, w, points, stride) => {
+  const part = points / 5;
+  const s2 = 2 * stride;
+  const span = part * s2;
+  for (let p = 0; p < part; p += 1) {
+    const w1r = w[2 * p]!;
+    const w1i = w[2 * p + 1]!;
+    const w2r = w1r * w1r - w1i * w1i;
+    const w2i = 2 * w1r * w1i;
+    const w3r = w1r * w2r - w1i * w2i;
+    const w3i = w1r * w2i + w1i * w2r;
+    const w4r = w2r * w2r - w2i * w2i;
+    const w4i = 2 * w2r * w2i;
+    const base = p * s2;
+    let o = 5 * base;
+    for (let i = base; i < base + s2; i += 2, o += 2) {
+      const j = i + span;
+      const k = j + span;
+      const l = k + span;
+      const m = l + span;
+      const ar = x[j]! + x[m]!;
+      const ai = x[j + 1]! + x[m + 1]!;
+      const br = x[k]! + x[l]!;
+      const bi = x[k + 1]! + x[l + 1]!;
+      const cr = x[j]! - x[m]!;
+      const ci = x[j + 1]! - x[m + 1]!;
+      const dr = x[k]! - x[l]!;
+      const di = x[k + 1]! - x[l + 1]!;
+      const er = x[i]! + COS_72 * ar + COS_144 * br;
+      const ei = x[i + 1]! + COS_72 * ai + COS_144 * bi;
+      const fr = x[i]! + COS_144 * ar + COS_72 * br;
+      const fi = x[i + 1]! + COS_144 * ai + COS_72 * bi;
+      const gr = SIN_72 * ci + SIN_144 * di;
+      const gi = -SIN_72 * cr - SIN_144 * dr;
+      const hr = SIN_144 * ci - SIN_72 * di;
+      const hi = -SIN_144 * cr + SIN_72 * dr;
+      y[o] = x[i]! + ar + br;
+      y[o + 1] = x[i + 1]! + ai + bi;
+      const o1 = o + s2;
+      const o2 = o1 + s2;
+      const o3 = o2 + s2;
+      const o4 = o3 + s2;
+      y[o1] = (er + gr) * w1r - (ei + gi) * w1i;
+      y[o1 + 1] = (er + gr) * w1i + (ei + gi) * w1r;
+      y[o2] = (fr + hr) * w2r - (fi + hi) * w2i;
+      y[o2 + 1] = (fr + hr) * w2i + (fi + hi) * w2r;
+      y[o3] = (fr - hr) * w3r - (fi - hi) * w3i;
+      y[o3 + 1] = (fr - hr) * w3i + (fi - hi) * w3r;
+      y[o4] = (er - gr) * w4r - (ei - gi) * w4i;
+      y[o4 + 1] = (er - gr) * w4i + (ei - gi) * w4r;
+    }
+  }
+};
+
+const PASSES: Record<number, Pass> = { 2: radix2, 3: radix3, 4: radix4, 5: radix5 };

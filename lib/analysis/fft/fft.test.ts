@@ -76,9 +76,12 @@ describe("planRealFft", () => {
     plan.data.set(samples);
     const flat = Float64Array.from({ length: size + 2 }, (_, i) => (i % 2 ? 0 : 1));
     const product = new Float64Array(size + 2);
-    expect(worst(plan.filter(plan.forwardPacked(), flat, product), samples)).toBeLessThan(
-      1e-13 * size,
-    );
+    expect(
+      worst(
+        plan.filter(plan.forwardPacked(), flat, { first: 0, last: size / 2, bins: product }),
+        samples,
+      ),
+    ).toBeLessThan(1e-13 * size);
     expect(worst(product, direct)).toBeLessThan(1e-12 * size);
   });
 

@@ -9,6 +9,14 @@ export function toFftSize(points: number): number {
   return Math.min(...sizes);
 }
 
+/** A stretch of bins that the caller wants to see on their way. */
+export interface KeptBins {
+  first: number;
+  last: number;
+  /** [2 (last - first + 1)] */
+  bins: Float64Array;
+}
+
 export interface RealFft {
   readonly size: number;
   /** [size] scratch: fill it with samples before forward, with the packed spectrum before inverse. */
@@ -29,10 +37,10 @@ export interface RealFft {
    * Multiplies the packed spectrum by a one-sided transfer function and returns to samples.
    * @param packed from forwardPacked; used as scratch.
    * @param transfer [2 (size/2 + 1)] re, im interleaved.
-   * @param product receives [2 (size/2 + 1)] the product where given.
+   * @param kept receives the product in bins first to last, re and im interleaved, where given.
    * @returns [size] samples, scaled as the inverse of forward. Valid until the next call.
    */
-  filter(packed: Float64Array, transfer: Float64Array, product?: Float64Array): Float64Array;
+  filter(packed: Float64Array, transfer: Float64Array, kept?: KeptBins): Float64Array;
 }
 
 /** @param size even, half of it 2^a * {1, 3, 5, 9, 15}. */
@@ -93,11 +101,12 @@ export function planRealFft(size: number): RealFft {
     return into;
   };
 
-  const filter = (
-    z: Float64Array,
-    transfer: Float64Array,
-    product?: Float64Array,
-  ): Float64Array => {
+  const filter = (z: Float64Array, transfer: Float64Array, kept?: KeptBins): Float64Array => {
+    const keep = (k: number, re: number, im: number): void => {
+      if (kept === undefined || k < kept.first || k > kept.last) return;
+      kept.bins[2 * (k - kept.first)] = re;
+      kept.bins[2 * (k - kept.first) + 1] = im;
+    };
     // One walk over the pairs (k, half - k): unpack, multiply, pack conjugated for the inverse.
     const scale = 1 / size;
     const dcR = (z[0]! + z[1]!) * transfer[0]!;
@@ -121,12 +130,8 @@ export function planRealFft(size: number): RealFft {
       const hai = xar * transfer[a + 1]! + xai * transfer[a]!;
       const hbr = xbr * transfer[b]! - xbi * transfer[b + 1]!;
       const hbi = xbr * transfer[b + 1]! + xbi * transfer[b]!;
-      if (product !== undefined) {
-        product[a] = har;
-        product[a + 1] = hai;
-        product[b] = hbr;
-        product[b + 1] = hbi;
-      }
+      keep(k, har, hai);
+      keep(half - k, hbr, hbi);
       const er = (har + hbr) * scale;
       const ei = (hai - hbi) * scale;
       const dr = (har - hbr) * scale;
@@ -141,12 +146,8 @@ export function planRealFft(size: number): RealFft {
     }
     data[0] = (dcR + topR) * scale;
     data[1] = -(dcR - topR) * scale;
-    if (product !== undefined) {
-      product[0] = dcR;
-      product[1] = 0;
-      product[size] = topR;
-      product[size + 1] = 0;
-    }
+    keep(0, dcR, 0);
+    keep(half, topR, 0);
     const samples = complex.transform(data);
     for (let n = 1; n < size; n += 2) samples[n] = -samples[n]!;
     return samples;
