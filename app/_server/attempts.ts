@@ -32,7 +32,6 @@ export function createAttempts(pool: Pool): Attempts {
       keyPrefix,
       points,
       duration: WINDOW_S,
-      clearExpiredByTimeout: false,
     });
   const byAddress = limiter("address", TRIES_PER_ADDRESS);
   const byIp = limiter("ip", TRIES_PER_IP);
