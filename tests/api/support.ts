@@ -1,0 +1,98 @@
+/** The built product over a database of its own, a lab in it, and calls with a token. */
+import { setTimeout as sleep } from "node:timers/promises";
+import type { z } from "zod";
+import { callApi, type CallInput } from "../../lib/api/client";
+import { createLoudspeaker } from "../../lib/api/loudspeakers";
+import type { Operation } from "../../lib/api/operation";
+import { createSeries, getSeries, type SeriesView } from "../../lib/api/series";
+import type { PlanInput } from "../../lib/series/plan-schema";
+import { createTestDatabase } from "../support/database";
+import { makeTestLab, openLabBench, type LabBench, type TestMember } from "../support/lab-bench";
+import { startTestProduct, type TestProduct } from "../support/product";
+import { getTestSeries } from "../support/test-series";
+
+export interface ApiBench extends LabBench {
+  product: TestProduct;
+  labId: string;
+  /** Holds every role. */
+  all: TestMember;
+  stop: () => Promise<void>;
+}
+
+export async function openApiBench(env: Record<string, string> = {}): Promise<ApiBench> {
+  const database = await createTestDatabase();
+  const bench = openLabBench(database);
+  const { labId, all } = await makeTestLab(bench, "own");
+  const product = await startTestProduct(database, env);
+  return {
+    ...bench,
+    product,
+    labId,
+    all,
+    stop: async () => {
+      await product.stop();
+      await bench.close();
+      await database.drop();
+    },
+  };
+}
+
+/** Calls as the member with every role, unless another token is named. */
+export function call<
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  A extends z.ZodType,
+>(
+  bench: ApiBench,
+  operation: Operation<P, Q, B, A>,
+  input: CallInput<z.input<P>, z.input<Q>, z.input<B>> = {},
+  token: string = bench.all.token,
+): Promise<z.output<A>> {
+  return callApi(operation, input, { baseUrl: bench.product.url, token });
+}
+
+/** A loudspeaker with a planned series, ready for the files of getTestSeries. */
+export async function planTestSeries(
+  bench: ApiBench,
+  plan: PlanInput = getTestSeries().plan,
+): Promise<SeriesView> {
+  const loudspeaker = await call(bench, createLoudspeaker, { body: getTestSeries().loudspeaker });
+  return call(bench, createSeries, { body: { loudspeaker_id: loudspeaker.id, plan } });
+}
+
+export const target = (bench: ApiBench) => ({
+  url: bench.product.url,
+  token: bench.all.token,
+});
+
+/** Asks again until the answer is as wanted; the product's output is shown where it never is. */
+export async function until<T>(
+  bench: ApiBench,
+  ask: () => Promise<T>,
+  wanted: (answer: T) => boolean,
+  withinMs = 45_000,
+): Promise<T> {
+  const end = Date.now() + withinMs;
+  for (;;) {
+    const answer = await ask();
+    if (wanted(answer)) return answer;
+    if (Date.now() > end) {
+      throw new Error(
+        `never came: ${JSON.stringify(answer).slice(0, 2000)}\n${bench.product.output().slice(-4000)}`,
+      );
+    }
+    await sleep(50);
+  }
+}
+
+export const seriesInState = (
+  bench: ApiBench,
+  seriesId: string,
+  ...states: SeriesView["state"][]
+) =>
+  until(
+    bench,
+    () => call(bench, getSeries, { params: { seriesId } }),
+    (series) => states.includes(series.state),
+  );
