@@ -5,8 +5,8 @@ import { toBandColumns, type BandDecision } from "@/lib/charts/band-columns";
 import { sayFinding } from "@/lib/charts/band-words";
 import { toCompressionMap, toMapRows } from "@/lib/charts/compression-map";
 import { formatFrequency } from "@/lib/charts/format";
-import { toWall, WALL_LAYOUT } from "@/lib/charts/wall";
-import { WALL_KEY_WIDTH } from "@/lib/charts/wall-key";
+import { toWall } from "@/lib/charts/wall";
+import { toWallPitch } from "@/lib/charts/wall-pitch";
 import type { Result } from "@/lib/result/result-schema";
 import type { Criterion } from "@/lib/series/series-schema";
 import { CauseKey } from "./cause-key";
@@ -37,19 +37,6 @@ export function OutputLimitFigure(props: OutputLimitFigureProps) {
   );
 }
 
-const KEY_FROM_PX = 980;
-const LEAST_PITCH = 28.4;
-const MOST_PITCH = 44;
-const RIGHT_MARGIN = 18;
-
-/** Pitch that fills the width; where even the least does not fit, the figure scrolls in its frame. */
-export function toPitch(width: number, bands: number): { pitch: number; keyed: boolean } {
-  const keyed = width >= KEY_FROM_PX;
-  const room = width - WALL_LAYOUT.staffWidth - (keyed ? WALL_KEY_WIDTH : RIGHT_MARGIN);
-  const pitch = Math.floor((room / Math.max(bands, 1)) * 10) / 10;
-  return { pitch: Math.min(MOST_PITCH, Math.max(LEAST_PITCH, pitch)), keyed };
-}
-
 function Figure({
   result,
   criterion,
@@ -61,7 +48,7 @@ function Figure({
 }: OutputLimitFigureProps) {
   const [ref, width] = useWidth<HTMLDivElement>(1013);
   const { hoveredHz } = useCrosshair();
-  const { pitch, keyed } = toPitch(width, result.bands.length);
+  const { pitch, keyed } = toWallPitch(width, result.bands.length);
   const withDecisions = decisions !== undefined;
   const columns = useMemo(
     () => toBandColumns({ result, criterion, ...(decisions === undefined ? {} : { decisions }) }),
