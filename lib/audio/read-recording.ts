@@ -1,6 +1,7 @@
 /** A recording of any kind that is read, as the engine takes it. */
 import type { Recording } from "../analysis/types";
 import type { ByteSource } from "./byte-source";
+import { isFlac, readFlac } from "./read-flac";
 import { readWav, type DecodedAudio } from "./read-wav";
 
 export interface ReadRecordingOptions {
@@ -39,5 +40,5 @@ async function decode(
   file: string,
   wanted: readonly number[],
 ): Promise<DecodedAudio> {
-  return readWav(source, file, wanted);
+  return isFlac(source) ? readFlac(source, file, wanted) : readWav(source, file, wanted);
 }
