@@ -14,7 +14,7 @@ export interface DatabaseOptions {
   applicationName?: string;
   /** Role to take right after connecting, for migrations. */
   role?: string;
-  /** Told when an idle connection breaks; the pool replaces it by itself. */
+  /** Told when a connection breaks; the pool replaces it by itself. */
   onIdleError?: (error: Error) => void;
 }
 
@@ -42,7 +42,10 @@ export function createPool(options: DatabaseOptions): pg.Pool {
     ...(options.role === undefined ? {} : { options: `-c role=${options.role}` }),
     types,
   });
-  // Without a listener a restart of PostgreSQL would end the process.
-  pool.on("error", options.onIdleError ?? (() => undefined));
+  const onError = options.onIdleError ?? (() => undefined);
+  // Without listeners a restart of PostgreSQL would end the process: the pool's hears of idle
+  // connections, the client's of those between two statements of a transaction.
+  pool.on("error", onError);
+  pool.on("connect", (client) => client.on("error", onError));
   return pool;
 }

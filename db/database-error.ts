@@ -27,7 +27,7 @@ export function toDatabaseError(error: unknown): unknown {
       { cause: error },
     );
   }
-  if ((code !== undefined && UNREACHABLE.has(code)) || isPoolTimeout(error)) {
+  if ((code !== undefined && UNREACHABLE.has(code)) || isLostConnection(error)) {
     return new AppError(
       "database.unavailable",
       "The database cannot be reached at the moment. Try again in a minute; nothing was changed.",
@@ -44,8 +44,10 @@ export function isUniqueViolation(error: unknown, constraint?: string): boolean 
   return constraint === undefined || textOf(error, "constraint") === constraint;
 }
 
-const isPoolTimeout = (error: Error): boolean =>
-  /^(timeout exceeded when trying to connect|Connection terminated)/.test(error.message);
+const isLostConnection = (error: Error): boolean =>
+  /^(timeout exceeded when trying to connect|Connection terminated|Client has encountered a connection error)/.test(
+    error.message,
+  );
 
 /** A field that pg or Node puts on its errors. */
 function textOf(error: Error, field: "code" | "constraint"): string | undefined {
