@@ -30,7 +30,8 @@ export default defineConfig({
           include: ["tests/{db,api,workers,e2e,setup}/**/*.test.ts"],
           globalSetup: ["tests/support/global-setup.ts"],
           testTimeout: 60_000,
-          hookTimeout: 120_000,
+          // The first suite that needs the product builds it, unless `npm test` did before.
+          hookTimeout: 300_000,
           maxWorkers: 2,
           sequence: { groupOrder: 2 },
         },

@@ -27,15 +27,19 @@ const SOURCE_FILES = [
  * @param signal ends the build early
  * @throws SetUpError with the compiler's last lines
  */
-export async function ensureBuild(signal?: AbortSignal): Promise<void> {
-  const release = await waitForLock(join(buildDir, "lock"), signal);
-  try {
-    for (const bundle of listBundles()) {
-      if (await ensureBundle(bundle)) process.stderr.write(`Built ${bundle.name}.\n`);
-    }
+export function ensureBuild(signal?: AbortSignal): Promise<void> {
+  return withLock(signal, async () => {
+    await bundleAll();
     await ensureWebBuild(signal);
-  } finally {
-    release();
+  });
+}
+
+/** The bundled programs alone, as ensureBuild makes them. */
+export const ensureBundles = (): Promise<void> => withLock(undefined, bundleAll);
+
+async function bundleAll(): Promise<void> {
+  for (const bundle of listBundles()) {
+    if (await ensureBundle(bundle)) process.stderr.write(`Built ${bundle.name}.\n`);
   }
 }
 
@@ -82,11 +86,19 @@ function listFiles(folder: string): string[] {
     .map((entry) => join(entry.parentPath, entry.name).slice(cloneDir.length + 1));
 }
 
-async function waitForLock(path: string, signal: AbortSignal | undefined): Promise<() => void> {
+async function withLock(
+  signal: AbortSignal | undefined,
+  build: () => Promise<void>,
+): Promise<void> {
   mkdirSync(buildDir, { recursive: true });
-  for (;;) {
-    const release = takeLock(path);
-    if (typeof release === "function") return release;
+  let release = takeLock(join(buildDir, "lock"));
+  while (typeof release !== "function") {
     await sleep(200, undefined, signal === undefined ? {} : { signal });
+    release = takeLock(join(buildDir, "lock"));
+  }
+  try {
+    await build();
+  } finally {
+    release();
   }
 }

@@ -10,7 +10,7 @@ let clone: TestClone;
 let product: ProductProcess | null = null;
 
 beforeAll(async () => {
-  clone = await createTestClone("start");
+  clone = await createTestClone("start", "everything");
 });
 afterEach(async () => {
   await product?.stop("SIGTERM");

@@ -8,7 +8,7 @@ import { join } from "node:path";
 import { cloneDir } from "../../scripts/setup/bootstrap.mjs";
 import { removeInstallation } from "../../scripts/setup/cluster";
 import { findFreePort } from "../../scripts/setup/ports";
-import { ensureBuild } from "../../scripts/setup/web-build";
+import { ensureBuild, ensureBundles } from "../../scripts/setup/web-build";
 
 export interface TestClone {
   dir: string;
@@ -22,9 +22,15 @@ export interface TestClone {
 
 const LEFT_OUT = new Set(["node_modules", ".next", "build", ".tidemark", ".git"]);
 
-/** @param name tells the copies of one run apart */
-export async function createTestClone(name: string): Promise<TestClone> {
-  await ensureBuild();
+/**
+ * @param name tells the copies of one run apart
+ * @param build what must stand in it; the pages take far longer than the bundled programs
+ */
+export async function createTestClone(
+  name: string,
+  build: "everything" | "bundles",
+): Promise<TestClone> {
+  await (build === "everything" ? ensureBuild() : ensureBundles());
   const dir = join(cloneDir, ".tidemark", "test", `clone-${name}-${process.pid}`);
   rmSync(dir, { recursive: true, force: true });
   mkdirSync(dir, { recursive: true });
