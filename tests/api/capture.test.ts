@@ -47,7 +47,8 @@ describe("from plan to result by script", () => {
 
     const { runs, captured, planned, slots } = await call(bench, listRuns, { params });
     expect(captured).toBe(planned);
-    expect(runs.map((run) => run.slot).sort()).toEqual(files.map((file) => file.slot).sort());
+    expect(new Set(runs.map((run) => run.slot))).toEqual(new Set(files.map((file) => file.slot)));
+    expect(runs).toHaveLength(files.length);
     expect(new Set(runs.map((run) => run.state))).toEqual(new Set(["passed"]));
     expect(slots.every((slot) => slot.open)).toBe(true);
 
