@@ -1,0 +1,11 @@
+"use client";
+
+import { Button } from "../parts/button";
+
+export function PrintButton() {
+  return (
+    <Button tone="main" onClick={() => window.print()}>
+      Print
+    </Button>
+  );
+}
