@@ -75,7 +75,9 @@ export function CheckListSheet({ series, rule }: CheckListSheetProps) {
               <td className="figures border-t border-rule py-1.5 pr-3 text-right text-[13px]">
                 {run.stimulusPeakDbfs === null ? "" : formatNumber(run.stimulusPeakDbfs)}
               </td>
-              <td className="w-1/4 border-t border-rule py-1.5" />
+              <td className="w-1/4 border-t border-rule py-1.5">
+                <span className="sr-only">to be written</span>
+              </td>
             </tr>
           ))}
         </tbody>

@@ -4,7 +4,7 @@ import { useMutation } from "@tanstack/react-query";
 import { useFormContext, useWatch } from "react-hook-form";
 import { callApi } from "@/lib/api/client";
 import { sendMicrophoneFile } from "@/lib/api/microphones";
-import { formatFrequency } from "@/lib/charts/format";
+import { formatFrequency, formatSignedDb } from "@/lib/charts/format";
 import { Button } from "../parts/button";
 import { Select } from "../parts/field";
 import { FileChoice } from "./file-choice";
@@ -66,7 +66,8 @@ export function MicrophoneField() {
       {send.isSuccess && microphone !== null && (
         <p className="mt-1 text-hint text-ink-2">
           {send.data.points} points from {formatFrequency(send.data.from_Hz)} to{" "}
-          {formatFrequency(send.data.to_Hz)}.
+          {formatFrequency(send.data.to_Hz)}, {formatSignedDb(send.data.lowest_dB)} to{" "}
+          {formatSignedDb(send.data.highest_dB)}.
         </p>
       )}
     </div>

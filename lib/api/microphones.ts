@@ -10,6 +10,8 @@ export const microphoneFileSchema = z.object({
   points: z.number().int(),
   from_Hz: z.number(),
   to_Hz: z.number(),
+  lowest_dB: z.number(),
+  highest_dB: z.number(),
 });
 export type MicrophoneFile = z.infer<typeof microphoneFileSchema>;
 
