@@ -44,7 +44,7 @@ export function SegmentedControl<Value extends string>({
       <legend
         className={joinClasses(
           "figures text-label text-ink-2",
-          hideLegend ? "sr-only" : "float-left",
+          hideLegend ? "sr-only" : wide ? "mb-[5px]" : "float-left",
         )}
       >
         {legend}

@@ -3,7 +3,13 @@
 import { useFieldArray, useFormContext } from "react-hook-form";
 import { Button } from "../parts/button";
 import { FormSection } from "../parts/section";
-import { NumberField, SectionHint, useFault } from "./form-fields";
+import {
+  LABEL_FOR_READERS,
+  LABEL_FROM_SM,
+  NumberField,
+  SectionHint,
+  useFault,
+} from "./form-fields";
 import type { PlanFormInput } from "./plan-form-schema";
 
 const MOST = 12;
@@ -17,23 +23,25 @@ export function CriteriaSection() {
     <FormSection title="Criteria">
       <ul aria-label="Criteria" className="grid gap-x-6 sm:grid-cols-2">
         {fields.map((field, at) => (
-          <li key={field.id} className="flex items-start gap-3 pb-3">
+          <li key={field.id} className="flex items-start gap-3 pb-2">
             <NumberField
               optional
+              size="normal"
               name={`plan.criteria.${at}.thd_percent`}
               label="THD, %"
-              className="w-24"
+              className={`w-24 ${at > 1 ? LABEL_FOR_READERS : at === 1 ? LABEL_FROM_SM : ""}`}
             />
             <NumberField
               optional
+              size="normal"
               name={`plan.criteria.${at}.compression_dB`}
               label="compression, dB"
-              className="w-32"
+              className={`w-32 ${at > 1 ? LABEL_FOR_READERS : at === 1 ? LABEL_FROM_SM : ""}`}
             />
             <Button
               tone="quiet"
               size="small"
-              className="mt-[28px]"
+              className={at > 1 ? "mt-1" : at === 1 ? "mt-[25px] max-sm:mt-1" : "mt-[25px]"}
               aria-label={`Remove criterion ${at + 1}`}
               disabled={fields.length <= 1}
               onClick={() => remove(at)}
@@ -49,7 +57,10 @@ export function CriteriaSection() {
         </p>
       )}
       {fields.length < MOST && (
-        <Button size="small" onClick={() => append({})}>
+        <Button
+          size="small"
+          onClick={() => append({ thd_percent: undefined, compression_dB: undefined })}
+        >
           Add a criterion
         </Button>
       )}

@@ -5,10 +5,16 @@ import { get, useFormContext, type FieldPath } from "react-hook-form";
 import { Field, Select, TextInput } from "../parts/field";
 import { parseNumber, type PlanFormInput } from "./plan-form-schema";
 
+/** In a list the first row carries the labels for the eye; the others keep theirs for readers. */
+export const LABEL_FOR_READERS = "[&>div:first-child]:sr-only";
+export const LABEL_FROM_SM = "max-sm:[&>div:first-child]:sr-only";
+
 type PlanPath = FieldPath<PlanFormInput>;
 
 interface FormFieldProps {
   name: PlanPath;
+  /** normal: in the rows of a list. */
+  size?: "normal" | "form";
   label: ReactNode;
   hint?: ReactNode;
   className?: string;
@@ -42,6 +48,7 @@ export function TextField({
           <TextInput
             {...control}
             figures={figures}
+            size={field.size}
             autoComplete="off"
             list={suggestions === undefined ? undefined : listId}
             {...register(field.name)}
@@ -76,6 +83,7 @@ export function NumberField({
         <TextInput
           {...control}
           figures
+          size={field.size}
           inputMode="decimal"
           autoComplete="off"
           {...register(field.name, { setValueAs: optional ? parseOptionalNumber : parseNumber })}

@@ -5,7 +5,7 @@ import { planSchema } from "@/lib/series/plan-schema";
 import { Button } from "../parts/button";
 import { Checkbox } from "../parts/checkbox";
 import { FormSection } from "../parts/section";
-import { NumberField, SectionHint, useFault } from "./form-fields";
+import { LABEL_FOR_READERS, NumberField, SectionHint, useFault } from "./form-fields";
 import { LadderPicture } from "./ladder-picture";
 import type { PlanFormInput } from "./plan-form-schema";
 import { suggestLevel, usualLevels, withLongTermRun, type PlannedLevel } from "./plan-levels";
@@ -45,17 +45,30 @@ export function LevelsSection() {
         {fields.map((field, at) => (
           <li
             key={field.id}
-            className="flex flex-wrap items-start gap-x-4 gap-y-1 border-t border-rule py-2"
+            className="flex flex-wrap items-start gap-x-4 gap-y-1 border-t border-rule py-1.5"
           >
-            <NumberField name={`plan.levels.${at}.level_dB`} label="level, dB" className="w-24" />
-            <NumberField name={`plan.levels.${at}.repeats`} label="repeats" className="w-20" />
-            <Checkbox className="mt-[26px] min-h-11" {...register(`plan.levels.${at}.long_term`)}>
+            <NumberField
+              size="normal"
+              name={`plan.levels.${at}.level_dB`}
+              label="level, dB"
+              className={`w-24 ${at === 0 ? "" : LABEL_FOR_READERS}`}
+            />
+            <NumberField
+              size="normal"
+              name={`plan.levels.${at}.repeats`}
+              label="repeats"
+              className={`w-20 ${at === 0 ? "" : LABEL_FOR_READERS}`}
+            />
+            <Checkbox
+              className={`min-h-9 ${at === 0 ? "mt-[21px]" : ""}`}
+              {...register(`plan.levels.${at}.long_term`)}
+            >
               long-term run
             </Checkbox>
             <Button
               tone="quiet"
               size="small"
-              className="mt-[28px] ml-auto"
+              className={`ml-auto ${at === 0 ? "mt-[25px]" : "mt-[3px]"}`}
               aria-label={`Remove level ${at + 1}`}
               disabled={fields.length <= 2}
               onClick={() => remove(at)}

@@ -48,9 +48,18 @@ function toValues(series: SeriesView | null, picked: Loudspeaker | null = null):
   return {
     loudspeakerId: loudspeaker?.id ?? NEW_LOUDSPEAKER,
     loudspeaker: toLoudspeakerValues(loudspeaker ?? undefined),
-    plan: series?.plan ?? planSchema.parse({}),
+    plan: toPlanValues(series?.plan ?? planSchema.parse({})),
   };
 }
+
+/** Both fields of a criterion are always there, filled or not: else a fresh form counts as changed. */
+const toPlanValues = (plan: Plan): PlanFormInput["plan"] => ({
+  ...plan,
+  criteria: plan.criteria.map(({ thd_percent, compression_dB }) => ({
+    thd_percent,
+    compression_dB,
+  })),
+});
 
 type Refusal =
   | { kind: "conflict"; theirs: SeriesView; values: PlanFormOutput; toRuns: boolean }

@@ -22,12 +22,14 @@ export function VariantRows() {
               className="flex flex-wrap items-start gap-x-4 gap-y-1 border-t border-rule py-2"
             >
               <TextField
+                size="normal"
                 name={`plan.variants.${at}.text`}
                 label="what differs"
                 className="min-w-52 flex-1"
                 suggestions={["port blocked", "grille on", "other preset"]}
               />
               <NumberField
+                size="normal"
                 name={`plan.variants.${at}.level_dB`}
                 label="level, dB"
                 className="w-24"
@@ -35,7 +37,7 @@ export function VariantRows() {
               <Button
                 tone="quiet"
                 size="small"
-                className="mt-[28px]"
+                className="mt-[25px]"
                 aria-label={`Remove variant run ${at + 1}`}
                 onClick={() => remove(at)}
               >

@@ -29,7 +29,7 @@ export function RowFrame({ dim, flush, children }: RowFrameProps) {
   );
 }
 
-const CELL = "px-[9px] py-[7px] align-middle whitespace-nowrap max-md:p-0";
+const CELL = "px-[9px] py-[7px] align-middle text-figure whitespace-nowrap max-md:p-0";
 
 export function Cell({ children, className }: { children: ReactNode; className?: string }) {
   return <td className={joinClasses(CELL, className)}>{children}</td>;
@@ -83,7 +83,7 @@ export function FigureCells({ run }: { run: RunView | null }) {
 
 export function VerdictCell({ verdict }: { verdict: VerdictWords }) {
   return (
-    <Cell className="max-w-72 whitespace-normal! max-md:col-span-2 max-md:mt-1">
+    <Cell className="max-w-72 text-body whitespace-normal! max-md:col-span-2 max-md:mt-1">
       <Verdict kind={verdict.kind} note={verdict.note ?? undefined}>
         {verdict.words}
       </Verdict>

@@ -4,6 +4,7 @@ import { useEffect, useState } from "react";
 import type { Criterion } from "@/lib/series/series-schema";
 import { SERIES_STATES, type SeriesState } from "@/lib/series/vocabulary";
 import { Button } from "../parts/button";
+import { Checkbox } from "../parts/checkbox";
 import { Select, TextInput } from "../parts/field";
 import { SegmentedControl } from "../parts/segmented-control";
 import type { ListView } from "./list-address";
@@ -57,15 +58,13 @@ export function SeriesFilters({ view, byState, criteria, onChange, onCsv }: Seri
         </Select>
       </label>
       <span className="flex-1" />
-      <label className="inline-flex min-h-9 items-center gap-2 text-small text-ink-2 max-md:min-h-11">
-        <input
-          type="checkbox"
-          className="size-4 accent-ink"
-          checked={view.archived === "yes"}
-          onChange={(event) => onChange({ archived: event.target.checked ? "yes" : "no", page: 1 })}
-        />
+      <Checkbox
+        className="text-small text-ink-2"
+        checked={view.archived === "yes"}
+        onChange={(event) => onChange({ archived: event.target.checked ? "yes" : "no", page: 1 })}
+      >
         archived
-      </label>
+      </Checkbox>
       {onCsv !== undefined && (
         <Button tone="quiet" size="small" onClick={onCsv}>
           CSV
