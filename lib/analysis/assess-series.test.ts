@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { gainRider, overload } from "@/tests/support/devices";
+import { gainRider, overload } from "@/tests/support/static-devices";
 import { measuredSeries, plainRuns } from "@/tests/support/measured-series";
 import { seededRandom } from "@/tests/support/seeded-random";
 import type { AppError } from "../errors/app-error";

@@ -71,8 +71,10 @@ function toRun(
   const { device } = plan;
   const kind = run.kind ?? "short-term";
   const driveDb = run.playedDb ?? run.levelDb;
-  const levelOf = (b: number): number =>
-    (device.gainDb?.(b) ?? 0) + driveDb - device.lossDb(b, driveDb, run);
+  const levels = bands.map(
+    (_, b) => (device.gainDb?.(b) ?? 0) + driveDb - device.lossDb(b, driveDb, run),
+  );
+  const levelOf = (b: number): number => levels[b] ?? Number.NaN;
   const firstHz = bands[0]?.exactHz ?? 40;
   return {
     file:

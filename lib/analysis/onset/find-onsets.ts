@@ -40,12 +40,14 @@ export interface BandOnset {
 /**
  * @param groups plain short-term levels, ascending; the first is the reference.
  * @param steps readings of the same groups.
+ * @param plan tables of the groups' drives; made here where left out. One plan serves any number of series.
  * @returns [bands]
  */
 export function findOnsets(
   groups: readonly LevelGroup[],
   steps: readonly StepReading[],
   bands: number,
+  plan?: OnsetPlan,
 ): BandOnset[] {
   const drafts = Array.from({ length: bands }, (_, b) => draftBand(groups, steps, b));
   inferOverload(drafts);
@@ -54,12 +56,12 @@ export function findOnsets(
   );
   if (groups.length < 2 || fitted.length === 0)
     return drafts.map((draft) => conclude(draft, groups));
-  const plan = planOnset(groups.map(({ driveDb }) => driveDb));
+  const tables = plan ?? planOnset(groups.map(({ driveDb }) => driveDb));
   const likelihoods = drafts.map((draft) =>
-    fitted.includes(draft) ? likelihoodOf(plan, draft) : null,
+    fitted.includes(draft) ? likelihoodOf(tables, draft) : null,
   );
   const pooled = poolShapes(
-    plan,
+    tables,
     likelihoods.map((likelihood, b) => (drafts[b]?.overload === "no overload" ? likelihood : null)),
   );
   drafts.forEach((draft, b) => {
@@ -67,7 +69,7 @@ export function findOnsets(
     if (likelihood)
       draft.posterior = computePosterior(
         likelihood,
-        priorOf(plan, draft.overload, pooled[b] ?? null),
+        priorOf(tables, draft.overload, pooled[b] ?? null),
       );
   });
   return drafts.map((draft) => conclude(draft, groups));

@@ -72,3 +72,61 @@ export const DEVICE_CLASSES = {
   cubic: (random) => overload("cubic", random.uniform(82, 102)),
 } as const satisfies Record<string, (random: SeededRandom) => StaticDevice>;
 export type DeviceClass = keyof typeof DEVICE_CLASSES;
+
+/** Bands of a loudspeaker: the law belongs to the device, its threshold moves with the response. */
+export const LOUDSPEAKERS = {
+  "hard limiter": (random) => {
+    const { thetaDb, slope } = threshold(random, 86, 98, 0, 0.1);
+    return (b) => gainRider(thetaDb(b), 0, slope);
+  },
+  "limiter with a knee": (random) => {
+    const { thetaDb, slope } = threshold(random, 86, 98, 0, 0.1);
+    const kneeDb = random.uniform(4, 14);
+    return (b) => gainRider(thetaDb(b), kneeDb, slope);
+  },
+  compressor: (random) => {
+    const { thetaDb, slope } = threshold(random, 84, 96, 0.2, 0.5);
+    const kneeDb = random.uniform(0, 6);
+    return (b) => gainRider(thetaDb(b), kneeDb, slope);
+  },
+  "bass limiter with a crossover": (random) => {
+    const thetaDb = random.uniform(84, 96);
+    const slope = random.uniform(0, 0.1);
+    const crossover = random.uniform(5, 9);
+    return (b) => {
+      const share = 1 / (1 + 10 ** ((b - crossover) * 0.35));
+      return share > 0.97
+        ? gainRider(thetaDb, 0, slope)
+        : twoPaths(thetaDb, Math.max(share, 0.001));
+    };
+  },
+  port: (random) => {
+    const tuned = random.uniform(1, 4);
+    const slope = random.uniform(0.5, 0.8);
+    const kneeDb = random.uniform(8, 20);
+    const thetaDb = random.uniform(84, 95);
+    return (b) => gainRider(thetaDb + 1.2 * (b - tuned) ** 2, kneeDb, slope);
+  },
+  "bass that clips": (random) => {
+    const limitDb = random.uniform(84, 98);
+    return (b) => overload("hard clip", limitDb + 1.5 * b);
+  },
+  "bass that saturates": (random) => {
+    const limitDb = random.uniform(86, 100);
+    return (b) => overload("tanh", limitDb + 1.5 * b);
+  },
+} as const satisfies Record<string, (random: SeededRandom) => (b: number) => StaticDevice>;
+
+function threshold(
+  random: SeededRandom,
+  lowDb: number,
+  highDb: number,
+  lowSlope: number,
+  highSlope: number,
+): { thetaDb: (b: number) => number; slope: number } {
+  const middleDb = random.uniform(lowDb, highDb);
+  const slope = random.uniform(lowSlope, highSlope);
+  const swingDb = random.uniform(0, 3);
+  const phase = random.uniform(0, 6);
+  return { thetaDb: (b) => middleDb + swingDb * Math.sin(b / 4 + phase), slope };
+}
