@@ -10,6 +10,10 @@ describe("peekAudio", () => {
     expect(() => peekAudio(head, "76.wav")).not.toThrow();
   });
 
+  it("lets FLAC through", () => {
+    expect(() => peekAudio(text("fLaC\0\0\0\x22\x10\0\x10\0"), "76.flac")).not.toThrow();
+  });
+
   it.each([
     ["text", text("Level 76 dB\n"), "audio.not-audio"],
     ["a picture", text("\x89PNG\r\n\x1A\n\0\0\0\r"), "audio.not-audio"],

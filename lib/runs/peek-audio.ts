@@ -1,5 +1,6 @@
 /** A look at the first bytes of an upload, so that a film or a text is refused at once. */
 import { toByteSource } from "../audio/byte-source";
+import { isFlac } from "../audio/read-flac";
 import { parseWavHeader } from "../audio/wav-header";
 import { FileError } from "../errors/app-error";
 
@@ -12,6 +13,7 @@ export const PEEK_BYTES = 12;
  *   is whole is seen when it is.
  */
 export function peekAudio(head: Uint8Array, fileName: string): void {
+  if (isFlac(toByteSource(head))) return;
   try {
     parseWavHeader(toByteSource(head), fileName);
   } catch (error) {

@@ -1,0 +1,43 @@
+import Ajv2020 from "ajv/dist/2020";
+import addFormats from "ajv-formats";
+import { describe, expect, it } from "vitest";
+import { OPERATIONS } from "./operations";
+import { toAnswerSchema, toOpenApi } from "./openapi";
+
+const document = toOpenApi("https://tidemark.example");
+
+describe("the OpenAPI document", () => {
+  it("is plain JSON and names every operation once", () => {
+    expect(JSON.parse(JSON.stringify(document))).toEqual(document);
+    const ids = OPERATIONS.map((operation) => operation.id);
+    expect(new Set(ids).size).toBe(ids.length);
+    const text = JSON.stringify(document);
+    for (const id of ids) expect(text).toContain(`"operationId":"${id}"`);
+  });
+
+  it("names every parameter of every path", () => {
+    for (const { id, path, params } of OPERATIONS) {
+      const named = [...path.matchAll(/\{(\w+)\}/g)].map((found) => found[1]);
+      const shape: unknown = params === undefined ? {} : Reflect.get(params, "shape");
+      expect([id, Object.keys(shape ?? {})]).toEqual([id, named]);
+    }
+  });
+
+  it("has answers that a validator takes", () => {
+    const ajv = addFormats(new Ajv2020({ strict: false }));
+    for (const operation of OPERATIONS) {
+      const schema = toAnswerSchema(operation);
+      expect([operation.id, schema === null || ajv.validateSchema(schema)]).toEqual([
+        operation.id,
+        true,
+      ]);
+    }
+  });
+
+  it("refuses an answer that lacks what it promises", () => {
+    const operation = OPERATIONS.find((one) => one.id === "getLoudspeaker");
+    const schema = operation === undefined ? null : toAnswerSchema(operation);
+    const validate = addFormats(new Ajv2020({ strict: false })).compile(schema ?? {});
+    expect(validate({ id: "x" })).toBe(false);
+  });
+});

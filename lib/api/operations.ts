@@ -1,0 +1,27 @@
+/** Every operation of the API, in the order of the document. */
+import { accountOperations } from "./account";
+import { analysisOperations } from "./analyses";
+import { getHealth } from "./health";
+import { labOperations } from "./labs";
+import { loudspeakerOperations } from "./loudspeakers";
+import { memberOperations } from "./members";
+import { microphoneOperations } from "./microphones";
+import type { Operation } from "./operation";
+import { runOperations } from "./runs";
+import { seriesOperations } from "./series";
+import { sessionOperations } from "./session";
+import { tokenOperations } from "./tokens";
+
+export const OPERATION_GROUPS: Readonly<Record<string, readonly Operation[]>> = {
+  Loudspeakers: loudspeakerOperations,
+  Series: [...seriesOperations, ...microphoneOperations],
+  Recordings: runOperations,
+  Analyses: analysisOperations,
+  Account: [...sessionOperations, ...accountOperations],
+  Members: memberOperations,
+  Tokens: tokenOperations,
+  Lab: labOperations,
+  Service: [getHealth],
+};
+
+export const OPERATIONS: readonly Operation[] = Object.values(OPERATION_GROUPS).flat();
