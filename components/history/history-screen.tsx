@@ -1,7 +1,7 @@
 "use client";
 
 import { useQuery } from "@tanstack/react-query";
-import { useLabSession } from "../frame/lab-session";
+import { useLabZone } from "../frame/lab-session";
 import { Button } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
 import { EmptyState, LoadingState } from "../parts/states";
@@ -13,7 +13,7 @@ import { toHistoryDays, toWhoWords } from "./history-words";
 /** Who did what, when and why: newest first. */
 export function HistoryScreen({ seriesId, mayCapture }: { seriesId: string; mayCapture: boolean }) {
   useSeriesEvents(seriesId);
-  const { lab } = useLabSession();
+  const timeZone = useLabZone();
   const series = useQuery(seriesQuery(seriesId));
   const history = useQuery(seriesHistoryQuery(seriesId));
   return (
@@ -34,7 +34,7 @@ export function HistoryScreen({ seriesId, mayCapture }: { seriesId: string; mayC
           Every step of the series will stand here, with its reason.
         </EmptyState>
       )}
-      {toHistoryDays(history.data?.events ?? [], lab?.time_zone).map(({ day, events }) => (
+      {toHistoryDays(history.data?.events ?? [], timeZone).map(({ day, events }) => (
         <section key={day} className="border-t border-rule py-4 first:border-t-0">
           <h2 className="text-[17px]/6">{day}</h2>
           <ol className="mt-2">

@@ -1,5 +1,6 @@
 /** Days of a history, newest first, in the lab's time zone. */
 import type { HistoryEvent } from "@/lib/api/series";
+import { toClock, toLongDay } from "@/lib/time/time-words";
 
 export interface HistoryDay {
   /** "12 May 2026" */
@@ -7,20 +8,11 @@ export interface HistoryDay {
   events: { event: HistoryEvent; time: string }[];
 }
 
-export function toHistoryDays(
-  events: readonly HistoryEvent[],
-  timeZone: string | undefined,
-): HistoryDay[] {
+export function toHistoryDays(events: readonly HistoryEvent[], timeZone: string): HistoryDay[] {
   const days: HistoryDay[] = [];
   for (const event of events) {
-    const at = new Date(event.at);
-    const day = at.toLocaleDateString("en-GB", {
-      day: "numeric",
-      month: "long",
-      year: "numeric",
-      timeZone,
-    });
-    const time = at.toLocaleTimeString("en-GB", { hour: "2-digit", minute: "2-digit", timeZone });
+    const day = toLongDay(event.at, timeZone);
+    const time = toClock(event.at, timeZone);
     const last = days.at(-1);
     if (last?.day === day) last.events.push({ event, time });
     else days.push({ day, events: [{ event, time }] });

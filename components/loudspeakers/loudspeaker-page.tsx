@@ -5,7 +5,7 @@ import Link from "next/link";
 import { ApiProblem } from "@/lib/api/client";
 import type { Loudspeaker } from "@/lib/api/loudspeakers";
 import { formatPlain, NBSP } from "@/lib/charts/format";
-import { useLabSession } from "../frame/lab-session";
+import { Moment } from "../frame/moment";
 import { PageHead } from "../frame/page-head";
 import { Button, LinkButton } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
@@ -13,7 +13,6 @@ import { StateSquares } from "../parts/state-boxes";
 import { EmptyState, LoadingState } from "../parts/states";
 import { loudspeakerQuery } from "../queries/loudspeakers";
 import { seriesListQuery } from "../queries/series";
-import { toChangedWords } from "../series-list/list-words";
 import { toRowHref } from "../series-list/row-href";
 import { LoudspeakerForm } from "./loudspeaker-form";
 
@@ -103,7 +102,6 @@ const withUnit = (value: number | null, unit: string): string =>
   value === null ? "" : `${formatPlain(value)}${NBSP}${unit}`;
 
 function SeriesOf({ loudspeaker }: { loudspeaker: Loudspeaker }) {
-  const { lab } = useLabSession();
   const list = useQuery(seriesListQuery({ loudspeaker: loudspeaker.id, page_size: 100 }));
   const rows = list.data?.series ?? [];
   return (
@@ -128,9 +126,7 @@ function SeriesOf({ loudspeaker }: { loudspeaker: Loudspeaker }) {
               {row.number}
             </Link>
             <StateSquares state={row.state} note={row.state_detail} />
-            <time dateTime={row.changed_at} className="figures text-label text-ink-2">
-              {toChangedWords(row.changed_at, new Date(list.dataUpdatedAt), lab?.time_zone)}
-            </time>
+            <Moment at={row.changed_at} className="figures text-label text-ink-2" />
           </li>
         ))}
       </ul>

@@ -1,5 +1,7 @@
 "use client";
 
+import { toClock } from "@/lib/time/time-words";
+import { useLabZone } from "../frame/lab-session";
 import { ConnectionBar } from "../parts/states";
 
 interface LostConnectionProps {
@@ -12,10 +14,7 @@ interface LostConnectionProps {
 
 /** The page stays usable; what is on its way waits and goes on by itself. */
 export function LostConnection({ sinceMs, waiting, onRetry }: LostConnectionProps) {
-  const since = new Date(sinceMs).toLocaleTimeString("en-GB", {
-    hour: "2-digit",
-    minute: "2-digit",
-  });
+  const since = toClock(new Date(sinceMs), useLabZone());
   return (
     <div className="mb-3">
       <ConnectionBar onRetry={onRetry}>

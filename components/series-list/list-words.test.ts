@@ -2,7 +2,6 @@ import { describe, expect, it } from "vitest";
 import {
   findLimits,
   listCriteria,
-  toChangedWords,
   toCriterionKey,
   toCriterionShort,
   toCriterionWords,
@@ -89,19 +88,5 @@ describe("toFirstWords", () => {
       words: "200 Hz, already past it",
       note: "at the 76 dB run",
     });
-  });
-});
-
-describe("toChangedWords", () => {
-  const now = new Date("2026-05-12T10:00:00Z");
-  it.each([
-    ["2026-05-12T08:42:00Z", "UTC", "today 08:42"],
-    ["2026-05-12T08:42:00Z", "Europe/Berlin", "today 10:42"],
-    ["2026-05-11T23:30:00Z", "UTC", "yesterday"],
-    ["2026-05-11T23:30:00Z", "Europe/Berlin", "today 01:30"],
-    ["2026-05-06T12:00:00Z", "UTC", "6 May"],
-    ["2025-05-06T12:00:00Z", "UTC", "6 May 2025"],
-  ])("%s in %s", (at, zone, expected) => {
-    expect(toChangedWords(at, now, zone)).toBe(expected);
   });
 });

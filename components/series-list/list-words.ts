@@ -97,20 +97,3 @@ export function toFirstWords(row: SeriesRow, limits: ListLimits | null): TwoLine
       first.nominal_dB === null ? null : `run level ${roundLimitDown(first.nominal_dB)}${NBSP}dB`,
   };
 }
-
-/** "today 10:42", "yesterday", "6 May", "6 May 2025" in the given time zone. */
-export function toChangedWords(at: string, now: Date, timeZone: string | undefined): string {
-  const then = new Date(at);
-  const day = (date: Date): string => date.toLocaleDateString("en-CA", { timeZone });
-  if (day(then) === day(now)) {
-    return `today ${then.toLocaleTimeString("en-GB", { hour: "2-digit", minute: "2-digit", timeZone })}`;
-  }
-  if (day(then) === day(new Date(now.getTime() - 86_400_000))) return "yesterday";
-  const sameYear = day(then).slice(0, 4) === day(now).slice(0, 4);
-  return then.toLocaleDateString("en-GB", {
-    day: "numeric",
-    month: "short",
-    ...(sameYear ? {} : { year: "numeric" }),
-    timeZone,
-  });
-}

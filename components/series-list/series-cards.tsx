@@ -1,13 +1,14 @@
 "use client";
 
+import { Moment } from "../frame/moment";
 import { StateSquares } from "../parts/state-boxes";
-import { findLimits, toChangedWords } from "./list-words";
+import { findLimits } from "./list-words";
 import { FirstCell, ReachedCell } from "./row-cells";
 import { SeriesName, type RowsProps } from "./series-table";
 import { SmallWall } from "./small-wall";
 
 /** The same rows on a phone: one under the other. */
-export function SeriesCards({ rows, criterionKey, now, timeZone }: RowsProps) {
+export function SeriesCards({ rows, criterionKey }: RowsProps) {
   return (
     <ul aria-label="Series" className="border-y border-rule bg-sheet md:hidden">
       {rows.map((row) => {
@@ -21,9 +22,7 @@ export function SeriesCards({ rows, criterionKey, now, timeZone }: RowsProps) {
               <p className="figures flex-none text-right text-label text-ink-2">
                 {row.number}
                 <br />
-                <time dateTime={row.changed_at}>
-                  {toChangedWords(row.changed_at, now, timeZone)}
-                </time>
+                <Moment at={row.changed_at} />
               </p>
             </div>
             <div className="mt-2">

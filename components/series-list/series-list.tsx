@@ -7,7 +7,6 @@ import { ApiProblem } from "@/lib/api/client";
 import type { SeriesRow } from "@/lib/api/series";
 import { formatCount } from "@/lib/charts/format";
 import { toMaxLevelNotice } from "@/lib/exposure/notices";
-import { useLabSession } from "../frame/lab-session";
 import { PageHead } from "../frame/page-head";
 import { Button, LinkButton } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
@@ -36,7 +35,6 @@ const NO_COUNTS = {};
 
 /** The series of the lab: filtered, sorted and searched by the address. */
 export function SeriesList({ mayCapture }: { mayCapture: boolean }) {
-  const timeZone = useLabSession().lab?.time_zone;
   const [view, setView] = useQueryStates(listAddress);
   const list = useQuery(seriesListQuery(toListQuery(view)));
   const change = useCallback(
@@ -93,18 +91,11 @@ export function SeriesList({ mayCapture }: { mayCapture: boolean }) {
                   <SeriesTable
                     rows={rows}
                     criterionKey={toCriterionKey(criterion)}
-                    now={new Date(list.dataUpdatedAt)}
-                    timeZone={timeZone}
                     view={view}
                     onSort={(sort) => change(toSort(view, sort))}
                     stale={list.isPlaceholderData}
                   />
-                  <SeriesCards
-                    rows={rows}
-                    criterionKey={toCriterionKey(criterion)}
-                    now={new Date(list.dataUpdatedAt)}
-                    timeZone={timeZone}
-                  />
+                  <SeriesCards rows={rows} criterionKey={toCriterionKey(criterion)} />
                 </>
               )}
               {list.isPending && (

@@ -2,12 +2,13 @@
 
 import Link from "next/link";
 import type { SeriesRow } from "@/lib/api/series";
+import { Moment } from "../frame/moment";
 import { SortTh, NoValue, Table, TableFrame, Td, Th, Tr } from "../parts/table";
 import { StateSquares } from "../parts/state-boxes";
 import { toInitialName } from "../runs/verdict-words";
 import { LevelSteps } from "./level-steps";
 import type { ListView } from "./list-address";
-import { findLimits, toChangedWords } from "./list-words";
+import { findLimits } from "./list-words";
 import { FirstCell, ReachedCell } from "./row-cells";
 import { toRowHref } from "./row-href";
 import { SmallWall } from "./small-wall";
@@ -15,8 +16,6 @@ import { SmallWall } from "./small-wall";
 export interface RowsProps {
   rows: readonly SeriesRow[];
   criterionKey: string;
-  now: Date;
-  timeZone: string | undefined;
 }
 
 interface SeriesTableProps extends RowsProps {
@@ -26,15 +25,7 @@ interface SeriesTableProps extends RowsProps {
   stale: boolean;
 }
 
-export function SeriesTable({
-  rows,
-  criterionKey,
-  now,
-  timeZone,
-  view,
-  onSort,
-  stale,
-}: SeriesTableProps) {
+export function SeriesTable({ rows, criterionKey, view, onSort, stale }: SeriesTableProps) {
   const sortBy = (sort: ListView["sort"]) =>
     ({
       sorted: view.sort === sort ? (view.direction === "up" ? "ascending" : "descending") : null,
@@ -89,9 +80,7 @@ export function SeriesTable({
                   {row.with === null ? <NoValue say="nobody" /> : toInitialName(row.with.name)}
                 </Td>
                 <Td figures className="pr-gutter!">
-                  <time dateTime={row.changed_at}>
-                    {toChangedWords(row.changed_at, now, timeZone)}
-                  </time>
+                  <Moment at={row.changed_at} />
                 </Td>
               </Tr>
             );

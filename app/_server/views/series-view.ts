@@ -1,12 +1,14 @@
 import type { Trx } from "../../../db/client";
 import { countCaptured, loadCapture, toMaxLevelDb } from "../../../db/acts/capture";
 import { findCurrentAnalysis } from "../../../db/queries/current-analysis";
+import { getLab } from "../../../db/queries/labs";
 import { toSeriesNumber } from "../../../db/queries/series";
 import type { SeriesListRow } from "../../../db/queries/series-list";
 import type { Progress, SeriesRow, SeriesView } from "../../../lib/api/series";
 import { USABLE_RUN_STATES } from "../../../lib/runs/arrival-schema";
 import { toFileStem, toPlannedRuns } from "../../../lib/series/planned-runs";
 import { toSeriesSteps } from "../../../lib/series/states";
+import { toDay } from "../../../lib/time/time-words";
 import { toLoudspeakerView } from "./loudspeaker-view";
 import { toPerson } from "./person-view";
 
@@ -21,6 +23,9 @@ export async function loadSeriesView(
   const current = await findCurrentAnalysis(trx, labId, seriesId);
   const done = await findCurrentAnalysis(trx, labId, seriesId, "done");
   const last = runs.at(-1);
+  const zone = (await getLab(trx, labId)).time_zone;
+  const toNote = (at: Date, name: string | null): string =>
+    [toDay(at, new Date(), zone), ...(name === null ? [] : [name])].join(", ");
   const steps = toSeriesSteps({
     begun: runs.length > 0 || capture.excuses.size > 0,
     captured: countCaptured(capture),
@@ -32,7 +37,7 @@ export async function loadSeriesView(
     analysedNote:
       done?.finished_at == null
         ? null
-        : `${toDay(done.finished_at)}, version ${String(done.version)}`,
+        : `${toDay(done.finished_at, new Date(), zone)}, version ${String(done.version)}`,
   });
   return {
     id: series.id,
@@ -105,8 +110,3 @@ function toRunWords(progress: Progress): string {
 
 const toShare = (progress: Progress | null): number =>
   progress === null || progress.total === 0 ? 0 : Math.min(1, progress.done / progress.total);
-
-const toDay = (at: Date): string =>
-  at.toLocaleDateString("en-GB", { day: "numeric", month: "short", timeZone: "UTC" });
-const toNote = (at: Date, name: string | null): string =>
-  name === null ? toDay(at) : `${toDay(at)}, ${name}`;
