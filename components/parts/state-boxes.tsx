@@ -14,36 +14,54 @@ const toBoxes = (steps: readonly Step[]): { step: Step; state: BoxState }[] => {
   }));
 };
 
-/** The five boxes of a series' life, derived from its state by the caller. */
+/** The five boxes of a series' life; a phone shows five bars and the words of where it stands. */
 export function StateBoxes({ steps, className }: { steps: readonly Step[]; className?: string }) {
+  const boxes = toBoxes(steps);
+  const here = boxes.find((box) => box.state === "now") ?? boxes.at(-1);
   return (
-    <ol
-      className={joinClasses("flex w-full gap-[3px] max-md:flex-col max-md:gap-2.5", className)}
-      aria-label="State of the series"
-    >
-      {toBoxes(steps).map(({ step, state }) => (
-        <li
-          key={step.step}
-          className="min-w-0 flex-1"
-          aria-current={state === "now" ? "step" : undefined}
-        >
-          <BoxBar filled={step.share} next={state === "next"} />
-          <span
-            className={joinClasses(
-              "flex items-center gap-[5px] text-[15px]/[18px]",
-              state === "next" ? "text-ink-2" : "font-[640]",
-            )}
+    <div className={className}>
+      <ol className="flex w-full gap-[3px]" aria-label="State of the series">
+        {boxes.map(({ step, state }) => (
+          <li
+            key={step.step}
+            className="min-w-0 flex-1"
+            aria-current={state === "now" ? "step" : undefined}
           >
-            {state === "done" && <VerdictMark kind="ok" size={12} />}
-            {step.step}
-            <span className="sr-only">{SAY[state]}</span>
-          </span>
-          <span className="figures mt-px block truncate text-label text-ink-2" title={step.detail}>
-            {step.detail}
-          </span>
-        </li>
-      ))}
-    </ol>
+            <BoxBar filled={step.share} next={state === "next"} />
+            <span className="block max-md:sr-only">
+              <StepName step={step} state={state} />
+              <span
+                className="figures mt-px block truncate text-label text-ink-2"
+                title={step.detail}
+              >
+                {step.detail}
+              </span>
+            </span>
+          </li>
+        ))}
+      </ol>
+      {here !== undefined && (
+        <p className="flex flex-wrap items-baseline gap-x-3 md:hidden" aria-hidden="true">
+          <StepName step={here.step} state={here.state} />
+          <span className="figures text-label text-ink-2">{here.step.detail}</span>
+        </p>
+      )}
+    </div>
+  );
+}
+
+function StepName({ step, state }: { step: Step; state: BoxState }) {
+  return (
+    <span
+      className={joinClasses(
+        "flex items-center gap-[5px] text-[15px]/[18px]",
+        state === "next" ? "text-ink-2" : "font-[640]",
+      )}
+    >
+      {state === "done" && <VerdictMark kind="ok" size={12} />}
+      {step.step}
+      <span className="sr-only">{SAY[state]}</span>
+    </span>
   );
 }
 

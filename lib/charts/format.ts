@@ -72,9 +72,14 @@ export function sayFrequency(frequencyHz: number): string {
 /** Distortion to two figures: "1.4 %", "0.40 %", "12 %". */
 export const formatPercent = (percent: number): string => `${formatPercentPlain(percent)}${NBSP}%`;
 
+const LEAST_PERCENT = 0.001;
+
+/** Never a bare zero: what is smaller than can be printed says so. */
 export function formatPercentPlain(percent: number): string {
   if (percent >= 9.95) return percent.toFixed(0);
-  return percent >= 0.995 ? percent.toFixed(1) : percent.toFixed(2);
+  if (percent >= 0.995) return percent.toFixed(1);
+  if (percent >= 0.00995) return percent.toFixed(2);
+  return percent >= LEAST_PERCENT ? percent.toFixed(3) : `under ${LEAST_PERCENT}`;
 }
 
 /** In a tight map cell: ".40", "1.3", "14". */

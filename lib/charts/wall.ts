@@ -113,7 +113,10 @@ export function toWall(
   ];
   const staff: Shape[] = [
     ...staffShapes(scale, place.staffWidth, top),
-    rowLabel(spl ? "dB SPL at 1 m" : "dB, run level", 6, 22, "start"),
+    // On two lines: the tab of the first band stands beside it.
+    ...(spl ? ["dB SPL", "at 1 m"] : ["dB,", "run level"]).map((line, at) =>
+      rowLabel(line, 6, 12 + 13 * at, "start"),
+    ),
     ...(rows.cause === null ? [] : [rowLabel("cause", place.staffWidth - 9, rows.cause + 4)]),
     ...(rows.decision === null
       ? []

@@ -8,5 +8,9 @@ export default async function DistortionPage({
   params,
 }: PageProps<"/series/[seriesId]/distortion">) {
   const [{ seriesId }] = await Promise.all([params, getPageCaller()]);
-  return <DistortionView seriesId={seriesId} />;
+  return (
+    <div className="px-gutter pb-9 max-md:px-phone">
+      <DistortionView seriesId={seriesId} />
+    </div>
+  );
 }

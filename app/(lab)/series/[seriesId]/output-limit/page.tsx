@@ -9,5 +9,9 @@ export default async function OutputLimitPage({
   params,
 }: PageProps<"/series/[seriesId]/output-limit">) {
   const [{ seriesId }, caller] = await Promise.all([params, getPageCaller()]);
-  return <OutputLimitView seriesId={seriesId} mayAnalyse={may(caller.roles, "analyse")} />;
+  return (
+    <div className="px-gutter pb-9 max-md:px-phone">
+      <OutputLimitView seriesId={seriesId} mayAnalyse={may(caller.roles, "analyse")} />
+    </div>
+  );
 }
