@@ -1,12 +1,14 @@
 /** When the sweep arrived: found in the mid band, refined on the full response. */
 import { AnalysisError } from "../errors/app-error";
-import type { ArrivalEnvelope, Deconvolved, SweepInUse } from "./deconvolution";
+import { toPeak, type ArrivalEnvelope, type Deconvolved, type SweepInUse } from "./deconvolution";
 
 export interface Arrival {
   /** Circular lag of the linear response, samples with fraction. */
   lag: number;
   /** Share of the mid-band energy from 50 ms before to 300 ms after the peak: under one half there is no sweep. */
   compactness: number;
+  /** By how much the upper part of the mid band arrives after the lower one, s: a room makes some milliseconds of it, another sweep far more. */
+  spreadS: number;
 }
 
 const BEFORE_S = 0.05;
@@ -14,6 +16,8 @@ const AFTER_S = 0.3;
 const REFINE_S = 0.02;
 /** Less than this share of the mid-band energy around the peak is no sweep (docs/domain.md section 9). */
 export const LEAST_COMPACTNESS = 0.5;
+/** A sweep of another rate of change arrives later, or earlier, the higher it gets: over this nothing can be computed. */
+const LARGEST_SPREAD_S = 0.1;
 
 /**
  * @throws AnalysisError "run.silent" where nothing at all was recorded.
@@ -39,11 +43,19 @@ export function findArrival(
   return {
     lag: best + toVertex(response, best),
     compactness: toCompactness(envelope, peak, rateHz),
+    spreadS: toSpread(envelope, response.length) / rateHz,
   };
 }
 
 /** @throws AnalysisError "run.no-sweep" */
 export function requireSweep(arrival: Arrival, sweep: SweepInUse, file: string): void {
+  if (arrival.compactness >= LEAST_COMPACTNESS && Math.abs(arrival.spreadS) > LARGEST_SPREAD_S) {
+    throw new AnalysisError(
+      "run.no-sweep",
+      `${file} holds another sweep than the stimulus: what it plays about 2 kHz arrives ${(1000 * arrival.spreadS).toFixed(0)} ms after what it plays about 500 Hz. Check the stimulus that was played, its length and its frequencies.`,
+      { file, details: { spreadS: arrival.spreadS } },
+    );
+  }
   if (arrival.compactness >= LEAST_COMPACTNESS) return;
   throw new AnalysisError(
     "run.no-sweep",
@@ -52,10 +64,10 @@ export function requireSweep(arrival: Arrival, sweep: SweepInUse, file: string):
   );
 }
 
-function toPeak(power: Float64Array): number {
-  let peak = 0;
-  for (let m = 1; m < power.length; m += 1) if (power[m]! > power[peak]!) peak = m;
-  return peak;
+/** The shorter way round from the lower to the upper part's arrival, samples. */
+function toSpread({ lowLag, highLag }: ArrivalEnvelope, size: number): number {
+  const ahead = (((highLag - lowLag) % size) + size) % size;
+  return ahead > size / 2 ? ahead - size : ahead;
 }
 
 function toCompactness(

@@ -2,7 +2,8 @@
 import type { Quality } from "../result/result-schema";
 import type { Run } from "../series/series-schema";
 import { CELLS_PER_BAND, toFirstCellOf, type Grid } from "./bands";
-import { meanInBand, type OrderPower, type RawRun } from "./measure-run";
+import { meanInBand } from "./mean-in-band";
+import type { OrderPower, RawRun } from "./measure-run";
 import { HARMONIC_ORDERS, toOrdersText } from "./orders";
 import type { BandMeasure, MeasuredRun, ThirdOctave } from "./types";
 

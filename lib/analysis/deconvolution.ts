@@ -40,6 +40,9 @@ export interface ArrivalEnvelope {
   power: Float64Array;
   /** Samples of the recording per point. */
   samplesPerPoint: number;
+  /** Circular lag of the peak in the lower and in the upper part of the arrival band, samples. */
+  lowLag: number;
+  highLag: number;
 }
 
 /** Where arrivals are looked for, as far as the sweep covers it (docs/domain.md section 9). */
@@ -81,7 +84,11 @@ export function createDeconvolver(
   const [lowHz, highHz] = toArrivalBandHz(sweep);
   const firstBin = Math.ceil((lowHz * size) / sweep.rateHz);
   const lastBin = Math.floor((highHz * size) / sweep.rateHz);
-  const zoom = planComplexFft(toFftSize(2 * (lastBin - firstBin + 1)));
+  const count = lastBin - firstBin + 1;
+  const zooms: Zooms = {
+    whole: planComplexFft(toFftSize(2 * count)),
+    part: planComplexFft(toFftSize(2 * toPartBins(count))),
+  };
   const kept = {
     first: firstBin,
     last: lastBin,
@@ -94,7 +101,7 @@ export function createDeconvolver(
     deconvolve(samples) {
       load(fft, samples);
       const response = fft.filter(fft.forwardPacked(), spectrum, kept);
-      return { response, envelope: toEnvelope(kept.bins, zoom, size) };
+      return { response, envelope: toEnvelope(kept.bins, zooms, size) };
     },
   };
 }
@@ -156,19 +163,47 @@ function invertInPlace(
   spectrum.fill(0, 2 * (to + 1));
 }
 
-function toEnvelope(kept: Float64Array, zoom: ComplexFft, size: number): ArrivalEnvelope {
-  const points = zoom.size;
-  const bins = new Float64Array(2 * points);
+/** Lower and upper part of the arrival band that are looked at on their own: a quarter of its bins each. */
+const PART = 0.25;
+const toPartBins = (count: number): number => Math.max(1, Math.floor(count * PART));
+
+/** Transforms back to lag at the pace of what they hold. */
+interface Zooms {
+  whole: ComplexFft;
+  part: ComplexFft;
+}
+
+function toEnvelope(kept: Float64Array, { whole, part }: Zooms, size: number): ArrivalEnvelope {
   const count = kept.length / 2;
-  for (let k = 0; k < count; k += 1) {
-    // Conjugated, so that the forward transform goes back to lag; a raised cosine keeps the flanks short.
-    const weight = 1 - Math.cos((2 * Math.PI * (k + 0.5)) / count);
-    bins[2 * k] = weight * kept[2 * k]!;
-    bins[2 * k + 1] = -weight * kept[2 * k + 1]!;
+  const bins = toPartBins(count);
+  const toLag = (peak: number): number => (peak * size) / part.size;
+  return {
+    power: toLagPower(kept, 0, count, whole),
+    samplesPerPoint: size / whole.size,
+    lowLag: toLag(toPeak(toLagPower(kept, 0, bins, part))),
+    highLag: toLag(toPeak(toLagPower(kept, count - bins, count, part))),
+  };
+}
+
+/** |analytic response|^2 of bins from to before to, over lag; a raised cosine keeps its flanks short. */
+function toLagPower(kept: Float64Array, from: number, to: number, zoom: ComplexFft): Float64Array {
+  const bins = new Float64Array(2 * zoom.size);
+  for (let k = from; k < to; k += 1) {
+    // Conjugated, so that the forward transform goes back to lag.
+    const weight = 1 - Math.cos((2 * Math.PI * (k - from + 0.5)) / (to - from));
+    bins[2 * (k - from)] = weight * kept[2 * k]!;
+    bins[2 * (k - from) + 1] = -weight * kept[2 * k + 1]!;
   }
   const lag = zoom.transform(bins);
-  const power = new Float64Array(points);
-  for (let m = 0; m < points; m += 1)
-    power[m] = (lag[2 * m]! ** 2 + lag[2 * m + 1]! ** 2) / size ** 2;
-  return { power, samplesPerPoint: size / points };
+  return Float64Array.from(
+    { length: zoom.size },
+    (_, m) => lag[2 * m]! ** 2 + lag[2 * m + 1]! ** 2,
+  );
+}
+
+/** Index of the largest value. */
+export function toPeak(power: Float64Array): number {
+  let peak = 0;
+  for (let m = 1; m < power.length; m += 1) if (power[m]! > power[peak]!) peak = m;
+  return peak;
 }

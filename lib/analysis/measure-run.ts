@@ -1,8 +1,16 @@
 /** One recording, from samples to the power of each order in each cell of the grid, with its floor. */
 import { measureCellPower, type Plans } from "./cell-power";
 import { estimateDriftPpm } from "./drift";
-import { measureNoise, toNoiseCells, toNoiseGain, type NoiseDensity } from "./noise-floor";
+import {
+  measureNoise,
+  measureResponseNoise,
+  toNoiseCells,
+  toNoiseGain,
+  type NoiseDensity,
+} from "./noise-floor";
 import type { OrderWindow } from "./order-windows";
+import { meanInBand } from "./mean-in-band";
+import { measurePeak } from "./measure-peak";
 import type { FoundSweep, SweepFinder } from "./sweep-in-recording";
 import type { MicrophoneResponse } from "./microphone";
 import type { OnProgress, Recording } from "./types";
@@ -55,7 +63,6 @@ export interface RunShape {
   periodS?: number | undefined;
 }
 
-const CLIPPED_SAMPLES = 3;
 const SILENCE_GUARD_S = 0.02;
 const DECAY_GUARD_S = 0.5;
 const LONGEST_SILENCE_S = 2;
@@ -83,6 +90,10 @@ export function measureRun(
   tell("aligned", 1);
   const driftPpm =
     loopback?.driftPpm ?? estimateDriftPpm(first.deconvolved.response, first.lag, sweep, plans);
+  const ownNoise =
+    context.ambient === null
+      ? measureResponseNoise(first.deconvolved.response, first.lag, sweep, plans)
+      : null;
   const measured = measureOrders(first, context);
   const { orders, gatedPower } = measured;
   const { stimulusAt, missing } = first;
@@ -92,7 +103,8 @@ export function measureRun(
   tell("harmonics", 2);
   const silence = measureSilence(recording, stimulusAt, shape, context);
   const rounding = recording.fullScale < 1 ? (1 - recording.fullScale) ** 2 / 12 : 2 ** -48 / 12;
-  const sources = { ambient: context.ambient, silence, rounding };
+  const ambient = context.ambient ?? (silence === null ? ownNoise : null);
+  const sources = { ambient, silence, rounding };
   setFloors(orders, sources, context, others.length + 1);
   applyMicrophone(orders, gatedPower, context);
   tell("floor", 3);
@@ -252,21 +264,6 @@ function applyMicrophone(
   });
 }
 
-function measurePeak({ samples, fullScale }: Recording): { peakDbfs: number; clipped: boolean } {
-  let peak = 0;
-  let run = 0;
-  let longest = 0;
-  for (let n = 0; n < samples.length; n += 1) {
-    const size = Math.abs(samples[n]!);
-    if (size > peak) peak = size;
-    if (size >= fullScale) {
-      run += 1;
-      if (run > longest) longest = run;
-    } else run = 0;
-  }
-  return { peakDbfs: 20 * Math.log10(peak), clipped: longest >= CLIPPED_SAMPLES || peak > 1 };
-}
-
 /** Sweep over noise within the reference band, both as a level meter would read them there. */
 function toSnrDb(
   { power }: OrderPower,
@@ -281,21 +278,4 @@ function toSnrDb(
   );
   // Mean of f S(f) over ln f times the span in ln f is the integral of S over f.
   return 10 * Math.log10(signal / (density * Math.log(referenceBandHz[1] / referenceBandHz[0])));
-}
-
-/** Mean of cells whose middle lies in the band; NaN where none does. */
-export function meanInBand(
-  cells: Float64Array,
-  edgeHz: Float64Array,
-  [lowHz, highHz]: readonly [number, number],
-): number {
-  let sum = 0;
-  let count = 0;
-  for (let c = 0; c < cells.length; c += 1) {
-    const middle = Math.sqrt(edgeHz[c]! * edgeHz[c + 1]!);
-    if (middle < lowHz || middle > highHz || Number.isNaN(cells[c]!)) continue;
-    sum += cells[c]!;
-    count += 1;
-  }
-  return sum / count;
 }

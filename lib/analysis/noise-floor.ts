@@ -53,6 +53,38 @@ export function measureNoise(
   return blocks === 0 ? null : { byFrequency, binHz, durationS: samples.length / rateHz };
 }
 
+/** Orders beyond this one leave nothing to be heard of. */
+const LAST_TRACE_OF_ORDERS = 30;
+const DECAY_S = 1;
+
+/**
+ * The noise of a run that has no silence and no recording of the room: what its response holds
+ * between the last decay and the highest orders, where the sweep left nothing.
+ *
+ * @param response [size] over circular lag. Not modified.
+ */
+export function measureResponseNoise(
+  response: Float64Array,
+  arrivalLag: number,
+  { rateConstantS, rateHz }: { rateConstantS: number; rateHz: number },
+  plans: Plans,
+): NoiseDensity | null {
+  const from = Math.round(arrivalLag + DECAY_S * rateHz);
+  const length = Math.floor(
+    response.length - (DECAY_S + rateConstantS * Math.log(LAST_TRACE_OF_ORDERS)) * rateHz,
+  );
+  if (length <= 0) return null;
+  const quiet = Float64Array.from({ length }, (_, n) => response[(from + n) % response.length]!);
+  const noise = measureNoise(quiet, rateHz, plans);
+  if (noise === null) return null;
+  // The deconvolution raised a density S to 4 f S / (R rate^2).
+  const { byFrequency, binHz } = noise;
+  for (let k = 1; k < byFrequency.length; k += 1) {
+    byFrequency[k]! *= (rateHz ** 2 * rateConstantS) / (4 * k * binHz);
+  }
+  return noise;
+}
+
 /** Mean of f S(f) in cells of output frequency; what lies under the first bins takes the lowest that is known. */
 function toCells(
   noise: NoiseDensity,
@@ -92,6 +124,8 @@ export function toNoiseCells(
   const own = silence === null ? null : toCells(silence, edgeHz, order, plans);
   const room = ambient === null ? null : toCells(ambient, edgeHz, order, plans);
   const cells = room ?? own ?? new Float64Array(edgeHz.length - 1);
+  // A room that was recorded as digital silence says nothing.
+  if (room !== null && own !== null && !room.some((x) => x > 0)) room.set(own);
   if (room !== null && own !== null) blend(cells, own, ambient!.durationS, silence!.durationS);
   for (let c = 0; c < cells.length; c += 1) {
     const frequencyHz = order * Math.sqrt(edgeHz[c]! * edgeHz[c + 1]!);

@@ -112,19 +112,21 @@ export class SweepFinder {
     const deconvolved = this.deconvolver(piece.length).deconvolve(piece);
     const arrival = findArrival(deconvolved, sweep.rateHz, file);
     requireSweep(arrival, sweep, file);
-    const missingAt = (lag: number): number => {
-      const first = lag + sweepStart + offset;
-      return Math.max(0, -first) + Math.max(0, first + sweepLength - recordingLength);
-    };
-    const size = deconvolved.response.length;
-    const early = arrival.lag - size;
-    const lag = missingAt(early) < missingAt(arrival.lag) ? early : arrival.lag;
+    const missingAt = (first: number, length: number): number =>
+      Math.max(0, -first) + Math.max(0, first + sweepLength - length);
+    // Of the lags that a circle holds alike, the one whose sweep lies in the piece.
+    const early = arrival.lag - deconvolved.response.length;
+    const lag =
+      missingAt(early + sweepStart, piece.length) <
+      missingAt(arrival.lag + sweepStart, piece.length)
+        ? early
+        : arrival.lag;
     return {
       deconvolved,
       lag: arrival.lag,
       arrival,
       stimulusAt: lag + offset,
-      missing: missingAt(lag),
+      missing: missingAt(lag + offset + sweepStart, recordingLength),
     };
   }
 }
