@@ -1,4 +1,5 @@
 import type { Config } from "tailwindcss";
+import { SAFETY_COLOURS } from "./lib/charts/tokens";
 
 const rem = (px: number): string => `${px / 16}rem`;
 const type = (
@@ -34,10 +35,11 @@ const config: Config = {
       fault: { DEFAULT: role("fault"), wash: role("fault-wash") },
       silt: { line: role("silt-line"), ground: role("silt-ground") },
       noise: role("noise-line"),
-      caution: "#FFD100",
-      warning: "#FF8200",
-      black: "#000000",
-      white: "#FFFFFF",
+      // Hearing notices alone; the same in both themes.
+      caution: SAFETY_COLOURS.caution,
+      warning: SAFETY_COLOURS.warning,
+      black: SAFETY_COLOURS.text,
+      white: SAFETY_COLOURS.ground,
     },
     fontFamily: {
       prose: ['"Atkinson Hyperlegible Next Variable"', "system-ui", "sans-serif"],

@@ -1,10 +1,4 @@
 import type { ReactNode } from "react";
-import { joinClasses } from "./join-classes";
-
-/** A sheet: figures, forms and side notes lie on it. */
-export function Sheet({ children, className }: { children: ReactNode; className?: string }) {
-  return <div className={joinClasses("border border-rule bg-sheet", className)}>{children}</div>;
-}
 
 interface FormSectionProps {
   title: string;

@@ -139,21 +139,6 @@ export function Tr({ height = "table", selected = false, className, ...rest }: T
   );
 }
 
-/** A heading row inside a table: "Before", "The ladder". */
-export function GroupRow({ columns, children }: { columns: number; children: ReactNode }) {
-  return (
-    <tr>
-      <th
-        scope="colgroup"
-        colSpan={columns}
-        className="figures border-t border-rule bg-page px-4 pt-[7px] pb-[5px] text-label font-medium text-ink-2"
-      >
-        {children}
-      </th>
-    </tr>
-  );
-}
-
 /** No value yet: a dot, said as such. */
 export function NoValue({ say = "no value yet" }: { say?: string }) {
   return (
