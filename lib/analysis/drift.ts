@@ -1,9 +1,11 @@
 /**
  * Clock difference between player and recorder. It delays each frequency by -e R ln f; what is left of
- * the group delay after the minimum-phase part of the response, over ln f, shows it. A loudspeaker with
- * an all-pass of its own (a crossover) can look like some tens of ppm: the loopback channel cannot.
+ * the group delay after the minimum-phase part of the response, over ln f, shows it. The all-pass of a
+ * loudspeaker's crossovers does so as well and is told apart by its shape; what remains of it can look
+ * like some tens of ppm: the loopback channel cannot.
  */
 import type { Plans } from "./cell-power";
+import { fitSlopeBesideCrossovers, type DelayPoint } from "./crossover-delay";
 
 const POINTS = 4096;
 const BEFORE_S = 0.01;
@@ -34,8 +36,8 @@ export function estimateDriftPpm(
   if (!(highHz > 4 * lowHz)) return Number.NaN;
   const points = POINTS * 2 ** Math.max(0, Math.round(Math.log2(rateHz / 48_000)));
   const delay = toExcessDelay(response, arrivalLag, { stopHz, startHz, rateHz }, points, plans);
-  const slope = fitSlope(delay, rateHz / points, lowHz, highHz);
-  return (-slope / rateHz / rateConstantS) * 1e6;
+  const read = readDelays(delay, { rateHz, binHz: rateHz / points, lowHz, highHz });
+  return (-fitSlopeBesideCrossovers(read) / rateConstantS) * 1e6;
 }
 
 /** What a loudspeaker's own phase can feign, ppm: a smaller estimate says nothing. */
@@ -118,14 +120,17 @@ function toMinimumPhaseDelay(
   return Float64Array.from({ length: power.length }, (_, k) => delays[2 * k]!);
 }
 
-/** Slope of delay over ln f, in even steps of ln f, weighted by power within each. */
-function fitSlope(
+/** Delays in even steps of ln f, weighted by power within each. */
+function readDelays(
   { delay, power }: Weighted,
-  binHz: number,
-  lowHz: number,
-  highHz: number,
-): number {
-  const points: { x: number; y: number }[] = [];
+  {
+    rateHz,
+    binHz,
+    lowHz,
+    highHz,
+  }: { rateHz: number; binHz: number; lowHz: number; highHz: number },
+): DelayPoint[] {
+  const points: DelayPoint[] = [];
   const step = 2 ** (1 / STEPS_PER_OCTAVE);
   for (let hz = lowHz; hz * step <= highHz; hz *= step) {
     let weight = 0;
@@ -134,11 +139,8 @@ function fitSlope(
       weight += power[k]!;
       sum += power[k]! * delay[k]!;
     }
-    if (weight > 0) points.push({ x: Math.log(hz * Math.sqrt(step)), y: sum / weight });
+    if (weight > 0)
+      points.push({ lnHz: Math.log(hz * Math.sqrt(step)), delayS: sum / weight / rateHz });
   }
-  const all = points.length;
-  const meanX = points.reduce((s, p) => s + p.x, 0) / all;
-  const meanY = points.reduce((s, p) => s + p.y, 0) / all;
-  const spread = points.reduce((s, p) => s + (p.x - meanX) ** 2, 0);
-  return points.reduce((s, p) => s + (p.x - meanX) * (p.y - meanY), 0) / spread;
+  return points;
 }

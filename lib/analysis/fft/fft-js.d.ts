@@ -4,5 +4,9 @@ declare module "fft.js" {
     constructor(size: number);
     createComplexArray(): number[];
     transform(out: number[], data: ArrayLike<number>): void;
+    inverseTransform(out: number[], data: ArrayLike<number>): void;
+    /** Fills the lower half of `out`; completeSpectrum mirrors it. */
+    realTransform(out: number[], data: ArrayLike<number>): void;
+    completeSpectrum(spectrum: number[]): void;
   }
 }
