@@ -126,13 +126,13 @@ export const LOUDSPEAKERS = {
       { frequencyHz: 5200, q: 2, gainDb: -2.2 },
     ],
   },
-  /** Small coils that heat: little lost at once, more after ten minutes. */
+  /** Motors that heat: little lost within a sweep, more after ten minutes. */
   loom6: {
     ways: [
       {
         fromHz: null,
         toHz: 2200,
-        coil: { levelDb: 102, coilK: 75, magnetK: 55, coilS: 12, magnetS: 1700 },
+        coil: { levelDb: 102, coilK: 4, magnetK: 600, coilS: 12, magnetS: 1700 },
         driver: {
           resonanceHz: 48,
           q: 0.74,
@@ -142,7 +142,7 @@ export const LOUDSPEAKERS = {
       {
         fromHz: 2200,
         toHz: null,
-        coil: { levelDb: 102, coilK: 10, magnetK: 130, coilS: 0.84, magnetS: 390 },
+        coil: { levelDb: 102, coilK: 2, magnetK: 300, coilS: 0.84, magnetS: 390 },
         driver: { levelDb: 102, second: 0.007, third: 0.003 },
       },
     ],

@@ -210,7 +210,8 @@ export function recordRoom(rateHz: number, recorder: Recorder, random: Random): 
   );
 }
 
-function toDigital(
+/** Pressure, Pa, on the scale of the recording, with its noise; changed in place. */
+export function toDigital(
   pressure: Float64Array,
   rateHz: number,
   recorder: Recorder,
