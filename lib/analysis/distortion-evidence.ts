@@ -110,8 +110,9 @@ function responseDb(groups: readonly LevelGroup[], bandIndex: number, order: num
 }
 
 /**
- * Growth of H3 over what the output's growth predicts from a linear run: from the run that shows it most surely,
- * since the quietest runs predict it only within their noise.
+ * Growth of H3 over what the output's growth predicts from a lower run: from the run that shows it most surely,
+ * since the quietest runs predict it only within their noise. A run that loses level itself serves as well:
+ * behind a gain control H3 follows the output from any run to any other.
  */
 function growthOf(
   groups: readonly LevelGroup[],
@@ -123,9 +124,8 @@ function growthOf(
   const topSigmaDb = sigmaOf(third);
   const lossAt = (k: number): number => detection.lossDb[k] ?? Number.NaN;
   const topDriveDb = groups[detection.top]?.driveDb ?? Number.NaN;
-  const last = Math.max(Math.min(detection.firstActive, detection.top), 1);
   let best = { growthDb: Number.NaN, sigmaDb: topSigmaDb };
-  for (const [k, group] of groups.slice(0, last).entries()) {
+  for (const [k, group] of groups.slice(0, detection.top).entries()) {
     const own = harmonicsOf(group, bandIndex).find(
       ({ order, quality }) => order === 3 && quality !== null,
     );
