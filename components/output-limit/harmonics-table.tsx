@@ -1,3 +1,4 @@
+import { useId } from "react";
 import { formatFrequency, formatPercentPlain } from "@/lib/charts/format";
 import { toSeriesLevels } from "@/lib/charts/series-levels";
 import { slateStep, toCss } from "@/lib/charts/tokens";
@@ -10,9 +11,23 @@ const ORDERS = [2, 3, 4, 5, 6, 7, 8, 9];
 /** Harmonics of a band by level, in slate; hatched in the noise, a mark where near it. */
 export function HarmonicsTable({ band }: { band: Band }) {
   const levels = plainShortTermLevels(band);
+  const noiseId = useId().replaceAll(/[^\w-]/g, "");
   const paints = toSeriesLevels(levels.map((level) => level.level_dB));
   return (
     <div className="overflow-x-auto">
+      <svg className="absolute size-0" aria-hidden="true">
+        <defs>
+          <pattern
+            id={noiseId}
+            width="6"
+            height="6"
+            patternUnits="userSpaceOnUse"
+            patternTransform="rotate(45)"
+          >
+            <path className="stroke-noise" d="M0 0v6" strokeWidth="1.4" />
+          </pattern>
+        </defs>
+      </svg>
       <table className="figures w-full border-separate border-spacing-px text-cell">
         <caption className="pb-1 text-left text-label font-medium">
           <span className="flex justify-between gap-4">
@@ -45,9 +60,14 @@ export function HarmonicsTable({ band }: { band: Band }) {
                 </span>
               </th>
               {ORDERS.map((order) => (
-                <Cell key={order} {...cellOf(level, order)} />
+                <Cell key={order} {...cellOf(level, order)} noiseId={noiseId} />
               ))}
-              <Cell percent={level.thd_percent} quality={level.thd_quality} strong />
+              <Cell
+                percent={level.thd_percent}
+                quality={level.thd_quality}
+                noiseId={noiseId}
+                strong
+              />
             </tr>
           ))}
         </tbody>
@@ -62,35 +82,24 @@ export function HarmonicsTable({ band }: { band: Band }) {
 interface CellProps {
   percent: number | null;
   quality: Quality | null;
+  /** The hatch of what lies in the noise. */
+  noiseId: string;
   strong?: boolean;
 }
 
-function cellOf(level: BandLevel, order: number): CellProps {
+function cellOf(level: BandLevel, order: number): Pick<CellProps, "percent" | "quality"> {
   const found = level.harmonics.find((harmonic) => harmonic.order === order);
   return { percent: found?.percent ?? null, quality: found?.quality ?? null };
 }
 
 /** An SVG ground keeps the page free of inline styles. */
-function Cell({ percent, quality, strong = false }: CellProps) {
+function Cell({ percent, quality, noiseId, strong = false }: CellProps) {
   if (percent === null) {
     return (
       <td className="relative h-[22px] min-w-[30px] p-0">
         <svg className="absolute inset-0 size-full" aria-hidden="true">
           {quality === "noise" && (
-            <>
-              <defs>
-                <pattern
-                  id="harmonic-noise"
-                  width="6"
-                  height="6"
-                  patternUnits="userSpaceOnUse"
-                  patternTransform="rotate(45)"
-                >
-                  <path className="stroke-noise" d="M0 0v6" strokeWidth="1.4" />
-                </pattern>
-              </defs>
-              <rect width="100%" height="100%" fill="url(#harmonic-noise)" opacity="0.6" />
-            </>
+            <rect width="100%" height="100%" fill={`url(#${noiseId})`} opacity="0.6" />
           )}
         </svg>
         <span className="sr-only">{quality === "noise" ? "in the noise" : "above the range"}</span>

@@ -32,9 +32,9 @@ const band = (changes: Partial<Band>): Band => ({
   levels: [level(76, 76.2, 0), level(86, 86.2, 0), level(96, 93.9, 2.3), level(102, 94.5, 7.7)],
   onset: {
     status: "found",
-    nominal_dB: 92.8,
-    low_dB: 92.1,
-    high_dB: 93.4,
+    nominal_dB: 92.6,
+    low_dB: 91.9,
+    high_dB: 93.2,
     spl_dB: 92.8,
     ceiling_dB: 94.5,
   },
@@ -79,12 +79,12 @@ describe("finding of a band", () => {
     [
       "an onset with what the last decibels of drive gave",
       {},
-      "Output begins to fall behind at 92.8 dB (90 % interval 92.1 to 93.4). To the 102 dB run, 9.2 dB more drive gave 1.7 dB more sound.",
+      "Output begins to fall behind at 92.8 dB (90 % interval 92.1 to 93.4), at run level 92.6 dB. To the 102 dB run, 9.4 dB more drive gave 1.7 dB more sound.",
     ],
     [
       "an output that falls",
       { levels: [level(76, 76, 0), level(102, 92.1, 9.9)] },
-      "Output begins to fall behind at 92.8 dB (90 % interval 92.1 to 93.4). To the 102 dB run, 9.2 dB more drive gave 0.7 dB less sound.",
+      "Output begins to fall behind at 92.8 dB (90 % interval 92.1 to 93.4), at run level 92.6 dB. To the 102 dB run, 9.4 dB more drive gave 0.7 dB less sound.",
     ],
     [
       "not reached, without a loss worth naming",

@@ -57,17 +57,20 @@ export function toFindingSentence(band: Band): Segment[] {
   }
 }
 
+/** At the band's own level where SPL holds, with the run level beside it; else at the run level alone. */
 function toOnsetWords(band: Band): Segment[] {
-  const { nominal_dB, low_dB, high_dB } = band.onset;
+  const { nominal_dB, low_dB, high_dB, spl_dB } = band.onset;
   if (nominal_dB === null) return [];
+  const shiftDb = spl_dB === null ? 0 : spl_dB - nominal_dB;
   const interval =
     low_dB === null || high_dB === null
       ? ""
-      : ` (90 % interval ${formatNumber(low_dB)} to ${formatNumber(high_dB)})`;
+      : ` (90 % interval ${formatNumber(low_dB + shiftDb)} to ${formatNumber(high_dB + shiftDb)})`;
+  const run = spl_dB === null ? "" : `, at run level ${formatDb(nominal_dB)}`;
   return [
-    { text: "Output begins to fall behind at " },
-    { text: formatDb(nominal_dB), strong: true },
-    { text: `${interval}.` },
+    { text: `Output begins to fall behind at ${spl_dB === null ? "run level " : ""}` },
+    { text: formatDb(nominal_dB + shiftDb), strong: true },
+    { text: `${interval}${run}.` },
   ];
 }
 
