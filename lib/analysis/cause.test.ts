@@ -103,6 +103,27 @@ describe("causes of a device that shows one law in every band", () => {
   });
 });
 
+describe("an overload whose H3 follows its own output", () => {
+  // An arctangent loses gradually and its H3 is 1/3 of the amplitude lost, at any level.
+  const law = (b: number) => overload("arctangent", 100 + 3 * b);
+
+  it("is told by the amount of odd distortion, and by its neighbours where that is small", () => {
+    const { bands } = assess(law);
+    const losing = bands.filter(({ onset }) => onset.status === "found");
+    expect(losing.length).toBeGreaterThan(3);
+    expect(causesOf(losing)).toEqual(["overload"]);
+    expect(losing[0]?.cause_inferred).toBe(false);
+    expect(losing.at(-1)?.cause_inferred).toBe(true);
+  });
+
+  it("is not taken for one where the same distortion comes with a sudden loss", () => {
+    const limiter = gainRider(100.5, 0, 0);
+    const third: Device["harmonic"] = (_b, drive, order) =>
+      order === 3 ? 0.06 * 10 ** ((2 * (drive - limiter.lossDb(drive) - 102)) / 20) : 0;
+    expect(causesOf(assess(() => limiter, { harmonic: third }).bands)).not.toContain("overload");
+  });
+});
+
 describe("causes that need more than one band", () => {
   it("names an equaliser: bass withdrawn from the lowest step on, the mids free", () => {
     const { bands } = assess((b) => (b < 5 ? gainRider(70, 0, 0.7) : linear));

@@ -34,6 +34,23 @@ describe("compression of a band", () => {
   });
 });
 
+describe("the gain that losses are counted from", () => {
+  it("is not pulled down by a small loss in a run of little noise", () => {
+    // 0.1 dB are lost in the 96 dB run already, which is ten times quieter in noise than those below it.
+    const knee = {
+      lossDb: (_b: number, drive: number) => ({ 76: 0, 86: 0, 96: 0.1, 102: 0.4 })[drive] ?? 0,
+    };
+    const series = measuredSeries({
+      device: knee,
+      runs: plainRuns(76, 86, 96, 102),
+      noiseDb: (_b, levelDb) => (levelDb > 90 ? 0.002 : 0.02),
+    });
+    const { bands } = assessSeries(series, settings);
+    expect(bands.map(({ onset }) => onset.status)).toEqual(Array(27).fill("found"));
+    expect(bands[4]?.onset.nominal_dB).toBeGreaterThan(99.5);
+  });
+});
+
 describe("repeats", () => {
   const runs: RunPlan[] = [1, 2, 3].flatMap((take) =>
     [76, 86, 96, 102].map((levelDb) => ({ levelDb, file: `${levelDb}-${take}.wav` })),

@@ -4,6 +4,7 @@
  */
 import { harmonicsOf, type LevelGroup, type MeanHarmonic } from "./compression";
 import type { Detection } from "./onset/detect";
+import { sayNumber } from "./say";
 
 /** An overload loses level only with this much odd distortion. */
 export const OVERLOAD_ODD_RATIO = 0.2;
@@ -17,9 +18,16 @@ const LARGEST_GROWTH_NEEDED_DB = 1;
  * tanh and algebraic laws grow only by about half their loss beyond the output.
  */
 const MEMORYLESS_ODD_RATIO = 0.3;
-/** From this loss, dB, such a ratio means 6 % and more of odd distortion and decides alone: an arctangent's H3 follows its own output. */
-const TELLING_LOSS_DB = 2;
+/**
+ * With such a ratio, this much odd distortion (amplitude re the fundamental, referred to the input) decides without
+ * growth: an arctangent's H3, and that of many suspensions, follows its own output. No sound driver has it of its own.
+ */
+const TELLING_ODD = 0.045;
+/** A memoryless loss grows no faster than by this factor over the square of the drive; a limiter's starts suddenly. */
+const GRADUAL_SHARE = 0.6;
 const GROWTH_WITHOUT_LOSS_DB = 0.5;
+/** A component called noise may stand this far over its floor, dB. */
+const HIDDEN_OVER_FLOOR_DB = 6;
 /** Standard uncertainty of a component in dB is this times 10^(-SNR/20). */
 const AMPLITUDE_SIGMA_DB = 20 / Math.LN10 / Math.SQRT2;
 
@@ -84,10 +92,24 @@ export function weighDistortion(
   }
   if (hasLoss && oddRatio < OVERLOAD_ODD_RATIO)
     return { verdict: "no overload", ...figures, reason: "" };
-  if (memoryless && measured && lossDb >= TELLING_LOSS_DB)
+  const gradual = memoryless && measured && isGradual(groups, detection);
+  if (gradual && oddRatio * share >= TELLING_ODD) {
     return { verdict: "overload", ...figures, reason: "" };
+  }
   const grew = third.quality !== "noise" && growthDb > growthNeededDb;
+  if (gradual && !grew) {
+    const reason = `the odd harmonics (${sayNumber(oddRatio, 2)} of the amplitude lost) suit an overload but grew no faster than the output`;
+    return { verdict: "no verdict", ...figures, reason };
+  }
   return { verdict: grew ? "overload" : "no overload", ...figures, reason: "" };
+}
+
+/** Whether the run below the top one has lost as much as a law that begins with the square of the drive asks. */
+function isGradual(groups: readonly LevelGroup[], { lossDb, top }: Detection): boolean {
+  const below = [...lossDb.keys()].findLast((k) => k < top && Number.isFinite(lossDb[k]));
+  if (below === undefined) return false;
+  const stepDb = (groups[top]?.driveDb ?? Number.NaN) - (groups[below]?.driveDb ?? Number.NaN);
+  return (lossDb[below] ?? 0) >= GRADUAL_SHARE * (lossDb[top] ?? 0) * 10 ** (-stepDb / 10);
 }
 
 const sum = (values: number[]): number => values.reduce((total, value) => total + value, 0);
@@ -125,15 +147,18 @@ function growthOf(
   const lossAt = (k: number): number => detection.lossDb[k] ?? Number.NaN;
   const topDriveDb = groups[detection.top]?.driveDb ?? Number.NaN;
   let best = { growthDb: Number.NaN, sigmaDb: topSigmaDb };
+  if (third.quality === "noise") return best;
   for (const [k, group] of groups.slice(0, detection.top).entries()) {
     const own = harmonicsOf(group, bandIndex).find(
       ({ order, quality }) => order === 3 && quality !== null,
     );
     const outputStepDb = topDriveDb - group.driveDb - (lossAt(detection.top) - lossAt(k));
     if (!own || !Number.isFinite(outputStepDb)) continue;
-    // In the noise, the noise itself makes the prediction: the growth is then a safe lower bound.
+    // In the noise, the upper bound of what may hide there makes the prediction: the growth is a safe lower bound.
     const inNoise = own.quality === "noise" || !(own.ratio > own.floorRatio);
-    const startDb = 10 * Math.log10(inNoise ? own.floorRatio : own.ratio);
+    const startDb = inNoise
+      ? 10 * Math.log10(own.floorRatio) + HIDDEN_OVER_FLOOR_DB
+      : 10 * Math.log10(own.ratio);
     const growthDb = topDb - (startDb + 2 * outputStepDb);
     const sigmaDb = Math.hypot(topSigmaDb, inNoise ? 0 : sigmaOf(own));
     if (!(growthDb - 3 * sigmaDb <= best.growthDb - 3 * best.sigmaDb)) best = { growthDb, sigmaDb };

@@ -85,10 +85,10 @@ export function readSlope(groups: readonly LevelGroup[], onset: BandOnset): Slop
   if (lossDb < SHOWS_SLOPE_LOSS_DB) {
     return {
       kind: "unclear",
-      words: `one run with ${sayDb(lossDb)} lost shows neither ceiling nor slope`,
+      words: `${sayDb(lossDb)} lost in the ${run} run shows neither ceiling nor slope`,
     };
   }
-  const lost = `${sayDb(lossDb)} lost in the ${run} run, none before it`;
+  const lost = `${sayDb(lossDb)} lost in the ${run} run, no onset before it`;
   if (flat >= SURE)
     return {
       kind: "ceiling",

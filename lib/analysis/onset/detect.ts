@@ -4,6 +4,8 @@ import type { BandGains } from "./likelihood";
 /** A loss is one from here, dB, and from three standard uncertainties. */
 const ACTIVE_LOSS_DB = 0.12;
 const ACTIVE_SIGMAS = 3;
+/** Keeps a loud, quiet-noised run with a small loss of its own from outweighing the runs below it, dB. */
+const EVEN_SIGMA_DB = 0.02;
 
 export interface Detection {
   /** Mean gain of the lowest runs that agree, dB, and its standard uncertainty. */
@@ -77,7 +79,7 @@ function weightedMean(gains: BandGains, levels: number[]): { value: number; sigm
   let weightSum = 0;
   let sum = 0;
   for (const k of levels) {
-    const weight = 1 / Math.max(at(gains.sigmaDb, k) ** 2, 1e-8);
+    const weight = 1 / (at(gains.sigmaDb, k) ** 2 + EVEN_SIGMA_DB ** 2);
     weightSum += weight;
     sum += weight * at(gains.gainDb, k);
   }

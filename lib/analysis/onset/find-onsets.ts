@@ -66,13 +66,22 @@ export function findOnsets(
   );
   drafts.forEach((draft, b) => {
     const likelihood = likelihoods[b];
-    if (likelihood)
-      draft.posterior = computePosterior(
-        likelihood,
-        priorOf(tables, draft.overload, pooled[b] ?? null),
-      );
+    if (!likelihood) return;
+    const prior = priorOf(tables, draft.overload, pooled[b] ?? null);
+    draft.posterior = computePosterior(likelihood, prior);
+    draft.detection = draft.detection && countFromFit(draft.detection, draft.posterior);
   });
   return drafts.map((draft) => conclude(draft, groups));
+}
+
+/**
+ * Losses counted from the gain that the laws give. A foot below the first active run lowers the mean of the runs
+ * that agree; where not even the second run is free, the fit's gain is an extrapolation and is not taken.
+ */
+function countFromFit(detection: Detection, { gainDb }: OnsetPosterior): Detection {
+  if (detection.firstActive < 2) return detection;
+  const liftDb = gainDb - detection.gainDb;
+  return { ...detection, gainDb, lossDb: detection.lossDb.map((lossDb) => lossDb + liftDb) };
 }
 
 function draftBand(

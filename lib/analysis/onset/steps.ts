@@ -22,6 +22,8 @@ const LIMITED_OVER_CLUSTER_DB = 0.5;
 const FEWEST_BANDS = 4;
 const SMALLEST_SHARE = 0.3;
 const ALL_SHARE = 0.9;
+/** So many bands at zero at once are no coincidence of a step error with a loss. */
+const MOST_SHARE = 0.5;
 
 export interface StepReading {
   group: LevelGroup;
@@ -77,7 +79,7 @@ function readStep(group: LevelGroup, reference: LevelGroup, bands: number): Step
   const size = Math.abs(offsetDb);
   const told =
     size >= TOLD_OFFSET_DB && size <= LARGEST_STEP_ERROR_DB && (separable || share >= ALL_SHARE);
-  const exact = size < TOLD_OFFSET_DB && (separable || share >= ALL_SHARE);
+  const exact = size < TOLD_OFFSET_DB && (separable || share >= MOST_SHARE);
   const taken = separable && size >= TOLD_OFFSET_DB && size <= LARGEST_TAKEN_DB;
   let sigmaDb = NOMINAL_STEP_SIGMA_DB;
   if (taken) sigmaDb = 2 * READ_STEP_SIGMA_DB;
