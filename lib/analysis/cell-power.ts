@@ -1,4 +1,5 @@
 /** Power of one order of the response in the cells of the grid. */
+import { planComplexFft, type ComplexFft } from "./fft/complex-fft";
 import { planRealFft, toFftSize, type RealFft } from "./fft/real-fft";
 import { LogTable, meanUniformInLog } from "./log-means";
 import type { OrderWindow } from "./order-windows";
@@ -7,12 +8,20 @@ import type { OrderWindow } from "./order-windows";
 export class Plans {
   readonly logs = new LogTable();
   readonly #fft = new Map<number, RealFft>();
+  readonly #complex = new Map<number, ComplexFft>();
   readonly #power = new Map<number, Float64Array>();
 
   /** The plan of a size, made once. */
   fft(size: number): RealFft {
     const plan = this.#fft.get(size) ?? planRealFft(size);
     this.#fft.set(size, plan);
+    return plan;
+  }
+
+  /** The complex plan of a size, made once. */
+  complex(size: number): ComplexFft {
+    const plan = this.#complex.get(size) ?? planComplexFft(size);
+    this.#complex.set(size, plan);
     return plan;
   }
 

@@ -4,7 +4,7 @@
  */
 import { AnalysisError } from "../errors/app-error";
 import type { Plans } from "./cell-power";
-import { planComplexFft, type ComplexFft } from "./fft/complex-fft";
+import type { ComplexFft } from "./fft/complex-fft";
 import { toFftSize, type RealFft } from "./fft/real-fft";
 
 export interface SweepInUse {
@@ -86,8 +86,8 @@ export function createDeconvolver(
   const lastBin = Math.floor((highHz * size) / sweep.rateHz);
   const count = lastBin - firstBin + 1;
   const zooms: Zooms = {
-    whole: planComplexFft(toFftSize(2 * count)),
-    part: planComplexFft(toFftSize(2 * toPartBins(count))),
+    whole: plans.complex(toFftSize(2 * count)),
+    part: plans.complex(toFftSize(2 * toPartBins(count))),
   };
   const kept = {
     first: firstBin,
@@ -195,10 +195,9 @@ function toLagPower(kept: Float64Array, from: number, to: number, zoom: ComplexF
     bins[2 * (k - from) + 1] = -weight * kept[2 * k + 1]!;
   }
   const lag = zoom.transform(bins);
-  return Float64Array.from(
-    { length: zoom.size },
-    (_, m) => lag[2 * m]! ** 2 + lag[2 * m + 1]! ** 2,
-  );
+  const power = new Float64Array(zoom.size);
+  for (let m = 0; m < power.length; m += 1) power[m] = lag[2 * m]! ** 2 + lag[2 * m + 1]! ** 2;
+  return power;
 }
 
 /** Index of the largest value. */

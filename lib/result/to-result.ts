@@ -69,34 +69,48 @@ const AS_STATED = new Set([
 const DIGITS = 4;
 const FREQUENCY_DIGITS = 6;
 
-/** Rounds by the unit in the name; NaN and infinities become null. */
+type Round = (value: number) => number;
+
+/** Adding zero turns -0 into 0. */
+const toSteps =
+  (perUnit: number): Round =>
+  (value) =>
+    Math.round(value * perUnit) / perUnit + 0;
+const toDigits =
+  (digits: number): Round =>
+  (value) =>
+    Number(value.toPrecision(digits));
+const toHundredths = toSteps(100);
+
+/** How a number is rounded, by the unit in its name. */
+function toRounding(key: string): Round {
+  if (key === "drive_dB") return toSteps(1000);
+  // Never "without uncertainty".
+  if (key === "uncertainty_dB") return (value) => Math.max(0.01, toHundredths(value));
+  if (/_dB(?:A|FS)?$/.test(key)) return toHundredths;
+  if (key.endsWith("_Hz")) return toDigits(FREQUENCY_DIGITS);
+  if (key.endsWith("_s")) return toSteps(1e6);
+  return key.endsWith("_ppm") ? toSteps(10) : toDigits(DIGITS);
+}
+
+/** NaN and infinities become null: at this border "no value" gets its name. */
 function roundFor<T>(key: string, value: T): T {
   return round(key, value) as T;
 }
 
 function round(key: string, value: unknown): unknown {
   if (AS_STATED.has(key)) return value;
-  if (typeof value === "number") return roundNumber(key, value);
-  if (Array.isArray(value)) return value.map((item: unknown) => round(key, item));
-  if (value !== null && typeof value === "object") {
-    return Object.fromEntries(
-      Object.entries(value).map(([name, item]: [string, unknown]) => [name, roundFor(name, item)]),
+  if (typeof value === "number") return Number.isFinite(value) ? toRounding(key)(value) : null;
+  if (Array.isArray(value)) {
+    const rounding = toRounding(key);
+    return value.map((item: unknown) =>
+      typeof item === "number" ? (Number.isFinite(item) ? rounding(item) : null) : round(key, item),
     );
+  }
+  if (value !== null && typeof value === "object") {
+    const rounded: Record<string, unknown> = {};
+    for (const [name, item] of Object.entries(value)) rounded[name] = round(name, item);
+    return rounded;
   }
   return value;
 }
-
-function roundNumber(key: string, value: number): number | null {
-  if (!Number.isFinite(value)) return null;
-  if (key === "drive_dB") return toSteps(value, 1000);
-  if (key === "uncertainty_dB") return Math.max(0.01, toSteps(value, 100));
-  if (/_dB(A|FS)?$/.test(key)) return toSteps(value, 100);
-  if (key.endsWith("_Hz")) return Number(value.toPrecision(FREQUENCY_DIGITS));
-  if (key.endsWith("_s")) return toSteps(value, 1e6);
-  if (key.endsWith("_ppm")) return toSteps(value, 10);
-  return Number(value.toPrecision(DIGITS));
-}
-
-/** Adding zero turns -0 into 0. */
-const toSteps = (value: number, perUnit: number): number =>
-  Math.round(value * perUnit) / perUnit + 0;
