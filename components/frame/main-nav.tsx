@@ -7,6 +7,8 @@ import { joinClasses } from "../parts/join-classes";
 export interface NavItem {
   href: string;
   label: string;
+  /** Addresses that belong to the same room. */
+  also?: readonly string[];
 }
 
 /** The rooms of the lab; the one that the address lies in is marked. */
@@ -15,7 +17,9 @@ export function MainNav({ items }: { items: readonly NavItem[] }) {
   return (
     <nav aria-label="Main" className="flex h-full gap-[22px] self-stretch">
       {items.map((item) => {
-        const here = path === item.href || path.startsWith(`${item.href}/`);
+        const here = [item.href, ...(item.also ?? [])].some(
+          (room) => path === room || path.startsWith(`${room}/`),
+        );
         return (
           <Link
             key={item.href}

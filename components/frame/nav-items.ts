@@ -7,6 +7,6 @@ export function toNavItems(roles: readonly Role[]): NavItem[] {
   return [
     { href: "/series", label: "Series" },
     { href: "/loudspeakers", label: "Loudspeakers" },
-    ...(may(roles, "administer") ? [{ href: "/members", label: "Members" }] : []),
+    { href: "/members", label: "Lab", also: ["/lab"] },
   ];
 }

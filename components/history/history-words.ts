@@ -2,14 +2,17 @@
 import type { HistoryEvent } from "@/lib/api/series";
 import { toClock, toLongDay } from "@/lib/time/time-words";
 
-export interface HistoryDay {
+export interface HistoryDay<Event> {
   /** "12 May 2026" */
   day: string;
-  events: { event: HistoryEvent; time: string }[];
+  events: { event: Event; time: string }[];
 }
 
-export function toHistoryDays(events: readonly HistoryEvent[], timeZone: string): HistoryDay[] {
-  const days: HistoryDay[] = [];
+export function toHistoryDays<Event extends { at: string }>(
+  events: readonly Event[],
+  timeZone: string,
+): HistoryDay<Event>[] {
+  const days: HistoryDay<Event>[] = [];
   for (const event of events) {
     const day = toLongDay(event.at, timeZone);
     const time = toClock(event.at, timeZone);
@@ -21,7 +24,7 @@ export function toHistoryDays(events: readonly HistoryEvent[], timeZone: string)
 }
 
 /** "Ines Varley", "Ines Varley, by token bench", "Tidemark" where a worker did it. */
-export function toWhoWords(event: HistoryEvent): string {
+export function toWhoWords(event: Pick<HistoryEvent, "who" | "by_token">): string {
   const who = event.who?.name ?? "Tidemark";
   return event.by_token === null ? who : `${who}, by token ${event.by_token}`;
 }

@@ -2,6 +2,7 @@ import {
   useId,
   type InputHTMLAttributes,
   type ReactNode,
+  type Ref,
   type SelectHTMLAttributes,
   type TextareaHTMLAttributes,
 } from "react";
@@ -73,6 +74,7 @@ interface TextInputProps extends Omit<InputHTMLAttributes<HTMLInputElement>, "si
   size?: ControlSize;
   /** Figures are set in the figure type: numbers, serials, file names. */
   figures?: boolean;
+  ref?: Ref<HTMLInputElement>;
 }
 
 export function TextInput({ size = "form", figures = false, className, ...rest }: TextInputProps) {

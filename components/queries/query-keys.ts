@@ -1,6 +1,7 @@
 /** Every key of the browser's cache, once: what a fetch is stored under and what an act makes stale. */
 import type { z } from "zod";
 import type { seriesQuerySchema } from "@/lib/api/series";
+import type { TrailAbout } from "@/lib/labs/trail-about";
 
 export type SeriesListQuery = z.input<typeof seriesQuerySchema>;
 
@@ -15,4 +16,10 @@ export const queryKeys = {
   loudspeakers: ["loudspeakers"],
   loudspeakerList: (search: string) => ["loudspeakers", "list", search],
   loudspeaker: (loudspeakerId: string) => ["loudspeakers", loudspeakerId],
+  members: ["members"],
+  invitations: ["invitations"],
+  tokens: ["tokens"],
+  lab: ["lab"],
+  trail: (about: TrailAbout | null) => ["trail", about],
+  sessions: ["sessions"],
 } as const;

@@ -1,4 +1,6 @@
 /** The audit trail: written in the transaction of the act, never changed. */
+import { sql } from "kysely";
+import type { TrailRooms } from "../../lib/labs/trail-about";
 import type { Trx } from "../client";
 import type { LabScope } from "../in-lab";
 
@@ -57,11 +59,17 @@ export async function listSeriesEvents(
 export async function listLabEvents(
   trx: Trx,
   labId: string,
-  page: { before?: number; limit: number },
+  page: { before?: number | undefined; limit: number; about?: TrailRooms | undefined },
 ): Promise<AuditRow[]> {
-  const events = eventsOf(trx, labId).limit(page.limit);
-  const { before } = page;
-  return (before === undefined ? events : events.where("e.id", "<", before)).execute();
+  const { before, about } = page;
+  const room = sql<string>`split_part(e.act, '.', 1)`;
+  return eventsOf(trx, labId)
+    .limit(page.limit)
+    .$if(before !== undefined, (events) => events.where("e.id", "<", before ?? 0))
+    .$if(about !== undefined, (events) =>
+      events.where(room, about?.only === false ? "not in" : "in", about?.rooms ?? []),
+    )
+    .execute();
 }
 
 function eventsOf(trx: Trx, labId: string) {

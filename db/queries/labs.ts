@@ -16,6 +16,12 @@ export async function getLab(trx: Trx, labId: string): Promise<LabRow> {
   return row;
 }
 
+/** The same, held against other changes until the transaction ends. @throws AppError "not-found" */
+export async function lockLab(trx: Trx, labId: string): Promise<LabRow> {
+  await trx.selectFrom("labs").select("id").where("id", "=", labId).forUpdate().execute();
+  return getLab(trx, labId);
+}
+
 /** Labs of the account that the transaction carries, by name. */
 export async function listLabsOfAccount(
   trx: Trx,

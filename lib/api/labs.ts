@@ -1,5 +1,7 @@
 import { z } from "zod";
 import { labSettingsSchema } from "../labs/settings-schema";
+import { TRAIL_ABOUT } from "../labs/trail-about";
+import { parseTimeZone } from "../time/time-words";
 import { idSchema, pageQuery, personSchema, timeSchema } from "./common";
 import { defineOperation } from "./operation";
 
@@ -12,9 +14,12 @@ export const labSchema = z.object({
 });
 export type Lab = z.infer<typeof labSchema>;
 
-export const timeZoneSchema = z.string().max(60).refine(isTimeZone, {
-  error: "Enter a time zone such as Europe/Helsinki or UTC.",
-});
+export const timeZoneSchema = z
+  .string()
+  .max(60)
+  .refine((name) => parseTimeZone(name) !== null, {
+    error: "Enter a time zone such as Europe/Helsinki or UTC.",
+  });
 
 export const getLab = defineOperation({
   id: "getLab",
@@ -38,10 +43,12 @@ export const updateLab = defineOperation({
     time_zone: timeZoneSchema.optional(),
     /** Replaces all settings; what is left out takes its default. */
     settings: labSettingsSchema.optional(),
+    /** What the caller saw before the change; refused where it is so no more. */
+    was: labSchema.pick({ name: true, time_zone: true, settings: true }).optional(),
   }),
   status: 200,
   answer: labSchema,
-  errors: ["request.invalid"],
+  errors: ["request.invalid", "conflict.changed"],
 });
 
 export const trailEventSchema = z.object({
@@ -67,6 +74,8 @@ export const listTrail = defineOperation({
   query: z.strictObject({
     /** Events older than this one. */
     before: z.coerce.number().int().min(1).optional(),
+    /** Only events of this kind. */
+    about: z.enum(TRAIL_ABOUT).optional(),
     page_size: pageQuery.page_size,
   }),
   status: 200,
@@ -75,11 +84,3 @@ export const listTrail = defineOperation({
 });
 
 export const labOperations = [getLab, updateLab, listTrail] as const;
-
-function isTimeZone(name: string): boolean {
-  try {
-    return new Intl.DateTimeFormat("en", { timeZone: name }).resolvedOptions().timeZone !== "";
-  } catch {
-    return false;
-  }
-}

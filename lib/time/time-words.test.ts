@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { toClock, toDay, toLongDay, toMoment } from "./time-words";
+import { parseTimeZone, toClock, toDay, toLongDay, toMoment } from "./time-words";
 
 const now = new Date("2026-05-12T10:00:00Z");
 
@@ -49,4 +49,13 @@ describe("toClock and toLongDay", () => {
   ])("%s in %s", (at, zone, day, clock) => {
     expect([toLongDay(at, zone), toClock(at, zone)]).toEqual([day, clock]);
   });
+});
+
+it.each([
+  ["Europe/Helsinki", "Europe/Helsinki"],
+  ["UTC", "UTC"],
+  ["Europe/Helsinky", null],
+  ["", null],
+])("parseTimeZone of %j", (name, expected) => {
+  expect(parseTimeZone(name)).toBe(expected);
 });

@@ -107,3 +107,13 @@ export function toMoment(at: string | Date, now: Date | null, timeZone: string):
   const near = { "-1": "yesterday", "0": "today", "1": "tomorrow" }[String(away)];
   return near === undefined ? toDay(at, now, timeZone) : `${near} ${then.clock}`;
 }
+
+/** @returns the name as given where it is a time zone, else null. */
+export function parseTimeZone(name: string): string | null {
+  try {
+    const known = new Intl.DateTimeFormat("en-GB", { timeZone: name }).resolvedOptions();
+    return name === "" || known.timeZone === "" ? null : name;
+  } catch {
+    return null;
+  }
+}

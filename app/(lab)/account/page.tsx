@@ -1,0 +1,11 @@
+import type { Metadata } from "next";
+import { getPageAccount } from "@/app/_server/page-caller";
+import { AccountScreen } from "@/components/account/account-screen";
+import { PASSWORD_MIN } from "@/lib/account/passwords";
+
+export const metadata: Metadata = { title: "Account" };
+
+export default async function AccountPage() {
+  await getPageAccount();
+  return <AccountScreen passwordMin={PASSWORD_MIN} />;
+}

@@ -1,0 +1,11 @@
+import type { Metadata } from "next";
+import { getPageCaller } from "@/app/_server/page-caller";
+import { MembersScreen } from "@/components/members/members-screen";
+import { may } from "@/lib/roles/roles";
+
+export const metadata: Metadata = { title: "Members" };
+
+export default async function MembersPage() {
+  const caller = await getPageCaller();
+  return <MembersScreen mayAdminister={may(caller.roles, "administer")} />;
+}
