@@ -24,7 +24,7 @@ export function LabChoices() {
   }
   return (
     <>
-      <ul className="border-y border-rule">
+      <ul className="-mt-2.5">
         {labs.map((choice) => (
           <li
             key={choice.id}

@@ -30,7 +30,7 @@ export function SessionList() {
   }
   return (
     <>
-      <ul className="border-y border-rule">
+      <ul className="-mt-2.5">
         {rows.map((session) => (
           <SessionRow
             key={session.id}
