@@ -2,6 +2,7 @@
 
 import { createContext, use, type ReactNode } from "react";
 import type { SessionView } from "@/lib/api/session";
+import { may, type Capability } from "@/lib/roles/roles";
 import { NO_LAB_ZONE } from "@/lib/time/time-words";
 
 const LabSessionContext = createContext<SessionView | null>(null);
@@ -26,3 +27,6 @@ export function useLabSession(): SessionView {
 
 /** Time zone of the lab: every time on the screen is told in it. */
 export const useLabZone = (): string => useLabSession().lab?.time_zone ?? NO_LAB_ZONE;
+
+/** Whether the present roles allow it; the server asks again. */
+export const useMay = (capability: Capability): boolean => may(useLabSession().roles, capability);

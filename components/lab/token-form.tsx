@@ -63,7 +63,7 @@ export function TokenForm() {
     );
   }
   return (
-    <Sheet className="px-[22px] pt-[18px] pb-[22px]">
+    <Sheet>
       <h2 id="new-token">New token</h2>
       <form
         aria-labelledby="new-token"

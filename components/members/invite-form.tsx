@@ -61,7 +61,7 @@ export function InviteForm() {
     );
   }
   return (
-    <Sheet className="px-[22px] pt-[18px] pb-[22px]">
+    <Sheet>
       <h2 id="invite">Invite somebody</h2>
       <form
         aria-labelledby="invite"

@@ -5,7 +5,7 @@ import { ROLE_SENTENCES } from "./role-words";
 /** What each role may do, for those who do not give roles. */
 export function RoleKey() {
   return (
-    <Sheet className="px-[22px] pt-[18px] pb-[22px]">
+    <Sheet>
       <h2>What each role may do</h2>
       <dl className="mt-2 grid gap-2.5">
         {ROLES.map((role) => (

@@ -1,5 +1,12 @@
 import type { ReactNode } from "react";
 
+/** A sheet: side notes and short forms lie on it. */
+export function Sheet({ children }: { children: ReactNode }) {
+  return (
+    <div className="border border-rule bg-sheet px-[22px] pt-[18px] pb-[22px]">{children}</div>
+  );
+}
+
 interface FormSectionProps {
   title: string;
   children: ReactNode;

@@ -12,13 +12,15 @@ import { GET as getLab, PATCH as patchLab } from "../../../app/api/v1/lab/route"
 import { DELETE as removeMember } from "../../../app/api/v1/members/[accountId]/route";
 import { PUT as putRoles } from "../../../app/api/v1/members/[accountId]/roles/route";
 import { GET as listMembers } from "../../../app/api/v1/members/route";
+import { POST as createToken } from "../../../app/api/v1/tokens/route";
 import { GET as listTrail } from "../../../app/api/v1/trail/route";
 import { createAttempts, TRIES_PER_ADDRESS } from "../../../app/_server/attempts";
 import { getPool } from "../../../app/_server/database";
 import { signIn } from "../../../app/_server/sign-in";
 import { inLab } from "../../../db/in-lab";
 import { hashPassword } from "../../../lib/account/passwords";
-import type { TrailEvent } from "../../../lib/api/labs";
+import type { Lab as LabAnswer, TrailEvent } from "../../../lib/api/labs";
+import { TRAIL_ABOUT } from "../../../lib/labs/trail-about";
 import { createLab, inviteToLab } from "../../../scripts/labs/labs";
 import { type Lab, makeLab, makeMember } from "../../db/support";
 import { call, type Credentials, problemCode, openServer, openSession, PUBLIC_URL } from "./server";
@@ -320,6 +322,45 @@ describe("the lab", () => {
     const answer = await call(patchLab, "PATCH", admin, { body });
     expect(problemCode(answer)).toBe("request.invalid");
     expect(answer.body).toMatchObject({ errors: [{ path }] });
+  });
+
+  it("refuses a change over one that the caller has not seen, and leaves the trail alone", async () => {
+    const seen = (await call(getLab, "GET", admin)).body as LabAnswer;
+    const { name, time_zone, settings } = seen;
+    const was = { name, time_zone, settings };
+    const first = await call(patchLab, "PATCH", admin, { body: { name: "Own A", was } });
+    expect(first.body).toEqual({ ...seen, name: "Own A" });
+    const late = await call(patchLab, "PATCH", admin, { body: { name: "Own B", was } });
+    expect(late.status).toBe(409);
+    expect(problemCode(late)).toBe("conflict.changed");
+    const onTop = await call(patchLab, "PATCH", admin, {
+      body: { name: "Own B", was: { ...was, name: "Own A" } },
+    });
+    expect(onTop.body).toEqual({ ...seen, name: "Own B" });
+    const trail = (await call(listTrail, "GET", admin, { query: "?about=lab&page_size=2" })).body;
+    expect(trail).toMatchObject({
+      events: [{ details: { name: "Own B" } }, { details: { name: "Own A" } }],
+    });
+  });
+
+  it("tells each kind of event apart, and leaves none out", async () => {
+    const body = { name: "bench", roles: ["admin"] };
+    expect((await call(createToken, "POST", admin, { body })).status).toBe(201);
+    const actsOf = async (query: string): Promise<string[]> => {
+      const answer = await call(listTrail, "GET", admin, { query: `?page_size=100${query}` });
+      const { events, more } = answer.body as { events: TrailEvent[]; more: boolean };
+      expect(more).toBe(false);
+      return events.map((event) => event.act);
+    };
+    const all = await actsOf("");
+    const kinds = await Promise.all(TRAIL_ABOUT.map((about) => actsOf(`&about=${about}`)));
+    expect(kinds.flat().toSorted()).toEqual(all.toSorted());
+    const rooms = kinds.map((acts) =>
+      [...new Set(acts.map((act) => act.split(".")[0]))].toSorted(),
+    );
+    expect(rooms.slice(0, 4)).toEqual([["account"], ["invitation", "member"], ["token"], ["lab"]]);
+    const refused = await call(listTrail, "GET", admin, { query: "?about=weather" });
+    expect(problemCode(refused)).toBe("request.invalid");
   });
 
   it("shows its own trail and no other lab's", async () => {
