@@ -3,6 +3,7 @@ import type { ShortTermCause } from "../series/vocabulary";
 import type { LevelGroup } from "./compression";
 import { findEqualiser } from "./equaliser";
 import type { BandOnset } from "./onset/find-onsets";
+import { TURBULENT_PORT } from "./onset/shapes";
 import { findPorts, type PortFinding } from "./port";
 import { sayDb, sayHz, sayNumber } from "./say";
 import { CEILING_SLOPE, readSlope, stepSlopes } from "./slope";
@@ -78,7 +79,9 @@ function nameCause(context: Context, onset: BandOnset, b: number): BandCause {
     );
   }
   const equaliser = findEqualiser(groups, series.bands, onsets, b);
-  if (equaliser !== null) return finding("equaliser", equaliser);
+  // Under its onset a port, too, gives way from the lowest step on: by its own law, round its tuning.
+  const isPortLaw = port.found && onset.posterior?.law === TURBULENT_PORT;
+  if (equaliser !== null && !isPortLaw) return finding("equaliser", equaliser);
   if (port.found && reading.kind !== "ceiling") return finding("port", port.reason);
   if (onset.overload === "no verdict") {
     const why = onset.distortion?.reason ?? "the distortion is not known";

@@ -7,6 +7,7 @@ import {
   gainRidingExcessDb,
   gainRidingLossDb,
   overloadLossDb,
+  turbulentPortLossDb,
   twoPathExcessDb,
   twoPathLossDb,
   type OverloadLaw,
@@ -19,7 +20,7 @@ export type Family = "gain riding" | "two paths" | "overload";
 
 export interface Shape {
   family: Family;
-  /** As the result names it: "hard limiter", "soft knee", "two paths", "hard clip", "tanh", "cubic", ... */
+  /** As the result names it: "hard limiter", "soft knee", "two paths", "turbulent port", "hard clip", "tanh", ... */
   law: string;
   /** Knee width, dB, and slope above the knee; NaN where the family has none. */
   kneeDb: number;
@@ -40,6 +41,12 @@ const SLOPES = [
 const SHARES = [
   0.1, 0.15, 0.2, 0.25, 0.3, 0.35, 0.4, 0.45, 0.5, 0.55, 0.6, 0.65, 0.7, 0.75, 0.8, 0.85, 0.9, 0.95,
 ];
+/** Name of the law of a port. */
+export const TURBULENT_PORT = "turbulent port";
+/** Around the tuning the port has most of the sound. */
+const PORT_SHARES = [0.4, 0.6, 0.8, 1];
+/** Where in the table its 1/3 dB lies near drive 0. */
+const PORT_SHIFT_DB = -26;
 const HARD_KNEE_PRIOR = 0.35;
 const KNEE_DECAY_DB = 8;
 const SLOPE_SOFTENING = 0.05;
@@ -49,7 +56,11 @@ const CLIPPED_SHARE_PRIOR = 0.01;
 
 /** All shapes, in a fixed order: gain riding, two paths, overload. */
 export function buildShapes(): Shape[] {
-  return [...normalised(gainRiding()), ...normalised(twoPaths()), ...normalised(overload())];
+  return [
+    ...normalised(gainRiding()),
+    ...normalised([...twoPaths(), ...ports()]),
+    ...normalised(overload()),
+  ];
 }
 
 function normalised(shapes: Shape[]): Shape[] {
@@ -99,6 +110,18 @@ function twoPaths(): Shape[] {
       prior: 1,
     };
   });
+}
+
+/** A port beside its cone is two paths as well, one of which gives way from the very start. */
+function ports(): Shape[] {
+  return PORT_SHARES.map((share) => ({
+    family: "two paths",
+    law: TURBULENT_PORT,
+    kneeDb: Number.NaN,
+    slope: Number.NaN,
+    ...interpolate(tableOf((drive) => turbulentPortLossDb(drive + PORT_SHIFT_DB, share))),
+    prior: 1,
+  }));
 }
 
 const OVERLOAD_PRIOR: Record<OverloadLaw, number> = {

@@ -42,6 +42,20 @@ export function twoPathExcessDb(lossDb: number, share: number): number {
   return rest > 0 ? -20 * Math.log10(rest) : Infinity;
 }
 
+/**
+ * Loss of a port whose air turns turbulent: its resistance grows with its own velocity, so that the output r
+ * re the linear one follows r (1 + d r) = 1 at a drive d, and half of every further step is lost. `share` of the
+ * sound comes from the port, in phase with the rest.
+ *
+ * @param driveDb drive over the one at which the added resistance would equal the linear one, dB.
+ */
+export function turbulentPortLossDb(driveDb: number, share: number): number {
+  const drive = 10 ** (driveDb / 20);
+  // (sqrt(1 + 4 d) - 1) / (2 d), without the difference of near numbers.
+  const rest = 2 / (1 + Math.sqrt(1 + 4 * drive));
+  return -20 * Math.log10(1 - share + share * rest);
+}
+
 /** Memoryless odd non-linearities, unit slope at the origin, output at most 1 in size. */
 export const OVERLOAD_LAWS = [
   "hard clip",
