@@ -9,7 +9,7 @@ import { measureRun, type MeasuringContext, type RawRun } from "./measure-run";
 import { toMicrophoneResponse, type MicrophoneResponse } from "./microphone";
 import { measureNoise } from "./noise-floor";
 import { toGateWindow, toOrderWindows } from "./order-windows";
-import { toRunWarnings } from "./run-warnings";
+import { toLevelWarnings, toRunWarnings } from "./run-warnings";
 import { measureScale, type Scale } from "./scale";
 import { toPlayedStimulus } from "./stimulus-in-use";
 import { SweepFinder } from "./sweep-in-recording";
@@ -59,7 +59,11 @@ export async function measureSeries(
     raw.push(result);
     onProgress?.({ file: run.file, stage: "levels", done: raw.length, total: series.runs.length });
   }
-  return { measured: assembleSeries(series, raw, context, scale), warnings };
+  const measured = assembleSeries(series, raw, context, scale);
+  return {
+    measured,
+    warnings: [...warnings, ...toLevelWarnings(measured, context.referenceBandHz)],
+  };
 }
 
 async function measureRecordedRun(

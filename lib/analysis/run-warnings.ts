@@ -3,6 +3,7 @@ import type { Warning } from "../result/result-schema";
 import type { SweepInUse } from "./deconvolution";
 import { toDriftUncertaintyPpm } from "./drift";
 import type { RawRun } from "./measure-run";
+import type { MeasuredRun, MeasuredSeries } from "./types";
 
 const LEAST_SNR_DB = 20;
 const DRIFT_PPM = 50;
@@ -33,6 +34,54 @@ export function toRunWarnings(raw: RawRun, file: string, sweep: SweepInUse): War
       "run.clock-drift",
       `${file}: player and recorder differ by about ${raw.driftPpm.toFixed(0)} ppm. Magnitudes hold; frequencies are off by as much.`,
     );
+  }
+  return warnings;
+}
+
+const OFF_PLAN_DB = 3;
+const HIGH_THD_PERCENT = 10;
+
+/**
+ * Levels held against the plan: the lowest run must be as loud as planned, a higher one not louder
+ * (quieter is what we are here to find); and the lowest run must not already distort.
+ */
+export function toLevelWarnings(
+  { runs, bands, splValid }: MeasuredSeries,
+  [lowHz, highHz]: readonly [number, number],
+): Warning[] {
+  const plain = runs.filter((run) => run.kind === "short-term" && run.variant === undefined);
+  const lowest = plain.reduce<MeasuredRun | undefined>(
+    (low, run) => (low === undefined || run.driveDb < low.driveDb ? run : low),
+    undefined,
+  );
+  const warnings: Warning[] = [];
+  for (const run of splValid ? plain : []) {
+    const off = run.measuredLevelDb - run.levelDb;
+    if (off > OFF_PLAN_DB || (run === lowest && off < -OFF_PLAN_DB)) {
+      warnings.push({
+        code: "run.level-plan",
+        message: `${run.file} measures ${run.measuredLevelDb.toFixed(1)} dB where ${run.levelDb} dB were planned: ${Math.abs(off).toFixed(1)} dB ${off > 0 ? "more" : "less"}. Check the gain, the calibration and the distance.`,
+        file: run.file,
+      });
+    }
+  }
+  const distorting = lowest?.bands.filter((measure, i) => {
+    const band = bands[i];
+    return (
+      band !== undefined &&
+      band.exactHz >= lowHz &&
+      band.exactHz <= highHz &&
+      measure.thdQuality === "measured" &&
+      measure.thdPercent > HIGH_THD_PERCENT
+    );
+  });
+  if (lowest !== undefined && distorting !== undefined && distorting.length > 0) {
+    const worst = Math.max(...distorting.map((measure) => measure.thdPercent));
+    warnings.push({
+      code: "run.distorted",
+      message: `${lowest.file}, the lowest level, already distorts by ${worst.toFixed(0)} % between ${lowHz} and ${highHz} Hz: check the input gain and the cables, or start lower.`,
+      file: lowest.file,
+    });
   }
   return warnings;
 }

@@ -309,6 +309,33 @@ describe("clipping", () => {
   });
 });
 
+describe("levels held against the plan", () => {
+  const at = (file: string, levelDb: number, measuredDb: number) => ({
+    recording: place(file, STIMULUS.length + 20_000, [
+      { at: 0, amplitude: 10 ** ((measuredDb - 100) / 20) },
+    ]),
+    run: { file, level_dB: levelDb },
+  });
+
+  it.each([
+    ["as planned", [at("a.wav", 70, 70), at("b.wav", 80, 80)], []],
+    ["the lowest too quiet", [at("a.wav", 70, 66), at("b.wav", 80, 80)], ["a.wav"]],
+    ["the lowest too loud", [at("a.wav", 70, 74), at("b.wav", 80, 80)], ["a.wav"]],
+    [
+      "a higher one quieter: what we are here to find",
+      [at("a.wav", 70, 70), at("b.wav", 80, 75)],
+      [],
+    ],
+    ["a higher one louder", [at("a.wav", 70, 70), at("b.wav", 80, 84)], ["b.wav"]],
+  ])("%s", async (_, runs, files) => {
+    const { warnings } = await measure(
+      runs.map((r) => r.recording),
+      { runs: runs.map((r) => r.run) },
+    );
+    expect(warnings.filter((w) => w.code === "run.level-plan").map((w) => w.file)).toEqual(files);
+  });
+});
+
 describe("tables in place of recordings", () => {
   const levels = (levelDb: number) => [20, 100, 1000, 20_000].map(() => levelDb);
   const table = (

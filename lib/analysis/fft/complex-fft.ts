@@ -42,7 +42,7 @@ export function planComplexFft(size: number): ComplexFft {
       throw new AnalysisError("analysis.argument", `There is no FFT of ${size} points here.`);
     steps.push({
       pass: PASSES[radix] as Pass,
-      twiddles: toTwiddles(points, points / radix),
+      twiddles: toStepTwiddles(points, points / radix, steps.at(-1)),
       points,
       stride,
     });
@@ -64,6 +64,20 @@ export function planComplexFft(size: number): ComplexFft {
       return from;
     },
   };
+}
+
+/** The table of a pass: every few entries of the one before, where that reaches far enough. */
+function toStepTwiddles(points: number, count: number, before: Step | undefined): Float64Array {
+  const every = before === undefined ? 0 : before.points / points;
+  if (before === undefined || 2 * every * (count - 1) >= before.twiddles.length) {
+    return toTwiddles(points, count);
+  }
+  const table = new Float64Array(2 * count);
+  for (let p = 0; p < count; p += 1) {
+    table[2 * p] = before.twiddles[2 * p * every]!;
+    table[2 * p + 1] = before.twiddles[2 * p * every + 1]!;
+  }
+  return table;
 }
 
 /** [2 count] e^(-2 pi i p / points). */
