@@ -55,7 +55,8 @@ export function writeSeriesFolder(
       lead_in_s: 0.4,
       lead_out_s: 0.4,
     },
-    calibration: { file: "calibrator.wav", level_dB: 94 },
+    // A recorded amplitude of 0.3 is 102 dB, so that a device may count its levels from there.
+    calibration: { file: "calibrator.wav", level_dB: 86.44 },
     ambient: { file: "ambient.wav" },
     runs: levels.map((levelDb) => ({ file: `${levelDb}.wav`, level_dB: levelDb })),
     ...shape.series,
