@@ -31,7 +31,7 @@ export function SeriesCards({ rows, criterionKey }: RowsProps) {
             {limits !== null && (
               <>
                 <div className="mt-2.5">
-                  <SmallWall limits={limits} />
+                  <SmallWall limits={limits} judged />
                 </div>
                 <dl className="mt-2 grid grid-cols-2 gap-4">
                   <div>

@@ -68,7 +68,7 @@ export function SeriesTable({ rows, criterionKey, view, onSort, stale }: SeriesT
                   <LevelSteps levelsDb={row.levels_dB} />
                 </Td>
                 <Td>
-                  <SmallWall limits={limits} />
+                  <SmallWall limits={limits} judged={row.limits.length > 0} />
                 </Td>
                 <Td>
                   <ReachedCell limits={limits} />

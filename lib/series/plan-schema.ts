@@ -3,8 +3,20 @@
  * Kept as one document with the series; the schema of the folder format is series-schema.ts.
  */
 import { z } from "zod";
-import { conditioningSchema, criterionSchema, DEFAULT_CRITERIA } from "./series-schema";
+import {
+  conditioningSchema,
+  type Criterion,
+  criterionSchema,
+  DEFAULT_CRITERIA,
+} from "./series-schema";
 import { ENVIRONMENTS } from "./vocabulary";
+
+/** Pairs first: the screens open with THD 10 % or 3 dB, and only a computed pair has a headline. */
+const USUAL_CRITERIA: readonly Criterion[] = [
+  { thd_percent: 10, compression_dB: 3 },
+  { thd_percent: 3, compression_dB: 1 },
+  ...DEFAULT_CRITERIA,
+];
 
 const text = (max: number) => z.string().trim().max(max).default("");
 const finite = z.number().finite();
@@ -113,7 +125,7 @@ export const planSchema = z
       .array(criterionSchema)
       .min(1)
       .max(12)
-      .default([...DEFAULT_CRITERIA]),
+      .default([...USUAL_CRITERIA]),
   })
   .refine((p) => new Set(p.levels.map((l) => l.level_dB)).size === p.levels.length, {
     error: "Two levels are the same. Plan a repeat instead.",
