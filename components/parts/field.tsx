@@ -103,6 +103,7 @@ export function TextArea({ className, ...rest }: TextareaHTMLAttributes<HTMLText
 }
 
 interface SelectProps extends Omit<SelectHTMLAttributes<HTMLSelectElement>, "size"> {
+  ref?: Ref<HTMLSelectElement>;
   size?: ControlSize;
   figures?: boolean;
 }

@@ -1,7 +1,7 @@
 "use client";
 
 import type { ReactNode } from "react";
-import { get, useFormContext, type FieldPath } from "react-hook-form";
+import { get, useController, useFormContext, type FieldPath } from "react-hook-form";
 import { Field, Select, TextInput } from "../parts/field";
 import { parseNumber, type PlanFormInput } from "./plan-form-schema";
 
@@ -107,15 +107,22 @@ export function ChoiceField({
   numbers = false,
   ...field
 }: ChoiceFieldProps) {
-  const { register } = useFormContext<PlanFormInput>();
+  const { control } = useFormContext<PlanFormInput>();
+  const { field: input } = useController({ control, name: field.name });
   const error = useFault(field.name);
   return (
     <Field label={field.label} hint={field.hint} error={error} className={field.className}>
-      {(control) => (
+      {(props) => (
         <Select
-          {...control}
+          {...props}
+          ref={input.ref}
           figures={figures}
-          {...register(field.name, numbers ? { setValueAs: parseNumber } : {})}
+          name={input.name}
+          value={String(input.value)}
+          onBlur={input.onBlur}
+          onChange={(event) =>
+            input.onChange(numbers ? Number(event.target.value) : event.target.value)
+          }
         >
           {choices.map(([value, words]) => (
             <option key={value} value={value}>

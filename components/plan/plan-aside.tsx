@@ -2,14 +2,14 @@
 
 import { toApiPath } from "@/lib/api/client";
 import { getStimulus, getStimulusZip } from "@/lib/api/series";
-import { formatNumber, formatPlain, NBSP } from "@/lib/charts/format";
+import { formatPlain, NBSP } from "@/lib/charts/format";
 import { toTesterNotice } from "@/lib/exposure/notices";
 import { DAY_RULES, type DayRuleName } from "@/lib/exposure/rules";
 import { computeSessionDose } from "@/lib/exposure/session-dose";
 import { toDoseText, toLevelText, toWholeDoseText } from "@/lib/exposure/words";
 import { toCheckList } from "@/lib/series/check-list";
 import type { Plan } from "@/lib/series/plan-schema";
-import { toFileStem, toPlannedRuns } from "@/lib/series/planned-runs";
+import { listStimulusFiles } from "./stimulus-list";
 import { LinkButton } from "../parts/button";
 import { BlockNotice } from "../parts/notice";
 
@@ -117,34 +117,6 @@ function AsideHead({
       {children}
     </div>
   );
-}
-
-interface StimulusFile {
-  slot: string;
-  name: string;
-  note: string;
-}
-
-/** Files of ours that are played, in capture order; the conditioning before its sweep. */
-export function listStimulusFiles(plan: Plan, model: string): StimulusFile[] {
-  const stem = toFileStem(model);
-  let conditioned = false;
-  return toPlannedRuns(plan, stem).flatMap((run): StimulusFile[] => {
-    if (run.stimulusPeakDbfs === null) return [];
-    const file = {
-      slot: run.slot,
-      name: run.fileName,
-      note: `${formatNumber(run.stimulusPeakDbfs)}${NBSP}dBFS peak`,
-    };
-    if (run.role !== "long-term" || conditioned) return [file];
-    conditioned = true;
-    const noise = {
-      slot: "conditioning",
-      name: `${stem}_conditioning.wav`,
-      note: `${formatPlain(plan.conditioning.minutes)}${NBSP}min of pink noise`,
-    };
-    return [noise, file];
-  });
 }
 
 function StimulusFiles({ plan, model, seriesId, unsaved }: PlanAsideProps) {
