@@ -2,6 +2,7 @@ import { formatNumber, formatPlain, NBSP } from "@/lib/charts/format";
 import { PLAN_LADDER, toLadderFigure, type LadderStep } from "@/lib/charts/ladder";
 import type { Plan } from "@/lib/series/plan-schema";
 import { Shapes } from "../parts/shapes";
+import { TableFrame } from "../parts/table";
 
 const TOP_DBFS = -3;
 
@@ -50,7 +51,7 @@ export function LadderPicture({
   const figure = toLadderFigure(steps, PLAN_LADDER);
   const says = `Planned levels from ${formatPlain(lowest?.level_dB ?? 0)} to ${formatPlain(highest)} dB with the peak of each stimulus file`;
   return (
-    <div className="overflow-x-auto pb-1">
+    <TableFrame label="Planned levels" className="pb-1">
       <svg
         width={figure.width}
         height={figure.height}
@@ -60,7 +61,7 @@ export function LadderPicture({
       >
         <Shapes shapes={figure.shapes} />
       </svg>
-    </div>
+    </TableFrame>
   );
 }
 

@@ -110,7 +110,9 @@ describe("the plan form", () => {
 
   it("adds a level where it tells most, and a long-term run at the top", async () => {
     const levels = (): string[] =>
-      [...page.querySelectorAll<HTMLInputElement>('input[name^="plan.levels"][name$="level_dB"]')].map((i) => i.value);
+      [
+        ...page.querySelectorAll<HTMLInputElement>('input[name^="plan.levels"][name$="level_dB"]'),
+      ].map((i) => i.value);
     await press("Add a level");
     expect(levels()).toEqual(["76", "86", "96", "102", "81"]);
     await press("Add a long-term run");

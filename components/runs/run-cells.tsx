@@ -83,7 +83,7 @@ export function FigureCells({ run }: { run: RunView | null }) {
 
 export function VerdictCell({ verdict }: { verdict: VerdictWords }) {
   return (
-    <Cell className="max-w-72 text-body whitespace-normal! max-md:col-span-2 max-md:mt-1">
+    <Cell className="max-w-72 text-body whitespace-normal! md:min-w-60 max-md:col-span-2 max-md:mt-1">
       <Verdict kind={verdict.kind} note={verdict.note ?? undefined}>
         {verdict.words}
       </Verdict>

@@ -1,6 +1,7 @@
 import { RUNS_LADDER, toLadderFigure, type LadderStep } from "@/lib/charts/ladder";
 import { formatPlain, NBSP } from "@/lib/charts/format";
 import { Shapes } from "../parts/shapes";
+import { TableFrame } from "../parts/table";
 import type { RunRow } from "./run-rows";
 import { toRowVerdict } from "./verdict-words";
 
@@ -8,7 +9,7 @@ import { toRowVerdict } from "./verdict-words";
 export function RunLadder({ rows }: { rows: readonly RunRow[] }) {
   const figure = toLadderFigure(rows.map(toStep), RUNS_LADDER);
   return (
-    <div className="max-w-full overflow-x-auto">
+    <TableFrame label="How far the series has come" className="max-w-full">
       <svg
         width={figure.width}
         height={figure.height}
@@ -18,7 +19,7 @@ export function RunLadder({ rows }: { rows: readonly RunRow[] }) {
       >
         <Shapes shapes={figure.shapes} />
       </svg>
-    </div>
+    </TableFrame>
   );
 }
 

@@ -1,6 +1,7 @@
 "use client";
 
 import { levelRamp, type LevelPaint } from "@/lib/charts/tokens";
+import { TableFrame } from "../parts/table";
 import { COLUMNS } from "./run-cells";
 import type { RunActs } from "./run-acts";
 import type { RunTable } from "./run-rows";
@@ -21,7 +22,7 @@ const HEAD =
 export function RunsTable({ table, calibrator, mayCapture, acts }: RunsTableProps) {
   const paints = toPaints(table);
   return (
-    <div className="overflow-x-auto">
+    <TableFrame label="Planned runs and their recordings">
       <table className="w-full border-collapse border border-rule bg-sheet text-left max-md:block max-md:border-x-0">
         <caption className="sr-only">Planned runs and their recordings</caption>
         <thead className="max-md:sr-only">
@@ -85,7 +86,7 @@ export function RunsTable({ table, calibrator, mayCapture, acts }: RunsTableProp
           </tbody>
         ))}
       </table>
-    </div>
+    </TableFrame>
   );
 }
 
