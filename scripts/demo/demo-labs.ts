@@ -5,6 +5,7 @@
 import type { LoudspeakerInput } from "../../lib/api/loudspeakers";
 import type { Role } from "../../lib/roles/roles";
 import { planSchema, type Plan, type PlanInput } from "../../lib/series/plan-schema";
+import { toFileStem } from "../../lib/series/planned-runs";
 import { LOUDSPEAKERS, type LoudspeakerKey } from "./loudspeakers";
 
 export interface DemoMember {
@@ -13,19 +14,22 @@ export interface DemoMember {
   roles: Role[];
 }
 
-/** A take that went wrong while recording. */
+/** A take that went wrong while recording; the tester keeps it where a reason is given. */
 export type Mishap =
-  | { kind: "bump"; atS: number }
-  | { kind: "stops-early"; lengthS: number; keptBecause: string };
+  | { kind: "bump"; atS: number; keptBecause: null }
+  | { kind: "stops-early"; lengthS: number; keptBecause: string }
+  | { kind: "silence"; keptBecause: string };
 
 export interface DemoSeries {
+  /** One word, of this series alone. */
+  name: string;
   key: LoudspeakerKey;
   loudspeaker: LoudspeakerInput;
   plan: Plan;
   /** Of the recording interface: SPL of a sine that just reaches full scale. */
   fullScaleDb: number;
-  /** Slots recorded so far; all of the plan where null. */
-  recordedUpTo: string | null;
+  /** How much of the plan is recorded so far; `upTo` names the last slot. */
+  recorded: "all" | "none" | { upTo: string };
   /** By slot. */
   mishaps: Record<string, Mishap>;
 }
@@ -45,16 +49,20 @@ const compose = (
   key: LoudspeakerKey,
   loudspeaker: Omit<LoudspeakerInput, "serial" | "tuning_Hz"> & Partial<LoudspeakerInput>,
   plan: PlanInput,
-  rest: Partial<Pick<DemoSeries, "fullScaleDb" | "recordedUpTo" | "mishaps">> = {},
+  rest: Partial<Pick<DemoSeries, "name" | "fullScaleDb" | "recorded" | "mishaps">> = {},
 ): DemoSeries => ({
+  name: toFileStem(loudspeaker.model),
   key,
   loudspeaker: { serial: "", tuning_Hz: null, ...loudspeaker },
   plan: planSchema.parse({ place: { environment: "anechoic", temperature_C: 21 }, ...plan }),
   fullScaleDb: 116,
-  recordedUpTo: null,
+  recorded: "all",
   mishaps: {},
   ...rest,
 });
+
+/** Planned, and nothing recorded: its recordings are for whoever tries the upload. */
+export const TO_BE_RECORDED = "brackenmini-second";
 
 const MAINS = { power: "mains, 230 V", eq: "off" };
 const BENCH_AMPLIFIER = { amplifier: "bench amplifier, 26 dB", voltage: "2.83 V at 86 dB" };
@@ -172,16 +180,28 @@ export const DEMO_LABS: readonly DemoLab[] = [
           levels: levels([76, 81, 86, 91, 96, 102], [102]),
         },
         {
-          recordedUpTo: "short-91",
+          recorded: { upTo: "short-91" },
           mishaps: {
             "short-86": {
               kind: "stops-early",
               lengthS: 9.4,
               keptBecause: "The woofer is what 86 dB is for; treble is covered by 81 and 91.",
             },
-            "short-91": { kind: "bump", atS: 3.05 },
+            "short-91": { kind: "bump", atS: 3.05, keptBecause: null },
           },
         },
+      ),
+      compose(
+        "brackenMini",
+        {
+          maker: "Stonecrop Works",
+          model: "Bracken Mini",
+          serial: "A-18",
+          kind: "passive, two-way",
+          largest_dimension_m: 0.24,
+        },
+        { state: BENCH_AMPLIFIER, sweep: { length_s: 5.5 }, levels: levels([76, 86, 96, 102]) },
+        { name: TO_BE_RECORDED, recorded: "none" },
       ),
     ],
   },
@@ -211,6 +231,35 @@ export const DEMO_LABS: readonly DemoLab[] = [
           place: { environment: "anechoic", temperature_C: 19, distance_m: 2, tester: "next-room" },
         },
         { fullScaleDb: 128 },
+      ),
+      compose(
+        "ketch12",
+        {
+          maker: "Gannet Yard",
+          model: "Ketch 12",
+          serial: "K-302",
+          kind: "active, stage",
+          largest_dimension_m: 0.6,
+        },
+        {
+          state: { ...MAINS, preset: "front of house" },
+          sweep: { length_s: 5.5 },
+          levels: levels([88, 98]),
+          calibration: { level_dB: 114, by: "calibrator" },
+          ambient: false,
+          closing: false,
+          place: { environment: "anechoic", temperature_C: 19, distance_m: 2, tester: "next-room" },
+        },
+        {
+          name: "ketch12-second",
+          fullScaleDb: 128,
+          mishaps: {
+            "calibrator-before": {
+              kind: "silence",
+              keptBecause: "The calibrator's battery was flat; the gain is as for K-301.",
+            },
+          },
+        },
       ),
     ],
   },

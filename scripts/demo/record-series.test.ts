@@ -2,11 +2,12 @@ import { describe, expect, it } from "vitest";
 import { toByteSource } from "../../lib/audio/byte-source";
 import { readRecording } from "../../lib/audio/read-recording";
 import { toPlannedRuns } from "../../lib/series/planned-runs";
-import { DEMO_LABS, type DemoSeries } from "./demo-labs";
+import { DEMO_LABS, TO_BE_RECORDED, type DemoSeries } from "./demo-labs";
+import { LOUDSPEAKERS } from "./loudspeakers";
 import { recordSeries } from "./record-series";
 
 const find = (key: string): DemoSeries => {
-  const series = DEMO_LABS.flatMap((lab) => lab.series).find((s) => s.key === key);
+  const series = DEMO_LABS.flatMap((lab) => lab.series).find((s) => s.name === key);
   if (series === undefined) throw new Error(`no series ${key}`);
   return series;
 };
@@ -25,13 +26,15 @@ const toLevelDbfs = (samples: ArrayLike<number>): number =>
   10 * Math.log10(Array.from(samples).reduce((sum, x) => sum + x * x, 0) / samples.length);
 
 describe("demo labs", () => {
-  it("hold one series each of every loudspeaker, with plans that can be carried out", () => {
+  it("hold every loudspeaker, under names of their own, with plans that can be carried out", () => {
     const all = DEMO_LABS.flatMap((lab) => lab.series);
-    expect(new Set(all.map((s) => s.key)).size).toBe(all.length);
+    expect(new Set(all.map((s) => s.key))).toEqual(new Set(Object.keys(LOUDSPEAKERS)));
+    expect(new Set(all.map((s) => s.name)).size).toBe(all.length);
+    expect(all.filter((s) => s.recorded === "none").map((s) => s.name)).toEqual([TO_BE_RECORDED]);
     for (const series of all) {
       const slots = toPlannedRuns(series.plan, "x").map((r) => r.slot);
       expect(slots).toEqual(expect.arrayContaining(Object.keys(series.mishaps)));
-      expect(slots).toContain(series.recordedUpTo ?? slots[0]);
+      if (typeof series.recorded === "object") expect(slots).toContain(series.recorded.upTo);
     }
   });
 
@@ -45,14 +48,14 @@ describe("demo labs", () => {
 
 describe("recordSeries", () => {
   it("records the calibrator at its level on the recorder's scale", async () => {
-    const series = find("harbourTwo");
+    const series = find("harbourtwo");
     const { heard } = await read(series, "calibrator-before");
     // A sine at full scale has -3.01 dB rms.
     expect(toLevelDbfs(heard.samples)).toBeCloseTo(94 - series.fullScaleDb - 3.0103, 2);
   });
 
   it("records room noise far under the quietest run", async () => {
-    const series = find("harbourTwo");
+    const series = find("harbourtwo");
     const { heard } = await read(series, "ambient");
     expect(toLevelDbfs(heard.samples)).toBeLessThan(38 - series.fullScaleDb);
   });

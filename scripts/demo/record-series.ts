@@ -32,26 +32,29 @@ const SPEED_OF_SOUND_M_S = 343;
 const TAIL_S = 0.1;
 const TOP_DBFS = -3;
 
-/** The recordings of a series, in the order in which they are made. The same series gives the same bytes. */
+/** The recordings made so far, in their order. The same series gives the same bytes. */
 export function recordSeries(series: DemoSeries): DemoRecording[] {
   const { plan } = series;
   const runs = toPlannedRuns(plan, toFileStem(series.loudspeaker.model));
-  const last =
-    series.recordedUpTo === null
-      ? runs.length - 1
-      : runs.findIndex((r) => r.slot === series.recordedUpTo);
-  const midGain = computeMidGain(toVirtualLoudspeaker(series));
-  return runs.slice(0, last + 1).map((run) => {
+  let midGain: number | null = null;
+  return runs.slice(0, countRecorded(series, runs)).map((run) => {
     const mishap = series.mishaps[run.slot] ?? null;
     return {
       run,
       mishap,
       makeWav: () => {
-        const samples = recordRun(series, run, midGain, createRandom(`${series.key}/${run.slot}`));
+        midGain ??= computeMidGain(toVirtualLoudspeaker(series));
+        const samples = recordRun(series, run, midGain, createRandom(`${series.name}/${run.slot}`));
         return writeWav([befall(samples, mishap, plan.sweep.rate_Hz)], plan.sweep.rate_Hz, "pcm24");
       },
     };
   });
+}
+
+function countRecorded({ recorded }: DemoSeries, runs: readonly PlannedRun[]): number {
+  if (recorded === "all") return runs.length;
+  if (recorded === "none") return 0;
+  return runs.findIndex((run) => run.slot === recorded.upTo) + 1;
 }
 
 function recordRun(
@@ -73,6 +76,9 @@ function recordRun(
     driftPpm: 0,
     lengthS: 0,
   };
+  if (run.role === "ambient" || series.mishaps[run.slot]?.kind === "silence") {
+    return recordRoom(rateHz, { ...recorder, lengthS: ROOM_S }, random);
+  }
   if (run.role === "calibrator-before" || run.role === "calibrator-after") {
     const { level_dB, frequency_Hz } = plan.calibration;
     // The microphone warms a little during the session.
@@ -84,7 +90,6 @@ function recordRun(
       random,
     );
   }
-  if (run.role === "ambient") return recordRoom(rateHz, { ...recorder, lengthS: ROOM_S }, random);
   const stimulus = synthesiseStimulus(toStimulusShape(plan, run));
   return recordPlayback(
     {
@@ -124,9 +129,9 @@ function toConditioned({ conditioning }: Plan, run: PlannedRun): Conditioned | n
 
 const BUMP = { frequencyHz: 9, peak: 4, decayS: 0.05 };
 
-/** What went wrong with a take: somebody ran into the stand, or it was cut off. */
+/** What went wrong with what sounded: the stand was hit, or the take was cut off. */
 function befall(samples: Float64Array, mishap: Mishap | null, rateHz: number): Float64Array {
-  if (mishap === null) return samples;
+  if (mishap === null || mishap.kind === "silence") return samples;
   if (mishap.kind === "stops-early")
     return samples.subarray(0, Math.round(mishap.lengthS * rateHz));
   return samples.map((x, n) => {

@@ -33,7 +33,7 @@ export function getTestSeries(): TestSeries {
     const series = {
       ...model,
       plan: planSchema.parse(SHORT_PLAN),
-      recordedUpTo: null,
+      recorded: "all" as const,
       mishaps: {},
     };
     const files = recordSeries(series).map(({ run, makeWav }) => ({
