@@ -33,6 +33,22 @@ export async function getSeries(
   return row;
 }
 
+/** Ids, oldest first; archived ones too. */
+export async function listSeriesOfLoudspeaker(
+  trx: Trx,
+  labId: string,
+  loudspeakerId: string,
+): Promise<string[]> {
+  const rows = await trx
+    .selectFrom("series")
+    .select("id")
+    .where("lab_id", "=", labId)
+    .where("loudspeaker_id", "=", loudspeakerId)
+    .orderBy("number")
+    .execute();
+  return rows.map((row) => row.id);
+}
+
 /**
  * Holds the series until the transaction ends: whoever derives its state from its runs does so one
  * after the other.

@@ -13,13 +13,20 @@ const signInsSchema = z.array(
   }),
 );
 
+export type SignIn = z.infer<typeof signInsSchema>[number];
+
 export const signInsPath = (dataDir: string): string => join(dataDir, "demo-sign-ins.json");
+
+/** @returns none where there is no demo */
+export function readSignIns(dataDir: string): SignIn[] {
+  const text = readText(signInsPath(dataDir));
+  return text === null ? [] : signInsSchema.parse(JSON.parse(text));
+}
 
 /** @returns lines for the terminal; none where there is no demo */
 export function describeSignIns(dataDir: string): string[] {
-  const text = readText(signInsPath(dataDir));
-  if (text === null) return [];
-  const rows = signInsSchema.parse(JSON.parse(text));
+  const rows = readSignIns(dataDir);
+  if (rows.length === 0) return [];
   const width = Math.max(...rows.map(({ email }) => email.length));
   return [
     "Demo sign-ins:",
