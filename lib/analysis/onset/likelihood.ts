@@ -14,6 +14,8 @@ export interface BandGains {
 /** Laws are followed to this much, dB, and this share of the loss. */
 const LAW_ERROR_DB = 0.02;
 const LAW_ERROR_SHARE = 0.02;
+/** The lowest run is chosen to be free: onsets below it grow unlikely by e per so many dB. Runs that say otherwise win. */
+const BELOW_LOWEST_DECAY_DB = 8;
 /** Likelihoods this far below the best do not count: a millionth. */
 export const NEGLIGIBLE_LOG = -14;
 
@@ -22,12 +24,10 @@ export interface OnsetLikelihood {
   /** First column looked at, and how many. */
   firstColumn: number;
   columns: number;
-  /** [shapes * columns] -chi^2/2. */
+  /** [shapes * columns] -chi^2/2, and less below the lowest run. */
   logLikelihood: Float64Array;
   /** [shapes] largest of its row. */
   shapeBest: Float64Array;
-  /** [shapes] log of the mean likelihood over the columns: the evidence for a shape. */
-  shapeEvidence: Float64Array;
   /** [levels] weights 1/sigma^2; 0 where there is no value. */
   weights: Float64Array;
   gainDb: Float64Array;
@@ -73,7 +73,11 @@ export function computeLikelihood(
   const columns = clampColumn(highDb) - firstColumn + 1;
   const logLikelihood = new Float64Array(plan.shapes.length * columns);
   const shapeBest = new Float64Array(plan.shapes.length);
-  const shapeEvidence = new Float64Array(plan.shapes.length);
+  const lowestDb = plan.drivesDb[weights.findIndex((weight) => weight > 0)] ?? 0;
+  const place = Float64Array.from({ length: columns }, (_, i) => {
+    const onsetDb = plan.firstOnsetDb + (firstColumn + i) * ONSET_STEP_DB;
+    return -Math.max(0, lowestDb - onsetDb) / BELOW_LOWEST_DECAY_DB;
+  });
   const r1 = new Float64Array(columns);
   const r2 = new Float64Array(columns);
   for (let j = 0; j < plan.shapes.length; j++) {
@@ -96,17 +100,11 @@ export function computeLikelihood(
     }
     let best = -Infinity;
     for (let i = 0; i < columns; i++) {
-      const value = -0.5 * ((r2[i] ?? 0) - (r1[i] ?? 0) ** 2 / weightSum);
+      const value = -0.5 * ((r2[i] ?? 0) - (r1[i] ?? 0) ** 2 / weightSum) + (place[i] ?? 0);
       logLikelihood[j * columns + i] = value;
       if (value > best) best = value;
     }
-    let sum = 0;
-    for (let i = 0; i < columns; i++) {
-      const below = (logLikelihood[j * columns + i] ?? 0) - best;
-      if (below > NEGLIGIBLE_LOG) sum += Math.exp(below);
-    }
     shapeBest[j] = best;
-    shapeEvidence[j] = best + Math.log(sum / columns);
   }
   return {
     plan,
@@ -114,7 +112,6 @@ export function computeLikelihood(
     columns,
     logLikelihood,
     shapeBest,
-    shapeEvidence,
     weights,
     gainDb: gains.gainDb,
     gainSigmaDb: Math.sqrt(1 / weightSum),

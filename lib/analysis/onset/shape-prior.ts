@@ -71,9 +71,12 @@ export function poolShapes(
   });
 }
 
-/** Log evidence of each gain-riding shape, never further below the best than a band may know by itself. */
-function voiceOf({ shapeEvidence }: OnsetLikelihood, from: number, to: number): Float64Array {
-  const own = shapeEvidence.subarray(from, to);
+/**
+ * How well each gain-riding shape can fit, at its best onset: a mean over onsets would favour flat shapes, which many
+ * onsets fit. Never further below the best than a band may know by itself.
+ */
+function voiceOf({ shapeBest }: OnsetLikelihood, from: number, to: number): Float64Array {
+  const own = shapeBest.subarray(from, to);
   const best = own.reduce((a, value) => Math.max(a, value), -Infinity);
   return own.map((value) => Math.max(value - best, -LOUDEST_VOICE));
 }
