@@ -14,7 +14,7 @@ export async function answerFile(
     "content-disposition": toDisposition(file.fileName),
     "accept-ranges": "bytes",
     etag: `"${file.digest}"`,
-    "cache-control": "private, no-cache",
+    "cache-control": "private, no-cache, no-transform",
   });
   if (range === "unsatisfiable") {
     headers.set("content-range", `bytes */${file.bytes}`);

@@ -71,7 +71,7 @@ export function answerEvents({ request, start, mayStill }: StreamOptions): Respo
   return new Response(body, {
     headers: {
       "content-type": "text/event-stream",
-      "cache-control": "no-store",
+      "cache-control": "no-store, no-transform",
       "x-accel-buffering": "no",
     },
   });

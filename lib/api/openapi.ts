@@ -45,7 +45,7 @@ export function toOpenApi(publicUrl: string): JsonObject {
       schemas: { Problem: toSchema(problemSchema, "output") },
       securitySchemes: {
         token: { type: "http", scheme: "bearer", description: "A token of the lab." },
-        session: { type: "apiKey", in: "cookie", name: "next-auth.session-token" },
+        session: { type: "apiKey", in: "cookie", name: "tidemark-session" },
       },
     },
   };

@@ -1,7 +1,11 @@
 /** The built product over a database of its own, a lab in it, and calls with a token. */
 import { setTimeout as sleep } from "node:timers/promises";
+import Ajv2020, { type ValidateFunction } from "ajv/dist/2020";
+import addFormats from "ajv-formats";
 import type { z } from "zod";
-import { callApi, type CallInput } from "../../lib/api/client";
+import type { Problem } from "../../lib/api/common";
+import { toAnswerSchema } from "../../lib/api/openapi";
+import { ApiProblem, callApi, type CallInput } from "../../lib/api/client";
 import { createLoudspeaker } from "../../lib/api/loudspeakers";
 import type { Operation } from "../../lib/api/operation";
 import { createSeries, getSeries, type SeriesView } from "../../lib/api/series";
@@ -37,6 +41,22 @@ export async function openApiBench(env: Record<string, string> = {}): Promise<Ap
   };
 }
 
+/** Every JSON answer is held against the schema of the published document. */
+const validators = new Map<string, ValidateFunction>();
+const ajv = addFormats(new Ajv2020({ strict: false, allErrors: true }));
+
+function validateAnswer(operation: Operation, json: unknown): void {
+  const schema = toAnswerSchema(operation);
+  if (schema === null) return;
+  const validate = validators.get(operation.id) ?? ajv.compile(schema);
+  validators.set(operation.id, validate);
+  if (!validate(json)) {
+    throw new Error(
+      `${operation.id} answers what its document does not say: ${ajv.errorsText(validate.errors)}`,
+    );
+  }
+}
+
 /** Calls as the member with every role, unless another token is named. */
 export function call<
   P extends z.ZodType,
@@ -49,7 +69,26 @@ export function call<
   input: CallInput<z.input<P>, z.input<Q>, z.input<B>> = {},
   token: string = bench.all.token,
 ): Promise<z.output<A>> {
-  return callApi(operation, input, { baseUrl: bench.product.url, token });
+  return callApi(operation, input, {
+    baseUrl: bench.product.url,
+    token,
+    fetch: async (address, init) => {
+      const response = await fetch(address, init);
+      const json = response.headers.get("content-type") === "application/json";
+      if (json) validateAnswer(operation, await response.clone().json());
+      return response;
+    },
+  });
+}
+
+/** The problem that a call ends with. */
+export async function problemOf(answer: Promise<unknown>): Promise<Problem> {
+  const error = await answer.then(
+    () => null,
+    (thrown: unknown) => thrown,
+  );
+  if (error instanceof ApiProblem) return error.problem;
+  throw new Error("the call did not end with a problem", { cause: error });
 }
 
 /** A loudspeaker with a planned series, ready for the files of getTestSeries. */

@@ -7,6 +7,7 @@ import { foundLab } from "../../db/queries/labs";
 import { addMember } from "../../db/queries/members";
 import { createToken } from "../../db/queries/tokens";
 import { createSecret, digestSecret, TOKEN_PREFIX } from "../../lib/account/secrets";
+import { hashPassword } from "../../lib/account/passwords";
 import { ROLES, type Role } from "../../lib/roles/roles";
 import type { TestDatabase } from "./database";
 
@@ -43,6 +44,9 @@ export function openLabBench(database: TestDatabase): LabBench {
   };
 }
 
+/** Of every member made here. */
+export const TEST_PASSWORD = "a password for tests alone";
+
 /** @returns the lab and a member with every role. */
 export async function makeTestLab(
   bench: LabBench,
@@ -62,12 +66,13 @@ export async function makeTestMember(
   const accountId = randomUUID();
   const scope = { labId, accountId };
   const token = `${TOKEN_PREFIX}${createSecret()}`;
+  const passwordHash = await hashPassword(TEST_PASSWORD);
   await inLab(bench.app, scope, async (trx) => {
     await createAccount(trx, {
       id: accountId,
       email: `${name}.${accountId.slice(0, 8)}@lab.test`,
       name,
-      passwordHash: "no password",
+      passwordHash,
     });
     await addMember(trx, { labId, accountId, roles });
     await createToken(trx, {

@@ -17,6 +17,7 @@ export const GET = handle(getStimulusZip, async ({ params, inLab, caller }) => {
   return new Response(makeZip(toEntries(files, { name: checkList.name, text })), {
     headers: {
       "content-type": "application/zip",
+      "cache-control": "no-store, no-transform",
       "content-length": String(predictLength(sizes)),
       "content-disposition": toDisposition(`${stimuli.fileStem}_stimuli.zip`),
     },

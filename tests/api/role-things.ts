@@ -1,0 +1,94 @@
+/** One of everything in our lab, made afresh, so that an act that takes it away finds it. */
+import { randomBytes, randomUUID } from "node:crypto";
+import { inLab } from "../../db/in-lab";
+import { createAnalysis, claimAnalysis } from "../../db/queries/analyses";
+import { createInvitation } from "../../db/queries/invitations";
+import { createLoudspeaker } from "../../db/queries/loudspeakers";
+import { keepRecording } from "../../db/queries/recordings";
+import { saveResult } from "../../db/queries/results";
+import { createRun } from "../../db/queries/runs";
+import { createSeries } from "../../db/queries/series";
+import { createToken } from "../../db/queries/tokens";
+import { createUpload } from "../../db/queries/uploads";
+import { digestSecret } from "../../lib/account/secrets";
+import { planSchema } from "../../lib/series/plan-schema";
+import { makeTestMember } from "../support/lab-bench";
+import { makeSampleResult } from "../support/sample-result";
+import { getTestSeries } from "../support/test-series";
+import type { ApiBench } from "./support";
+
+export type Things = Awaited<ReturnType<typeof makeThings>>;
+
+export async function makeThings(bench: ApiBench) {
+  const { labId } = bench;
+  const { scope } = bench.all;
+  const digest = randomBytes(32).toString("hex");
+  const member = await makeTestMember(bench, labId, "somebody", ["tester"]);
+  const plan = planSchema.parse(getTestSeries().plan);
+  const made = await inLab(bench.app, scope, async (trx) => {
+    const { tuning_Hz: tuning_hz, ...rest } = getTestSeries().loudspeaker;
+    const loudspeakerId = await createLoudspeaker(trx, labId, scope.accountId, {
+      ...rest,
+      tuning_hz,
+    });
+    const { id: seriesId } = await createSeries(trx, labId, scope.accountId, {
+      loudspeakerId,
+      plan,
+    });
+    await keepRecording(trx, labId, { digest, bytes: 10, media: "audio/wav" });
+    const runId = await createRun(trx, labId, {
+      seriesId,
+      slot: null,
+      role: null,
+      levelDb: null,
+      variant: null,
+      fileName: "take.wav",
+      digest,
+      channel: 1,
+      uploadedBy: scope.accountId,
+      uploadedByToken: null,
+    });
+    const result = makeSampleResult();
+    const analysisId = await createAnalysis(trx, labId, {
+      seriesId,
+      inputs: { series: {}, files: [] },
+      inputsDigest: digest,
+      settings: result.settings,
+      engineVersion: "1.0.0",
+      requestedBy: null,
+    });
+    await claimAnalysis(trx, labId, analysisId, 0);
+    await saveResult(trx, labId, analysisId, result, new Map());
+    const uploadId = randomBytes(16).toString("hex");
+    await createUpload(trx, labId, {
+      id: uploadId,
+      seriesId: (await createSeries(trx, labId, scope.accountId, { loudspeakerId, plan })).id,
+      slot: null,
+      channel: 1,
+      fileName: "upload.wav",
+      bytes: 10,
+      accountId: scope.accountId,
+      tokenId: null,
+      expiresAt: new Date(Date.now() + 60_000),
+    });
+    const tokenId = await createToken(trx, {
+      labId,
+      accountId: scope.accountId,
+      name: "of somebody else",
+      tokenHash: digestSecret(digest),
+      prefix: "tdm_others",
+      roles: ["tester"],
+      expiresAt: null,
+    });
+    const { id: invitationId } = await createInvitation(trx, {
+      labId,
+      email: `${randomUUID()}@lab.test`,
+      name: "",
+      roles: ["tester"],
+      tokenHash: digestSecret(randomUUID()),
+      createdBy: scope.accountId,
+    });
+    return { loudspeakerId, seriesId, runId, analysisId, uploadId, tokenId, invitationId };
+  });
+  return { ...made, labId, plan, accountId: member.scope.accountId, sessionId: randomUUID() };
+}
