@@ -13,6 +13,8 @@ export interface ChildPlan {
   cwd: string;
   /** How long it may take to end after SIGTERM before it is killed. */
   graceMs: number;
+  /** The pause between two lives doubles up to here. */
+  longestPauseMs?: number;
 }
 
 export interface Supervised {
@@ -43,7 +45,7 @@ export function supervise(plan: ChildPlan, write: (line: string) => void): Super
       if (Date.now() - bornAt > SETTLED_MS) pauseMs = FIRST_PAUSE_MS;
       write(`${plan.name} | ended with ${end}; starting again in ${pauseMs / 1000} s`);
       await sleep(pauseMs, undefined, { signal: stopping.signal }).catch(() => undefined);
-      pauseMs = Math.min(2 * pauseMs, LONGEST_PAUSE_MS);
+      pauseMs = Math.min(2 * pauseMs, plan.longestPauseMs ?? LONGEST_PAUSE_MS);
     }
   };
   const ended = live();

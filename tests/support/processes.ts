@@ -37,10 +37,10 @@ export function slowDown(pids: readonly number[], share: number): () => void {
       }
     }
   };
-  let running = true;
+  const stopping = new AbortController();
   const period = 50;
   const turn = async (): Promise<void> => {
-    while (running) {
+    while (!stopping.signal.aborted) {
       signal("SIGSTOP");
       await sleep(period * (1 - share));
       signal("SIGCONT");
@@ -49,7 +49,7 @@ export function slowDown(pids: readonly number[], share: number): () => void {
   };
   void turn();
   return () => {
-    running = false;
+    stopping.abort();
     signal("SIGCONT");
   };
 }

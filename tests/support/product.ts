@@ -56,8 +56,9 @@ export async function startTestProduct(
   };
   const lines: string[] = [];
   const start = (name: string, args: string[]): Supervised =>
-    supervise({ name, args, env: settings, cwd: cloneDir, graceMs: 20_000 }, (line) =>
-      lines.push(line),
+    supervise(
+      { name, args, env: settings, cwd: cloneDir, graceMs: 20_000, longestPauseMs: 500 },
+      (line) => lines.push(line),
     );
   const web = start("web", [
     packageFile("next/dist/bin/next"),

@@ -1,6 +1,8 @@
 /** What the worker survives: killed in each stage, forgotten jobs, a database that restarts. */
 import { setTimeout as sleep } from "node:timers/promises";
+import { rm } from "node:fs/promises";
 import { sql } from "kysely";
+import pg from "pg";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { inLab } from "../../db/in-lab";
 import { getAnalysis as getAnalysisRow } from "../../db/queries/analyses";
@@ -204,6 +206,61 @@ describe("work whose job was lost", () => {
   });
 });
 
+describe("a database that drops every connection", () => {
+  it("is waited for: the work goes on, and so does what listens", async () => {
+    const { id } = series.latest_done_analysis ?? { id: "" };
+    await forget(id);
+    const workerPid = await livingPid(bench.product.worker);
+    const goOn = slowDown(childrenOf(workerPid), 0.2);
+    try {
+      await call(bench, startAnalysis, { params: { seriesId: series.id } });
+      await until(
+        bench,
+        () => rowOf(id),
+        ({ state }) => state === "running",
+      );
+      await dropConnections();
+    } finally {
+      goOn();
+    }
+    await until(
+      bench,
+      () => rowOf(id).catch(() => null),
+      (row) => row?.state === "done",
+    );
+    expect(await resultOf(series)).toBe(reference);
+    // Idle connections too: the next job is heard of all the same.
+    await dropConnections();
+    await forget(id);
+    await until(
+      bench,
+      () => call(bench, startAnalysis, { params: { seriesId: series.id } }).catch(() => null),
+      (answer) => answer !== null,
+    );
+    await until(
+      bench,
+      () => rowOf(id).catch(() => null),
+      (row) => row?.state === "done",
+    );
+    expect(await resultOf(series)).toBe(reference);
+    expect(bench.product.worker.pid()).toBe(workerPid);
+  });
+});
+
+/** What a restart of PostgreSQL looks like from the other end. */
+async function dropConnections(): Promise<void> {
+  const client = new pg.Client({
+    connectionString: bench.database.connectionString("superuser"),
+  });
+  await client.connect();
+  const { rowCount } = await client.query(
+    `select pg_terminate_backend(pid) from pg_stat_activity
+      where datname = current_database() and pid <> pg_backend_pid() and backend_type = 'client backend'`,
+  );
+  expect(rowCount).toBeGreaterThan(3);
+  await client.end();
+}
+
 describe("an analysis that is no longer wanted", () => {
   it("ends as cancelled when newer inputs replace it, and leaves nothing", async () => {
     const workerPid = await livingPid(bench.product.worker);
@@ -284,7 +341,6 @@ describe("an analysis that cannot be done", () => {
     const done = await seriesInState(bench, lost.id, "in review");
     const { runs } = await call(bench, listRuns, { params: { seriesId: lost.id } });
     const digest = runs.find((run) => run.slot === "short-86")?.digest ?? "";
-    const { rm } = await import("node:fs/promises");
     await rm(`${bench.product.dataDir}/recordings/${digest.slice(0, 2)}/${digest.slice(2)}`);
     await forget(done.latest_done_analysis?.id ?? "");
     await call(bench, startAnalysis, { params: { seriesId: lost.id } });
