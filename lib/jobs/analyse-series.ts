@@ -1,6 +1,6 @@
 /** The job that computes an analysis. Ids only: the row is the truth. */
 import { z } from "zod";
-import type { Queues } from "./queues";
+import type { JobQueue } from "./job-queue";
 
 export const ANALYSE_SERIES = "analyse-series";
 
@@ -12,7 +12,7 @@ export type AnalyseSeriesPayload = z.infer<typeof analyseSeriesPayloadSchema>;
 
 /** Asking again while the job waits changes nothing. */
 export async function enqueueAnalyseSeries(
-  queues: Pick<Queues, "analyses">,
+  queues: { analyses: JobQueue<AnalyseSeriesPayload> },
   payload: AnalyseSeriesPayload,
 ): Promise<void> {
   const parsed = analyseSeriesPayloadSchema.parse(payload);

@@ -1,6 +1,6 @@
 /** The job that checks an arrived recording. Ids only: the row is the truth. */
 import { z } from "zod";
-import type { Queues } from "./queues";
+import type { JobQueue } from "./job-queue";
 
 export const CHECK_ARRIVAL = "check-arrival";
 
@@ -9,7 +9,7 @@ export type CheckArrivalPayload = z.infer<typeof checkArrivalPayloadSchema>;
 
 /** Asking again while the job waits changes nothing. */
 export async function enqueueCheckArrival(
-  queues: Pick<Queues, "checks">,
+  queues: { checks: JobQueue<CheckArrivalPayload> },
   payload: CheckArrivalPayload,
 ): Promise<void> {
   const parsed = checkArrivalPayloadSchema.parse(payload);

@@ -1,5 +1,4 @@
 /** A short series of an invented loudspeaker, recorded in code, for the tests of web and worker. */
-import { toFileStem } from "../../lib/series/planned-runs";
 import { planSchema, type PlanInput } from "../../lib/series/plan-schema";
 import { DEMO_LABS, type DemoSeries } from "../../scripts/demo/demo-labs";
 import { recordSeries } from "../../scripts/demo/record-series";
@@ -45,5 +44,3 @@ export function getTestSeries(): TestSeries {
   }
   return made;
 }
-
-export const testFileStem = (): string => toFileStem(getTestSeries().loudspeaker.model);
