@@ -100,6 +100,9 @@ interface ChoiceFieldProps extends FormFieldProps {
   numbers?: boolean;
 }
 
+const toChoice = (value: unknown): string =>
+  typeof value === "string" || typeof value === "number" ? String(value) : "";
+
 /** One of a closed list. */
 export function ChoiceField({
   choices,
@@ -118,7 +121,7 @@ export function ChoiceField({
           ref={input.ref}
           figures={figures}
           name={input.name}
-          value={String(input.value)}
+          value={toChoice(input.value)}
           onBlur={input.onBlur}
           onChange={(event) =>
             input.onChange(numbers ? Number(event.target.value) : event.target.value)

@@ -56,8 +56,8 @@ function field(label: string): HTMLInputElement {
 async function enter(label: string, text: string): Promise<HTMLInputElement> {
   const input = field(label);
   await act(async () => {
-    const set = Object.getOwnPropertyDescriptor(HTMLInputElement.prototype, "value")?.set;
-    set?.call(input, text);
+    // Past React's own setter, as a key press would.
+    Reflect.set(HTMLInputElement.prototype, "value", text, input);
     input.dispatchEvent(new Event("input", { bubbles: true }));
     input.dispatchEvent(new FocusEvent("focusout", { bubbles: true }));
     await new Promise((resolve) => setTimeout(resolve, 50));

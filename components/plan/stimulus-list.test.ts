@@ -20,7 +20,7 @@ describe("listStimulusFiles", () => {
     for (const { slot, name } of listed) {
       const run = planned.find((p) => p.slot === slot);
       const served = run === undefined ? conditioning.get(slot) : toStimulusFile(plan, run);
-      expect(served?.name, slot).toBe(name);
+      expect([slot, served?.name]).toEqual([slot, name]);
     }
     const played = planned.filter((run) => run.stimulusPeakDbfs !== null).length;
     expect(listed).toHaveLength(played + 2);

@@ -12,7 +12,6 @@ export const queryKeys = {
   series: (seriesId: string) => ["series", seriesId],
   runs: (seriesId: string) => ["series", seriesId, "runs"],
   history: (seriesId: string) => ["series", seriesId, "history"],
-  analyses: (seriesId: string) => ["series", seriesId, "analyses"],
   loudspeakers: ["loudspeakers"],
   loudspeakerList: (search: string) => ["loudspeakers", "list", search],
   loudspeaker: (loudspeakerId: string) => ["loudspeakers", loudspeakerId],

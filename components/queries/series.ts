@@ -6,7 +6,7 @@ import {
   useQueryClient,
   type QueryClient,
 } from "@tanstack/react-query";
-import { listAnalyses, startAnalysis } from "@/lib/api/analyses";
+import { startAnalysis } from "@/lib/api/analyses";
 import { callApi } from "@/lib/api/client";
 import {
   createSeries,
@@ -40,12 +40,6 @@ export const seriesHistoryQuery = (seriesId: string) =>
   queryOptions({
     queryKey: queryKeys.history(seriesId),
     queryFn: ({ signal }) => callApi(getSeriesHistory, { params: { seriesId } }, { signal }),
-  });
-
-export const analysesQuery = (seriesId: string) =>
-  queryOptions({
-    queryKey: queryKeys.analyses(seriesId),
-    queryFn: ({ signal }) => callApi(listAnalyses, { params: { seriesId } }, { signal }),
   });
 
 /** What the server answered to an act is the new truth; everything else of the series is stale. */
