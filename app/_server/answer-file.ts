@@ -21,11 +21,7 @@ export async function answerFile(
     return new Response(null, { status: 416, headers });
   }
   const body = await getStore().stream(file.digest, range ?? undefined);
-  if (range === null) {
-    headers.set("content-length", String(file.bytes));
-    return new Response(body, { headers });
-  }
-  headers.set("content-length", String(range.to - range.from + 1));
+  if (range === null) return new Response(body, { headers });
   headers.set("content-range", `bytes ${range.from}-${range.to}/${file.bytes}`);
   return new Response(body, { status: 206, headers });
 }

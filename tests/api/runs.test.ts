@@ -238,7 +238,6 @@ describe("a plan", () => {
     const params = { seriesId: series.id, slot: "short-86" };
     const answer = await requestApi(getStimulus, { params }, options);
     const bytes = await answer.bytes();
-    expect(answer.headers.get("content-length")).toBe(String(bytes.length));
     const audio = readWav(toByteSource(bytes), "stimulus");
     expect([audio.bits, audio.rateHz]).toEqual([24, 48_000]);
     const missing = await problemOf(
@@ -248,7 +247,6 @@ describe("a plan", () => {
 
     const zip = await requestApi(getStimulusZip, { params: { seriesId: series.id } }, options);
     const archive = Buffer.from(await zip.bytes());
-    expect(zip.headers.get("content-length")).toBe(String(archive.length));
     const entries = unzip(archive);
     expect([...entries.keys()]).toEqual([
       "brackenmini_check-list.txt",

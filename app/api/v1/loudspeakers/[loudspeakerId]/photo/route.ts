@@ -43,7 +43,6 @@ export const GET = handle(getLoudspeakerPhoto, async ({ params, inLab, caller })
   return new Response(await getStore().stream(found.digest), {
     headers: {
       "content-type": found.media,
-      "content-length": String(found.bytes),
       "content-security-policy": "default-src 'none'",
       "cache-control": "private, max-age=300",
     },

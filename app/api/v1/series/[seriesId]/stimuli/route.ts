@@ -1,4 +1,4 @@
-import { makeZip, predictLength } from "client-zip";
+import { makeZip } from "client-zip";
 import { getStimulusZip } from "@/lib/api/series";
 import { toDisposition } from "@/lib/http/disposition";
 import type { StimulusFile } from "@/lib/series/stimulus-files";
@@ -10,15 +10,10 @@ export const GET = handle(getStimulusZip, async ({ params, inLab, caller }) => {
   const { checkList } = stimuli;
   const text = new TextEncoder().encode(checkList.text);
   const files = new Set(stimuli.bySlot.values());
-  const sizes = [
-    { name: checkList.name, size: text.length },
-    ...[...files].map(({ name, bytes }) => ({ name, size: bytes })),
-  ];
   return new Response(makeZip(toEntries(files, { name: checkList.name, text })), {
     headers: {
       "content-type": "application/zip",
       "cache-control": "no-store, no-transform",
-      "content-length": String(predictLength(sizes)),
       "content-disposition": toDisposition(`${stimuli.fileStem}_stimuli.zip`),
     },
   });
