@@ -42,11 +42,10 @@ export function LabChoices() {
               ) : (
                 <Button
                   size="small"
-                  aria-label={`Work in ${choice.name}`}
                   busy={change.isPending && change.variables === choice.id}
                   onClick={() => change.mutate(choice.id)}
                 >
-                  Work there
+                  Work there<span className="sr-only">, in {choice.name}</span>
                 </Button>
               )}
             </span>

@@ -94,7 +94,7 @@ export function TwoPersonSetting() {
       <Checkbox {...register("settings.two_person_rule")} aria-describedby="two-person">
         Who signs off has not made the recordings
       </Checkbox>
-      <p id="two-person" className="pl-[25px] text-small text-ink-2">
+      <p id="two-person" className="pl-[25px] text-small text-ink-2 max-md:-mt-2.5">
         With the rule off one person may do both, and the page then says so.
       </p>
     </>

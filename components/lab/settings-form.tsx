@@ -15,7 +15,13 @@ import { useUnsavedGuard } from "../plan/use-unsaved-guard";
 import { useUpdateLab } from "../queries/people";
 import { SettingsConflict } from "./settings-conflict";
 import { NameSetting, NumberSetting, TimeZoneSetting, TwoPersonSetting } from "./settings-fields";
-import { EXPOSURE_WORDS, toLabChange, toSettingDifferences, type LabState } from "./settings-words";
+import {
+  EXPOSURE_WORDS,
+  mergeStates,
+  toLabChange,
+  toSettingDifferences,
+  type LabState,
+} from "./settings-words";
 
 const formSchema = z.object({
   name: z.string().trim().min(1, "Enter a name.").max(120),
@@ -59,7 +65,8 @@ export function SettingsForm({ lab, mostUploadMb, onReread }: SettingsFormProps)
     } catch (error) {
       if (!(error instanceof ApiProblem)) throw error;
       const theirs = error.code === "conflict.changed" ? await onReread() : null;
-      if (theirs !== null) setConflict({ theirs: toState(theirs), mine });
+      if (theirs === null) return;
+      setConflict({ theirs: toState(theirs), mine: mergeStates(was, mine, toState(theirs)) });
     }
   };
   const fault = conflict === null ? update.error : null;

@@ -1,6 +1,12 @@
 import { describe, expect, it } from "vitest";
 import { labSettingsSchema } from "@/lib/labs/settings-schema";
-import { toLabChange, toSettingDifferences, toSettingRows, type LabState } from "./settings-words";
+import {
+  mergeStates,
+  toLabChange,
+  toSettingDifferences,
+  toSettingRows,
+  type LabState,
+} from "./settings-words";
 
 const before: LabState = {
   name: "Withy Lane",
@@ -57,4 +63,33 @@ describe("toLabChange", () => {
 it("names every setting once", () => {
   const labels = toSettingRows(before).map((row) => row.label);
   expect(new Set(labels).size).toBe(labels.length);
+});
+
+describe("mergeStates", () => {
+  it("puts over theirs what was touched here, and nothing else", () => {
+    const { arrival } = before.settings;
+    const theirs = change(
+      { two_person_rule: false, arrival: { ...arrival, snr_fail_dB: 18 } },
+      { name: "Withy Lane Lab" },
+    );
+    const mine = change(
+      { max_upload_mb: 120, arrival: { ...arrival, level_warn_dB: 0.8 } },
+      { time_zone: "UTC" },
+    );
+    expect(mergeStates(before, mine, theirs)).toEqual({
+      name: "Withy Lane Lab",
+      time_zone: "UTC",
+      settings: {
+        ...before.settings,
+        two_person_rule: false,
+        max_upload_mb: 120,
+        arrival: { ...arrival, level_warn_dB: 0.8, snr_fail_dB: 18 },
+      },
+    });
+  });
+
+  it("keeps ours where both touched the same", () => {
+    const merged = mergeStates(before, change({}, { name: "A" }), change({}, { name: "B" }));
+    expect(merged.name).toBe("A");
+  });
 });

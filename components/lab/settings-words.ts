@@ -63,3 +63,23 @@ export function toLabChange(before: LabState, after: LabState): Partial<LabState
     ...(sameSettings ? {} : { settings }),
   };
 }
+
+/**
+ * What stands after a change made on `before` is carried over to `theirs`: only what was touched
+ * here goes over what another admin saved.
+ */
+export function mergeStates(before: LabState, mine: LabState, theirs: LabState): LabState {
+  const settings = mergeTouched(before.settings, mine.settings, theirs.settings);
+  const arrival = mergeTouched(
+    before.settings.arrival,
+    mine.settings.arrival,
+    theirs.settings.arrival,
+  );
+  return { ...mergeTouched(before, mine, theirs), settings: { ...settings, arrival } };
+}
+
+function mergeTouched<State extends object>(before: State, mine: State, theirs: State): State {
+  const known = new Map(Object.entries(before));
+  const touched = Object.entries(mine).filter(([name, value]) => known.get(name) !== value);
+  return { ...theirs, ...Object.fromEntries(touched) };
+}

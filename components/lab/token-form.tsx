@@ -57,8 +57,8 @@ export function TokenForm() {
         secret={made.token}
         onDone={() => setMade(null)}
       >
-        Copy it now: only its digest is kept, and it is not shown again. Whoever has it acts as you,
-        with the roles {made.row.roles.join(", ")}.
+        Copy it now: only its digest is kept, and it is not shown again. Whoever has it acts in your
+        name, as {made.row.roles.join(", ")}.
       </ShownOnce>
     );
   }

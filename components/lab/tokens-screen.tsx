@@ -52,13 +52,13 @@ export function TokensScreen({ seesAll, publicUrl }: TokensScreenProps) {
           {tokens.data !== undefined && all.length === 0 && (
             <EmptyState title="No tokens yet">
               A token lets a script do what you do here: enter series, send recordings, read
-              results. Make one at the side; it is shown once.
+              results. It is shown once, when it is made.
             </EmptyState>
           )}
           <TokenList title="In use" tokens={inUse} seesAll={seesAll} now={now} />
           <TokenList title="Expired or revoked" tokens={ended} seesAll={seesAll} now={now} />
         </div>
-        <div className="grid min-w-0 gap-8">
+        <div className="grid min-w-0 grid-cols-[minmax(0,1fr)] gap-8">
           <TokenForm />
           <TokenHowTo publicUrl={publicUrl} />
         </div>

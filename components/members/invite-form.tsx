@@ -69,7 +69,7 @@ export function InviteForm() {
         className="mt-2.5 grid gap-3.5"
         onSubmit={(event) => void form.handleSubmit(send)(event)}
       >
-        <Field label="email" error={errors.email?.message}>
+        <Field label="email" error={errors.email?.message} hint="They will sign in with it.">
           {(control) => (
             <TextInput {...control} type="email" autoComplete="off" {...form.register("email")} />
           )}

@@ -72,7 +72,7 @@ export function MemberRow({ member, self, onlyAdmin, mayAdminister }: MemberRowP
         <p className="md:text-right">{member.roles.join(", ")}</p>
       )}
       {mayAdminister && (
-        <div className="md:text-right">
+        <div className="flex md:justify-end">
           {!onlyAdmin && <RemoveMember member={member} self={self} />}
         </div>
       )}
@@ -92,11 +92,10 @@ export function MemberRow({ member, self, onlyAdmin, mayAdminister }: MemberRowP
             <Button
               tone="decision"
               size="small"
-              aria-label={`Save the roles of ${member.name}`}
               busy={setRoles.isPending}
               onClick={() => (givesUp ? setAsked(true) : save())}
             >
-              Save roles
+              Save roles<span className="sr-only"> of {member.name}</span>
             </Button>
           )}
           <Button tone="quiet" size="small" onClick={() => setDraft(null)}>

@@ -50,13 +50,13 @@ export function RemoveMember({ member, self }: { member: Member; self: boolean }
           </Button>
         }
       >
-        <p className="text-left">
+        <p>
           {self ? "You are" : `${member.name} is`} out at once, in the browser and by every token.
           What was done stays in the histories under the same name. To come back takes a new
           invitation.
         </p>
         {remove.isError && (
-          <p role="alert" className="mt-2 text-left text-fault">
+          <p role="alert" className="mt-2 text-fault">
             {remove.error.message}
           </p>
         )}

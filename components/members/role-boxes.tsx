@@ -57,7 +57,7 @@ export function RoleBoxes({
                 {role}
               </Checkbox>
               {explained && (
-                <p id={`${id}${role}`} className="pl-[25px] text-small text-ink-2">
+                <p id={`${id}${role}`} className="pl-[25px] text-small text-ink-2 max-md:-mt-2.5">
                   {ROLE_SENTENCES[role]}
                 </p>
               )}

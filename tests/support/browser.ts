@@ -1,0 +1,29 @@
+/** Chromium for the suites that look at pages. */
+import { readFileSync } from "node:fs";
+import { createRequire } from "node:module";
+import { type Browser, chromium, type Page } from "playwright-core";
+import { z } from "zod";
+
+/** Where the distribution puts it. */
+const CHROMIUM = "/usr/bin/chromium";
+
+export const openBrowser = (): Promise<Browser> => chromium.launch({ executablePath: CHROMIUM });
+
+const axeSource = readFileSync(
+  createRequire(import.meta.url).resolve("axe-core/axe.min.js"),
+  "utf8",
+);
+const findingsSchema = z.array(z.string());
+
+/**
+ * What a page as it stands now lacks for readers, keyboards and weak eyes; empty is good. The
+ * page's context must have been opened with `bypassCSP`, so that the checker may be put in.
+ */
+export async function findAccessFaults(page: Page): Promise<string[]> {
+  await page.evaluate(axeSource);
+  const findings: unknown = await page.evaluate(`
+    axe.run(document, { resultTypes: ["violations"] }).then(({ violations }) =>
+      violations.flatMap(({ id, nodes }) => nodes.map(({ html }) => id + ": " + html.slice(0, 160))))
+  `);
+  return findingsSchema.parse(findings);
+}
