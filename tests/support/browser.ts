@@ -9,6 +9,13 @@ const CHROMIUM = "/usr/bin/chromium";
 
 export const openBrowser = (): Promise<Browser> => chromium.launch({ executablePath: CHROMIUM });
 
+/** Forms that came with the page are taken over by its script; before that they would be sent as plain ones. */
+export async function waitForForm(page: Page): Promise<void> {
+  await page.waitForFunction(
+    "Object.keys(document.querySelector('form') ?? {}).some((key) => key.startsWith('__reactProps'))",
+  );
+}
+
 const axeSource = readFileSync(
   createRequire(import.meta.url).resolve("axe-core/axe.min.js"),
   "utf8",
