@@ -1,6 +1,5 @@
 /** Chromium for the suites that look at pages. */
-import { readFileSync } from "node:fs";
-import { createRequire } from "node:module";
+import axe from "axe-core";
 import { type Browser, chromium, type Page } from "playwright-core";
 import { z } from "zod";
 
@@ -16,10 +15,6 @@ export async function waitForForm(page: Page): Promise<void> {
   );
 }
 
-const axeSource = readFileSync(
-  createRequire(import.meta.url).resolve("axe-core/axe.min.js"),
-  "utf8",
-);
 const findingsSchema = z.array(z.string());
 
 /**
@@ -27,7 +22,7 @@ const findingsSchema = z.array(z.string());
  * page's context must have been opened with `bypassCSP`, so that the checker may be put in.
  */
 export async function findAccessFaults(page: Page): Promise<string[]> {
-  await page.evaluate(axeSource);
+  await page.evaluate(axe.source);
   const findings: unknown = await page.evaluate(`
     axe.run(document, { resultTypes: ["violations"] }).then(({ violations }) =>
       violations.flatMap(({ id, nodes }) => nodes.map(({ html }) => id + ": " + html.slice(0, 160))))
