@@ -2,7 +2,7 @@
 
 import { useEffect } from "react";
 
-const QUESTION = "The plan has changes that are not saved. Leave without them?";
+const QUESTION = "This page has changes that are not saved. Leave without them?";
 
 /** Asks before the page is left while something is not saved: closing, reloading, following a link. */
 export function useUnsavedGuard(unsaved: boolean): void {
