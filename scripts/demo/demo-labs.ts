@@ -156,7 +156,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
         },
         {
           state: { power: "battery, full", volume: "80 %", eq: "off" },
-          levels: levels([70, 76, 82, 88]),
+          levels: levels([68, 74, 80, 84]),
         },
         { fullScaleDb: 110 },
       ),
@@ -226,7 +226,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
         {
           state: { ...MAINS, preset: "front of house" },
           sweep: { length_s: 5.5 },
-          levels: levels([88, 98, 108, 114]),
+          levels: levels([90, 100, 108, 112]),
           calibration: { level_dB: 114 },
           place: { environment: "anechoic", temperature_C: 19, distance_m: 2, tester: "next-room" },
         },

@@ -35,16 +35,16 @@ describe("invented loudspeakers", () => {
   });
 
   it("Samphire 3: its bass is withdrawn from the quietest run on, by the same share of every step", () => {
-    const losses = [70, 76, 82].map((db) => measureStaticLossDb(samphire3, 80, db));
+    const losses = [68, 74, 80].map((db) => measureStaticLossDb(samphire3, 80, db));
     const [a = NaN, b = NaN, c = NaN] = losses;
-    expect(a).toBeGreaterThan(3);
-    expect(b - a).toBeCloseTo(6 * 0.55, 1);
-    expect(c - b).toBeCloseTo(6 * 0.55, 1);
+    expect(a).toBeGreaterThan(2);
+    expect(b - a).toBeCloseTo(6 * 0.38, 1);
+    expect(c - b).toBeCloseTo(6 * 0.38, 1);
   });
 
   it("Fennel 5: the port gives out around its tuning, gradually", () => {
     const [at96 = NaN, at102 = NaN] = [96, 102].map((db) => measureStaticLossDb(fennel5, 50, db));
-    expect(at102).toBeGreaterThan(1.5);
+    expect(at102).toBeGreaterThan(1);
     const slope = 1 - (at102 - at96) / 6;
     expect(slope).toBeGreaterThan(0.4);
     expect(slope).toBeLessThan(0.9);
@@ -70,10 +70,10 @@ describe("invented loudspeakers", () => {
     expect(Math.abs(lossDb - 20 * Math.log10(1 + 0.00393 * 15.6))).toBeLessThan(0.01);
   });
 
-  it("Ketch 12: one limiter over everything from 110 dB", () => {
+  it("Ketch 12: one limiter over everything from 105 dB", () => {
     for (const hz of [80, 400, 2000, 8000]) {
-      expect(Math.abs(measureStaticLossDb(ketch12, hz, 108))).toBeLessThan(0.1);
-      expect(measureStaticLossDb(ketch12, hz, 114)).toBeCloseTo(2.76, 0);
+      expect(Math.abs(measureStaticLossDb(ketch12, hz, 104))).toBeLessThan(0.1);
+      expect(measureStaticLossDb(ketch12, hz, 112)).toBeCloseTo(6 * 0.92, 0);
     }
   });
 });

@@ -62,7 +62,11 @@ export const LOUDSPEAKERS = {
       {
         fromHz: null,
         toHz: 2600,
-        driver: { resonanceHz: 78, q: 0.8, motor: { levelDb: 105, frequencyHz: 80, offset: 0.08 } },
+        driver: {
+          resonanceHz: 78,
+          q: 0.8,
+          motor: { levelDb: 105.5, frequencyHz: 80, offset: 0.08 },
+        },
       },
       { fromHz: 2600, toHz: null, driver: { levelDb: 102, second: 0.01, third: 0.004 } },
     ],
@@ -91,15 +95,15 @@ export const LOUDSPEAKERS = {
       { frequencyHz: 4400, q: 1.8, gainDb: -0.8 },
     ],
   },
-  /** Battery and 3 inches: the bass boost is withdrawn from the quietest run on, and a limiter ends it. */
+  /** Battery and 3 inches: the bass boost is withdrawn from the quietest run on, and a limiter holds the rest. */
   samphire3: {
     ways: [
       {
         fromHz: null,
         toHz: 240,
         limiter: {
-          thresholdDb: 62,
-          slope: 0.45,
+          thresholdDb: 60,
+          slope: 0.62,
           kneeDb: 4,
           detectorS: 0.015,
           attackS: 0.004,
@@ -111,16 +115,20 @@ export const LOUDSPEAKERS = {
           motor: { levelDb: 108, frequencyHz: 100, offset: 0.06 },
         },
       },
-      { fromHz: 240, toHz: null, driver: { levelDb: 90, second: 0.012, third: 0.005 } },
+      {
+        fromHz: 240,
+        toHz: null,
+        limiter: {
+          thresholdDb: 79.5,
+          slope: 0.1,
+          kneeDb: 2,
+          detectorS: 0.01,
+          attackS: 0.003,
+          releaseS: 0.02,
+        },
+        driver: { levelDb: 86, second: 0.012, third: 0.005 },
+      },
     ],
-    limiter: {
-      thresholdDb: 87,
-      slope: 0.1,
-      kneeDb: 2,
-      detectorS: 0.01,
-      attackS: 0.003,
-      releaseS: 0.02,
-    },
     response: [
       { frequencyHz: 700, q: 0.9, gainDb: 1.8 },
       { frequencyHz: 5200, q: 2, gainDb: -2.2 },
@@ -161,7 +169,7 @@ export const LOUDSPEAKERS = {
           resonanceHz: 50,
           q: 0.42,
           motor: { levelDb: 113, frequencyHz: 60, offset: 0.05 },
-          port: { tuningHz: 52, compliance: 1.4, q: 14, levelDb: 97, turbulentQ: 3 },
+          port: { tuningHz: 52, compliance: 1.4, q: 14, levelDb: 103, turbulentQ: 3 },
         },
       },
       { fromHz: 2100, toHz: null, driver: { levelDb: 102, second: 0.008, third: 0.003 } },
@@ -179,7 +187,7 @@ export const LOUDSPEAKERS = {
       { fromHz: 1500, toHz: null, driver: { levelDb: 118, second: 0.01, third: 0.003 } },
     ],
     limiter: {
-      thresholdDb: 111,
+      thresholdDb: 106,
       slope: 0.08,
       kneeDb: 3,
       detectorS: 0.01,
