@@ -2,7 +2,7 @@
 import { analyseSeries } from "../../../lib/analysis/analyse-series";
 import type { Band, BandLevel, Result } from "../../../lib/result/result-schema";
 import type { Device } from "./device";
-import { LEVELS_DB, recordDevice, type DeviceSet } from "./record-device";
+import { LEVELS_DB, recordDevice, type Conditions, type DeviceSet } from "./record-device";
 import { findOnsetDb, measureStaticLaw, type StaticLaw } from "./static-law";
 
 /** Highest band of the accuracy table. */
@@ -48,8 +48,11 @@ const distortionTolerance = (least: number, snrDb: number): number =>
 const toThirdOctave = (band: Band): number => Math.round(10 * Math.log10(band.exact_Hz / 1000));
 const toDb = (ratio: number): number => 20 * Math.log10(ratio);
 
-export async function compareDevice(device: Device): Promise<DeviceReport> {
-  const set = await recordDevice(device);
+export async function compareDevice(
+  device: Device,
+  conditions: Conditions = {},
+): Promise<DeviceReport> {
+  const set = await recordDevice(device, conditions);
   const result = await analyseSeries(set.series, set.source);
   const bands = result.bands.filter((b) => b.nominal_Hz <= HIGHEST_HZ);
   const everywhere = device.sameEverywhere ? await measureStaticLaw(device, 1000) : null;

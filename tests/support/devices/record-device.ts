@@ -37,13 +37,18 @@ const createResponse = (rateHz: number): Stage =>
     createPeak({ frequencyHz: 6500, q: 2, gainDb: 3 }, rateHz),
   ]);
 
-/**
- * @param options.roomDb level of the room's noise, dB SPL.
- * @param options.stepErrorDb by run level: what the player's step is off by.
- */
+export interface Conditions {
+  /** Level of the room's noise, dB SPL. */
+  roomDb?: number;
+  /** By run level: what the player's step is off by, dB. */
+  stepErrorDb?: Record<number, number>;
+  /** By how much the recorder's clock runs fast. */
+  driftPpm?: number;
+}
+
 export async function recordDevice(
   device: Device,
-  { roomDb = 34, stepErrorDb = {} }: { roomDb?: number; stepErrorDb?: Record<number, number> } = {},
+  { roomDb = 34, stepErrorDb = {}, driftPpm = 0 }: Conditions = {},
 ): Promise<DeviceSet> {
   const { rateHz, oversampling } = device;
   const shape: StimulusShape = {
@@ -88,7 +93,7 @@ export async function recordDevice(
     const heard = record(pressure, oversampling, {
       length: stimulus.length + Math.round((latencyS + 0.1) * rateHz),
       delay: latencyS * rateHz,
-      driftPpm: 0,
+      driftPpm,
     });
     truth.set(levelDb, measureTruth(heard, stimulus, shape));
     write(`${levelDb}.wav`, toDigital(heard, rateHz, recorder, random));
