@@ -213,6 +213,27 @@ describe("tables", () => {
     expect(page.querySelector('th[scope="row"]')?.textContent).toBe("63 Hz");
     expect(page.querySelector("td")?.textContent).toBe("94.0");
   });
+  it("of values sorts by any column, and leaves what has no number at the foot", () => {
+    const limits = ["94.0", "in the noise", "at least 102.7 dB", "−0.3"];
+    const columns = [
+      { key: "band", head: "band" },
+      { key: "limit", head: "limit" },
+    ];
+    const rows = limits.map((limit, at) => ({ id: at, cells: { band: `${at}`, limit } }));
+    show(<ValuesTable caption="Limits" columns={columns} rows={rows} />);
+    const order = () => [...page.querySelectorAll("td")].map((cell) => cell.textContent);
+    const head = page.querySelectorAll("thead button")[1];
+    expect(order()).toEqual(limits);
+    act(() => (head as HTMLButtonElement).click());
+    const first = order();
+    act(() => (head as HTMLButtonElement).click());
+    const second = order();
+    const up = ["−0.3", "94.0", "at least 102.7 dB", "in the noise"];
+    const down = ["at least 102.7 dB", "94.0", "−0.3", "in the noise"];
+    expect([first, second]).toContainEqual(up);
+    expect([first, second]).toContainEqual(down);
+    expect(page.querySelector("th[aria-sort]")?.textContent).toBe("limit");
+  });
 });
 
 describe("a dialog", () => {

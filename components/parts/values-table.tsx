@@ -1,5 +1,15 @@
-import type { ReactNode } from "react";
-import { Table, TableFrame, Td, Th } from "./table";
+"use client";
+
+import {
+  createColumnHelper,
+  createSortedRowModel,
+  rowSortingFeature,
+  sortFn_basic,
+  tableFeatures,
+  useTable,
+} from "@tanstack/react-table";
+import { useMemo, type ReactNode } from "react";
+import { SortTh, Table, TableFrame, Td } from "./table";
 
 export interface ValuesColumn {
   key: string;
@@ -25,14 +35,47 @@ interface ValuesTableProps {
   summary?: string;
 }
 
-/** Every figure has its numbers as a table, closed until asked for. */
+const features = tableFeatures({
+  rowSortingFeature,
+  sortedRowModel: createSortedRowModel(),
+  sortFns: { basic: sortFn_basic },
+});
+const helper = createColumnHelper<typeof features, ValuesRow>();
+
+/**
+ * What a cell sorts by: its first number, so that "at least 102.7 dB" and "94.0" stand in order;
+ * a cell without a number is undefined and stands last either way.
+ */
+export function toSortValue(cell: ReactNode): number | undefined {
+  if (typeof cell === "number") return cell;
+  if (typeof cell !== "string") return undefined;
+  const found = /[−-]?\d+(?:\.\d+)?|[−-]?\.\d+/.exec(cell);
+  return found === null ? undefined : Number(found[0].replace("−", "-"));
+}
+
+/** Every figure has its numbers as a table, closed until asked for; any column sorts it. */
 export function ValuesTable({
   caption,
   columns,
   rows,
   summary = "Table of values",
 }: ValuesTableProps) {
-  const [first, ...rest] = columns;
+  const defined = useMemo(
+    () =>
+      helper.columns(
+        columns.map((column, at) =>
+          helper.accessor(
+            (row) =>
+              at === 0 && typeof row.id === "number" ? row.id : toSortValue(row.cells[column.key]),
+            { id: column.key, header: column.head, sortFn: "basic", sortUndefined: "last" },
+          ),
+        ),
+      ),
+    [columns],
+  );
+  const data = useMemo(() => [...rows], [rows]);
+  const table = useTable({ features, columns: defined, data });
+  const wordsOf = new Set(columns.filter((column) => column.words).map((column) => column.key));
   return (
     <details className="group mt-2">
       <summary className="inline-flex min-h-[30px] list-none items-center gap-2 text-small underline underline-offset-3 max-md:min-h-11 [&::-webkit-details-marker]:hidden">
@@ -51,30 +94,39 @@ export function ValuesTable({
         <Table>
           <caption className="sr-only">{caption}</caption>
           <thead>
-            <tr>
-              {columns.map((column, at) => (
-                <Th key={column.key} right={at > 0 && column.words !== true}>
-                  {column.head}
-                </Th>
-              ))}
-            </tr>
+            {table.getHeaderGroups().map((group) => (
+              <tr key={group.id}>
+                {group.headers.map((header, at) => (
+                  <SortTh
+                    key={header.id}
+                    right={at > 0 && !wordsOf.has(header.id)}
+                    sorted={toDirection(header.column.getIsSorted())}
+                    onSort={() => header.column.toggleSorting()}
+                  >
+                    {columns[at]?.head}
+                  </SortTh>
+                ))}
+              </tr>
+            ))}
           </thead>
           <tbody>
-            {rows.map((row) => (
+            {table.getRowModel().rows.map(({ original: row }) => (
               <tr key={row.id} className="hover:bg-wash">
-                {first !== undefined && (
-                  <th
-                    scope="row"
-                    className="figures border-t border-rule px-2.5 py-1.5 pl-4! text-figure font-medium whitespace-nowrap"
-                  >
-                    {row.cells[first.key]}
-                  </th>
+                {columns.map((column, at) =>
+                  at === 0 ? (
+                    <th
+                      key={column.key}
+                      scope="row"
+                      className="figures border-t border-rule px-2.5 py-1.5 pl-4! text-figure font-medium whitespace-nowrap"
+                    >
+                      {row.cells[column.key]}
+                    </th>
+                  ) : (
+                    <Td key={column.key} figures right={column.words !== true} className="py-1.5!">
+                      {row.cells[column.key]}
+                    </Td>
+                  ),
                 )}
-                {rest.map((column) => (
-                  <Td key={column.key} figures right={column.words !== true} className="py-1.5!">
-                    {row.cells[column.key]}
-                  </Td>
-                ))}
               </tr>
             ))}
           </tbody>
@@ -83,3 +135,6 @@ export function ValuesTable({
     </details>
   );
 }
+
+const toDirection = (sorted: false | "asc" | "desc"): "ascending" | "descending" | null =>
+  sorted === false ? null : sorted === "asc" ? "ascending" : "descending";
