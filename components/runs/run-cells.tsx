@@ -47,7 +47,12 @@ export function NameCell({ children }: { children: ReactNode }) {
 
 export function FileCell({ name }: { name: string | null }) {
   return (
-    <Cell className="max-w-60 max-md:col-span-2 max-md:max-w-full">
+    <Cell
+      className={joinClasses(
+        "max-w-60 max-md:col-span-2 max-md:max-w-full",
+        name === null && "max-md:hidden",
+      )}
+    >
       <span className="figures block truncate text-figure" title={name ?? undefined}>
         {name ?? <NoValue say="no file yet" />}
       </span>

@@ -56,7 +56,7 @@ export function RunRows({ row, paint, calibrator, mayCapture, acts }: RunRowsPro
           <span className="text-figure font-normal text-ink-2">{kind}</span>
         </NameCell>
         <FileCell name={run?.file_name ?? shownUpload?.fileName ?? null} />
-        <Cell>
+        <Cell className={run === null && shownUpload === null ? "max-md:hidden" : undefined}>
           {run === null && shownUpload === null ? (
             <NoValue say="nothing received" />
           ) : (
