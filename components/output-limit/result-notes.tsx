@@ -10,7 +10,7 @@ export function ResultNotes({ result }: { result: Result }) {
   return (
     <div className="mt-5 grid gap-x-10 gap-y-5 lg:grid-cols-2">
       <section aria-label="Loss of each run">
-        <h3>Loss of each run</h3>
+        <h2 className="text-[15px]/[22px]">Loss of each run</h2>
         <ul className="mt-1 text-small">
           {shapes.map((shape) => (
             <li key={shape.file} className="border-b border-rule py-1.5">
@@ -21,7 +21,7 @@ export function ResultNotes({ result }: { result: Result }) {
       </section>
       {result.warnings.length > 0 && (
         <section aria-label="What the analysis warns of">
-          <h3>What the analysis warns of</h3>
+          <h2 className="text-[15px]/[22px]">What the analysis warns of</h2>
           <ul className="mt-1 text-small">
             {result.warnings.map((warning) => (
               <li
