@@ -356,7 +356,9 @@ describe("the lab", () => {
     const kinds = await Promise.all(TRAIL_ABOUT.map((about) => actsOf(`&about=${about}`)));
     expect(kinds.flat().toSorted()).toEqual(all.toSorted());
     const rooms = kinds.map((acts) =>
-      [...new Set(acts.map((act) => act.split(".")[0]))].toSorted(),
+      [...new Set(acts.map((act) => act.split(".")[0]))].toSorted((a, b) =>
+        (a ?? "").localeCompare(b ?? ""),
+      ),
     );
     expect(rooms.slice(0, 4)).toEqual([["account"], ["invitation", "member"], ["token"], ["lab"]]);
     const refused = await call(listTrail, "GET", admin, { query: "?about=weather" });
