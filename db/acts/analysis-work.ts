@@ -4,6 +4,7 @@ import { toFileStem, toPlannedRuns } from "../../lib/series/planned-runs";
 import type { Trx } from "../client";
 import { getAnalysis } from "../queries/analyses";
 import { getLoudspeaker } from "../queries/loudspeakers";
+import { listRequestedRuns } from "../queries/run-requests";
 import { listRuns } from "../queries/runs";
 import { getSeries } from "../queries/series";
 
@@ -29,7 +30,8 @@ export async function loadAnalysisWork(
   const analysis = await getAnalysis(trx, labId, analysisId);
   const row = await getSeries(trx, labId, analysis.series_id);
   const { model } = await getLoudspeaker(trx, labId, row.loudspeaker_id);
-  const planned = toPlannedRuns(row.plan, toFileStem(model));
+  const requested = await listRequestedRuns(trx, labId, analysis.series_id);
+  const planned = toPlannedRuns(row.plan, toFileStem(model), requested);
   const slotById = new Map(
     (await listRuns(trx, labId, analysis.series_id)).map((run) => [run.id, run.slot]),
   );

@@ -6,6 +6,7 @@ import { toFileStem, toPlannedRuns, type PlannedRun } from "../../lib/series/pla
 import type { SeriesSource } from "../../lib/series/to-series-json";
 import type { Trx } from "../client";
 import { getLoudspeaker, type LoudspeakerRow } from "../queries/loudspeakers";
+import { listRequestedRuns } from "../queries/run-requests";
 import { listExcuses, listRuns, type RunRow } from "../queries/runs";
 import { getSeries, type SeriesWithNames } from "../queries/series";
 
@@ -25,7 +26,8 @@ export interface Capture {
 export async function loadCapture(trx: Trx, labId: string, seriesId: string): Promise<Capture> {
   const series = await getSeries(trx, labId, seriesId);
   const loudspeaker = await getLoudspeaker(trx, labId, series.loudspeaker_id);
-  const planned = toPlannedRuns(series.plan, toFileStem(loudspeaker.model));
+  const requested = await listRequestedRuns(trx, labId, seriesId);
+  const planned = toPlannedRuns(series.plan, toFileStem(loudspeaker.model), requested);
   const runs = await listRuns(trx, labId, seriesId);
   const rows = await listExcuses(trx, labId, seriesId);
   const excuses = new Map(rows.map((row) => [row.slot, row.reason]));

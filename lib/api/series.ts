@@ -132,6 +132,8 @@ export const plannedRunSchema = z.object({
   label: z.string(),
   fileName: z.string(),
   stimulusPeakDbfs: z.number().nullable(),
+  /** An analyst asked for it after the plan was fixed. */
+  asked: z.object({ by: z.string(), reason: z.string() }).optional(),
 });
 
 export const seriesViewSchema = z.object({

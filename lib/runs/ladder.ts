@@ -81,7 +81,13 @@ export function toStopRule(
 function whatComesFirst(run: PlannedRun, planned: readonly PlannedRun[]): PlannedRun[] {
   const { levelDb } = run;
   if (levelDb === null) return [];
-  const short = planned.filter((other) => other.role === "short-term" && other.repeat === 1);
+  // A run that was asked for later holds up none of the plan's own.
+  const short = planned.filter(
+    (other) =>
+      other.role === "short-term" &&
+      other.repeat === 1 &&
+      (other.asked === undefined || other.levelDb === levelDb),
+  );
   if (run.role === "closing" || run.role === "long-term" || run.role === "variant") {
     return short.filter((other) => other.levelDb === levelDb);
   }

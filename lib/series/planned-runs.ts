@@ -27,12 +27,31 @@ export interface PlannedRun {
   fileName: string;
   /** Peak of the stimulus re digital full scale, dB; null where nothing of ours is played. */
   stimulusPeakDbfs: number | null;
+  /** An analyst asked for it after the plan was fixed. */
+  asked?: { by: string; reason: string } | undefined;
+}
+
+/** A run that was asked for, with the place that was opened for it. */
+export interface RequestedRun {
+  slot: string;
+  levelDb: number;
+  kind: "short-term" | "long-term";
+  variant: string | null;
+  by: string;
+  reason: string;
 }
 
 const STIMULUS_TOP_DBFS = -3;
 
-/** @param fileStem from toFileStem(model). Runs come in capture order: before, ladder upwards, after. */
-export function toPlannedRuns(plan: Plan, fileStem: string): PlannedRun[] {
+/**
+ * @param fileStem from toFileStem(model). Runs come in capture order: before, ladder upwards, after.
+ * @param requested runs that were asked for later; each stands at the end of its level.
+ */
+export function toPlannedRuns(
+  plan: Plan,
+  fileStem: string,
+  requested: readonly RequestedRun[] = [],
+): PlannedRun[] {
   const levels = [...plan.levels].sort((a, b) => a.level_dB - b.level_dB);
   const lowest = levels[0]?.level_dB ?? 0;
   const highest = levels.at(-1)?.level_dB ?? 0;
@@ -120,7 +139,38 @@ export function toPlannedRuns(plan: Plan, fileStem: string): PlannedRun[] {
       stem: "calibrator_after",
     });
   }
+  for (const request of requested) {
+    const run = toAskedRun(request, fileStem, peak(request.levelDb));
+    const louder = runs.findIndex(
+      (other) => IN_LADDER.has(other.role) && (other.levelDb ?? -Infinity) > request.levelDb,
+    );
+    const last = runs.findLastIndex((other) => IN_LADDER.has(other.role));
+    runs.splice(louder < 0 ? last + 1 : louder, 0, run);
+  }
   return runs;
+}
+
+const IN_LADDER: ReadonlySet<RecordingRole> = new Set(["short-term", "long-term", "variant"]);
+
+/** The number at the end of its slot tells one repeat of a level from the next. */
+function toAskedRun(request: RequestedRun, fileStem: string, peakDbfs: number): PlannedRun {
+  const { slot, levelDb, kind, variant, by, reason } = request;
+  const number = toLevelText(levelDb);
+  const nth = /-(\d+)$/.exec(slot.slice(slot.indexOf(`-${number}`) + number.length + 1))?.[1];
+  const repeat = nth === undefined ? 1 : Number(nth);
+  const again = repeat === 1 ? "" : `, repeat ${repeat - 1}`;
+  const name = variant === null ? kind.replace("-term", "") : "variant_asked";
+  return {
+    slot,
+    role: variant === null ? kind : "variant",
+    levelDb,
+    repeat,
+    variant,
+    label: variant === null ? `${number} dB ${kind}${again}` : `${number} dB, ${variant}${again}`,
+    fileName: `${fileStem}_${number}_${name}${repeat === 1 ? "" : `_r${repeat}`}.wav`,
+    stimulusPeakDbfs: peakDbfs,
+    asked: { by, reason },
+  };
 }
 
 /** "Osier 5A" becomes "osier5a". Never empty. */
