@@ -41,11 +41,15 @@ export async function actOnRun(trx: Trx, by: By, runId: string, act: RunAct): Pr
   return { ...followUp, runIds: [...checks, ...followUp.runIds] };
 }
 
-/** Recordings of an archived or signed-off series stay as they are. */
-export function requireOpen({ series }: Pick<Capture, "series">): void {
+export function requireUnarchived({ series }: Pick<Capture, "series">): void {
   if (series.archived_at !== null) {
     throw new AppError("conflict.state", "This series is archived. Restore it first.");
   }
+}
+
+/** Recordings of an archived or signed-off series stay as they are. */
+export function requireOpen({ series }: Pick<Capture, "series">): void {
+  requireUnarchived({ series });
   if (series.state === "signed off") {
     throw new AppError("conflict.state", "This series is signed off. An analyst can reopen it.");
   }

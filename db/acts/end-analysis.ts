@@ -22,10 +22,11 @@ export async function endAsDone(
   result: Result,
 ): Promise<void> {
   const { analysisId, seriesId, version } = work;
-  await lockSeries(trx, by.labId, seriesId);
+  const series = await lockSeries(trx, by.labId, seriesId);
   if (!(await saveResult(trx, by.labId, analysisId, result, work.runIdByFile))) return;
   const counts = await findCurrentAnalysis(trx, by.labId, seriesId, "done");
-  if (counts?.id === analysisId) {
+  // The list goes on showing what was signed off, until the series is reopened.
+  if (counts?.id === analysisId && series.state !== "signed off") {
     const limits = toListLimits(result);
     await updateSeries(trx, by.labId, seriesId, {
       listSummary: { analysis_id: analysisId, version, limits },

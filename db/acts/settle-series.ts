@@ -14,6 +14,7 @@ import { notifyChange } from "../queries/changes";
 import { findCurrentAnalysis } from "../queries/current-analysis";
 import { assignRun, updateRun } from "../queries/runs";
 import { updateSeries } from "../queries/series";
+import { isSignedOff } from "../queries/sign-offs";
 import { countCaptured, loadCapture, type Capture } from "./capture";
 import { requestAnalysis, toAnalysisInputs } from "./request-analysis";
 
@@ -37,7 +38,7 @@ export async function deriveState(trx: Trx, by: LabScope, capture: Capture): Pro
       captured: countCaptured(capture),
       planned: capture.planned.length,
       analysis: current === null || current.state === "cancelled" ? null : current.state,
-      signedOff: series.state === "signed off",
+      signedOff: await isSignedOff(trx, by.labId, series.id),
     }),
     failure: current?.state === "failed" ? current.error : null,
     ...(by.accountId === null ? {} : { changedBy: by.accountId }),

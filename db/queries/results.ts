@@ -110,3 +110,15 @@ export async function getResult(trx: Trx, labId: string, analysisId: string): Pr
     bands.map((band) => band.payload),
   );
 }
+
+/** Nominal frequencies, rising; empty while there is no result. */
+export async function listBandsHz(trx: Trx, labId: string, analysisId: string): Promise<number[]> {
+  const rows = await trx
+    .selectFrom("analysis_bands")
+    .select("nominal_hz")
+    .where("lab_id", "=", labId)
+    .where("analysis_id", "=", analysisId)
+    .orderBy("position")
+    .execute();
+  return rows.map((row) => row.nominal_hz);
+}

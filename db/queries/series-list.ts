@@ -7,6 +7,7 @@ import type { SeriesState } from "../../lib/series/vocabulary";
 import type { Trx } from "../client";
 import type { Database } from "../schema/database";
 import type { ListSummary } from "../schema/series";
+import { countDecided } from "./decisions";
 import { toWords } from "./loudspeakers";
 
 export interface SeriesFilter {
@@ -31,6 +32,10 @@ export interface SeriesListRow {
   /** Slots with a live recording, and how it stands. */
   liveRuns: { slot: string; state: RunState; levelDb: number | null }[];
   excusedSlots: string[];
+  /** Places that runs asked for hold open. */
+  requestedSlots: string[];
+  /** Bands of the analysis that the list shows, and those with a decision. */
+  bands: { total: number; decided: number };
   /** Who changed it last. */
   changedBy: { id: string; name: string } | null;
   changedAt: Date;
@@ -108,9 +113,15 @@ async function pageOfSeries(
       sql<string[]>`array(select e.slot from slot_excuses e where e.series_id = s.id)`.as(
         "excusedSlots",
       ),
+      sql<string[]>`array(select q.slot from run_requests q
+        where q.lab_id = s.lab_id and q.series_id = s.id and q.withdrawn_at is null)`.as(
+        "requestedSlots",
+      ),
     ])
     .orderBy("found.place")
     .execute();
+  const shown = rows.flatMap((row) => row.listSummary?.analysis_id ?? []);
+  const decided = await countDecided(trx, labId, shown);
   return rows.map((row) => ({
     id: row.id,
     number: row.number,
@@ -126,6 +137,8 @@ async function pageOfSeries(
     listSummary: row.listSummary,
     liveRuns: row.liveRuns,
     excusedSlots: row.excusedSlots,
+    requestedSlots: row.requestedSlots,
+    bands: decided.get(row.listSummary?.analysis_id ?? "") ?? { total: 0, decided: 0 },
     changedBy:
       row.changerId === null || row.changerName === null
         ? null

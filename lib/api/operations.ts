@@ -7,6 +7,7 @@ import { loudspeakerOperations } from "./loudspeakers";
 import { memberOperations } from "./members";
 import { microphoneOperations } from "./microphones";
 import type { Operation } from "./operation";
+import { reviewOperations } from "./review";
 import { runOperations } from "./runs";
 import { seriesOperations } from "./series";
 import { sessionOperations } from "./session";
@@ -17,6 +18,7 @@ export const OPERATION_GROUPS: Readonly<Record<string, readonly Operation[]>> = 
   Series: [...seriesOperations, ...microphoneOperations],
   Recordings: runOperations,
   Analyses: analysisOperations,
+  Review: reviewOperations,
   Account: [...sessionOperations, ...accountOperations],
   Members: memberOperations,
   Tokens: tokenOperations,

@@ -29,6 +29,43 @@ describe("toHistoryWords", () => {
       "quiet chamber",
     ],
     ["analysis.done", { version: 3 }, "analysis version 3 is done", null],
+    [
+      "decision.taken",
+      { decisions: [{ nominal_Hz: 63, cause: "port", computed_cause: "limiter", reason: "air" }] },
+      "changed 63\u00a0Hz from limiter to port",
+      "air",
+    ],
+    [
+      "decision.taken",
+      {
+        decisions: [50, 63].map((nominal_Hz) => ({
+          nominal_Hz,
+          cause: "none",
+          computed_cause: "none",
+          reason: null,
+        })),
+      },
+      "confirmed 2 bands, 50\u00a0Hz to 63\u00a0Hz",
+      null,
+    ],
+    [
+      "decision.taken",
+      { decisions: [{ nominal_Hz: 63, cause: null, computed_cause: "limiter", reason: null }] },
+      "opened 63\u00a0Hz again",
+      null,
+    ],
+    [
+      "series.signed-off",
+      { version: 3, criterion: "THD 10 % or compression 3 dB" },
+      "signed off version 3 for THD 10 % or compression 3 dB",
+      null,
+    ],
+    [
+      "series.reopened",
+      { version: 3, reason: "new run" },
+      "took back the sign-off of version 3",
+      "new run",
+    ],
     ["member.roles-changed", {}, "member roles changed", null],
     ["run.uploaded", { file: 7 }, "uploaded a recording", null],
   ])("%s %o", (act, details, words, reason) => {

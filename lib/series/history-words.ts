@@ -1,5 +1,6 @@
 /** An event of the trail in words, as the history of a series shows it. */
 import { z } from "zod";
+import { formatFrequency } from "../charts/format";
 
 const detailsSchema = z.object({
   file: z.string().optional(),
@@ -12,6 +13,22 @@ const detailsSchema = z.object({
   recordings: z.number().optional(),
   loudspeaker: z.string().optional(),
   changed: z.array(z.string()).optional(),
+  decisions: z
+    .array(
+      z.object({
+        nominal_Hz: z.number(),
+        cause: z.string().nullable(),
+        computed_cause: z.string(),
+        reason: z.string().nullable(),
+      }),
+    )
+    .optional(),
+  bands: z.number().optional(),
+  from_version: z.number().optional(),
+  nominal_Hz: z.number().nullish(),
+  words: z.string().optional(),
+  criterion: z.string().optional(),
+  one_person: z.boolean().optional(),
 });
 type Details = z.infer<typeof detailsSchema>;
 
@@ -42,7 +59,44 @@ const WORDS: Record<string, (details: Details) => string> = {
   "analysis.done": (d) => `analysis version ${d.version ?? "?"} is done`,
   "analysis.failed": (d) => `analysis version ${d.version ?? "?"} failed: ${d.message ?? ""}`,
   "analysis.cancelled": () => "an analysis was cancelled: newer recordings replace it",
+  "decision.taken": (d) => sayDecisions(d),
+  "decision.overtaken": (d) => `${sayDecisions(d)}, but somebody else was quicker: not taken`,
+  "decision.kept": (d) =>
+    `took over the decisions of ${d.bands ?? "some"} bands from version ${d.from_version ?? "?"}`,
+  "comment.written": (d) =>
+    `commented on ${d.nominal_Hz == null ? "the series" : formatFrequency(d.nominal_Hz)}: “${d.words ?? ""}”`,
+  "run-request.made": (d) => `asked for a run: ${d.label ?? "another level"}`,
+  "run-request.withdrawn": (d) => `withdrew the run asked for: ${d.label ?? "another level"}`,
+  "series.signed-off": (d) =>
+    `signed off version ${d.version ?? "?"} for ${d.criterion ?? "a criterion"}${d.one_person === true ? "; one person recorded and signed" : ""}`,
+  "series.reopened": (d) => `took back the sign-off of version ${d.version ?? "?"}`,
 };
+
+/** One band in full; of many, how many. A reason that all share is shown apart. */
+function sayDecisions({ decisions = [] }: Details): string {
+  const [first, ...more] = decisions;
+  if (first === undefined) return "decided no band";
+  const hz = formatFrequency(first.nominal_Hz);
+  if (more.length === 0) {
+    if (first.cause === null) return `opened ${hz} again`;
+    return first.cause === first.computed_cause
+      ? `confirmed ${first.cause} at ${hz}`
+      : `changed ${hz} from ${first.computed_cause} to ${first.cause}`;
+  }
+  const last = formatFrequency(decisions.at(-1)?.nominal_Hz ?? first.nominal_Hz);
+  const verb = decisions.every((one) => one.cause === null)
+    ? "opened"
+    : decisions.every((one) => one.cause === one.computed_cause)
+      ? "confirmed"
+      : "decided";
+  return `${verb} ${decisions.length} bands, ${hz} to ${last}`;
+}
+
+function findReason({ reason, decisions = [] }: Details): string | null {
+  if (reason !== undefined) return reason;
+  const reasons = [...new Set(decisions.flatMap((one) => one.reason ?? []))];
+  return reasons.length === 0 ? null : reasons.join("; ");
+}
 
 const CHECKED: Record<string, string> = {
   passed: "passed its checks",
@@ -59,6 +113,6 @@ export function toHistoryWords(
   const known = parsed.success ? parsed.data : {};
   return {
     words: WORDS[act]?.(known) ?? act.replaceAll(/[.-]/g, " "),
-    reason: known.reason ?? null,
+    reason: findReason(known),
   };
 }

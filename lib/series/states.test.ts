@@ -29,7 +29,23 @@ describe("toSeriesState", () => {
 
 describe("toSeriesSteps", () => {
   const steps = (over: Partial<SeriesFacts>, progress = 0) =>
-    toSeriesSteps({ ...facts(over), progress, capturedNote: null, analysedNote: null });
+    toSeriesSteps({
+      ...facts(over),
+      progress,
+      capturedNote: null,
+      analysedNote: null,
+      signedOffNote: "11 May, M. Oduya",
+      bands: { total: 27, decided: 12 },
+    });
+
+  it("fills the review by bands, and the sign-off at once", () => {
+    const open = steps({ captured: 7, analysis: "done" }, 1);
+    expect(open[2]).toMatchObject({ share: 12 / 27, done: false, detail: "12 of 27 bands" });
+    expect(open[3]).toMatchObject({ share: 0, done: false, detail: "needs analyst" });
+    const signed = steps({ captured: 7, analysis: "done", signedOff: true }, 1);
+    expect(signed[2]).toMatchObject({ share: 1, done: true });
+    expect(signed[3]).toMatchObject({ share: 1, done: true, detail: "11 May, M. Oduya" });
+  });
 
   it.each([
     ["none in", {}, 0, [0, 0], "0 of 7 recordings", "starts by itself"],

@@ -33,6 +33,9 @@ export interface StepFacts extends SeriesFacts {
   /** Words: when and by whom a step was finished ("11 May, I. Varley"); null where not known. */
   capturedNote: string | null;
   analysedNote: string | null;
+  signedOffNote: string | null;
+  /** Bands of the analysis that counts, and those with a decision. */
+  bands: { total: number; decided: number };
 }
 
 export interface SeriesStep {
@@ -62,16 +65,29 @@ export function toSeriesSteps(facts: StepFacts): SeriesStep[] {
       done: analysed,
       detail: analysedDetail(facts, running),
     },
-    { step: "in review", share: 0, done: facts.signedOff, detail: "needs analyst" },
+    {
+      step: "in review",
+      share: facts.signedOff
+        ? 1
+        : facts.bands.total === 0
+          ? 0
+          : facts.bands.decided / facts.bands.total,
+      done: facts.signedOff,
+      detail: toBandsWords(facts.bands),
+    },
     {
       step: "signed off",
       share: facts.signedOff ? 1 : 0,
       done: facts.signedOff,
-      detail: facts.signedOff ? "signed off" : "needs analyst",
+      detail: facts.signedOff ? (facts.signedOffNote ?? "signed off") : "needs analyst",
     },
     { step: "published", share: 0, done: false, detail: "needs reviewer" },
   ];
 }
+
+/** "12 of 27 bands". */
+export const toBandsWords = ({ total, decided }: StepFacts["bands"]): string =>
+  total === 0 ? "needs analyst" : `${decided} of ${total} bands`;
 
 function analysedDetail(facts: StepFacts, running: boolean): string {
   if (facts.analysis === "done") return facts.analysedNote ?? "done";

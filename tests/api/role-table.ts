@@ -33,6 +33,7 @@ const row = (
 
 const EVERYONE = ["yes", "yes", "yes", "yes"] as const;
 const TESTER_ANALYST = ["yes", "yes", "no", "no"] as const;
+const ANALYST = ["no", "yes", "no", "no"] as const;
 const ADMIN = ["no", "no", "no", "yes"] as const;
 
 export const ROLE_TABLE: readonly RoleRow[] = [
@@ -51,6 +52,9 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("listAnalyses", EVERYONE, "not there"),
   row("getAnalysis", EVERYONE, "not there"),
   row("getResult", EVERYONE, "not there"),
+  row("getReview", EVERYONE, "not there"),
+  row("compareAnalyses", EVERYONE, "not there"),
+  row("listEngineChanges", EVERYONE, "yes"),
   row("followAnalysis", EVERYONE, "not there"),
   row("followSeries", EVERYONE, "not there"),
   // Create loudspeakers and series, edit plan, upload, exclude a run with a reason: tester, analyst.
@@ -72,6 +76,14 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   // Start or repeat an analysis, change its settings: tester, analyst.
   row("startAnalysis", TESTER_ANALYST, "not there"),
   row("updateCriteria", TESTER_ANALYST, "not there"),
+  // Decide a band's cause, comment, ask for a run, sign off, reopen: analyst.
+  row("decideBands", ANALYST, "not there"),
+  row("keepDecisions", ANALYST, "not there"),
+  row("writeComment", ANALYST, "not there"),
+  row("requestRun", ANALYST, "not there"),
+  row("withdrawRunRequest", ANALYST, "not there"),
+  row("signOff", ANALYST, "not there"),
+  row("reopenSeries", ANALYST, "not there"),
   // Members, roles, tokens of others, lab settings, the lab-wide trail: admin.
   row("getLab", EVERYONE, "yes"),
   row("listMembers", EVERYONE, "yes"),

@@ -5,6 +5,7 @@ import { createAnalysis, claimAnalysis } from "../../db/queries/analyses";
 import { createInvitation } from "../../db/queries/invitations";
 import { createLoudspeaker } from "../../db/queries/loudspeakers";
 import { keepRecording } from "../../db/queries/recordings";
+import { addRunRequest } from "../../db/queries/run-requests";
 import { saveResult } from "../../db/queries/results";
 import { createRun } from "../../db/queries/runs";
 import { createSeries } from "../../db/queries/series";
@@ -59,6 +60,14 @@ export async function makeThings(bench: ApiBench) {
     });
     await claimAnalysis(trx, labId, analysisId, 0);
     await saveResult(trx, labId, analysisId, result, new Map());
+    const requestId = await addRunRequest(trx, labId, scope.accountId, {
+      seriesId,
+      levelDb: 91,
+      kind: "short-term",
+      variant: null,
+      reason: "narrower",
+      slot: "short-91",
+    });
     const uploadId = randomBytes(16).toString("hex");
     await createUpload(trx, labId, {
       id: uploadId,
@@ -88,7 +97,16 @@ export async function makeThings(bench: ApiBench) {
       tokenHash: digestSecret(randomUUID()),
       createdBy: scope.accountId,
     });
-    return { loudspeakerId, seriesId, runId, analysisId, uploadId, tokenId, invitationId };
+    return {
+      loudspeakerId,
+      seriesId,
+      runId,
+      analysisId,
+      requestId,
+      uploadId,
+      tokenId,
+      invitationId,
+    };
   });
   return { ...made, labId, plan, accountId: member.scope.accountId, sessionId: randomUUID() };
 }

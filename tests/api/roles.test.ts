@@ -51,6 +51,17 @@ const INPUTS: Readonly<Record<string, (things: Things) => { body?: unknown; quer
   updateCriteria: ({ plan }) => ({ body: { criteria: plan.criteria, plan_version: 1 } }),
   actOnRun: () => ({ body: { act: "exclude", reason: "a reason" } }),
   excuseSlot: () => ({ body: { reason: "a reason" } }),
+  decideBands: () => ({
+    body: { decisions: [{ nominal_Hz: 125, cause: "none", seen_version: 0 }] },
+  }),
+  keepDecisions: ({ analysisId }) => ({ body: { from: analysisId } }),
+  compareAnalyses: ({ analysisId }) => ({ query: { against: analysisId } }),
+  writeComment: () => ({ body: { nominal_Hz: null, words: "steep" } }),
+  requestRun: () => ({ body: { level_dB: 80, reason: "a reason" } }),
+  signOff: () => ({
+    body: { criterion: { compression_dB: 3 }, decisions_digest: "0".repeat(64) },
+  }),
+  reopenSeries: () => ({ body: { reason: "a reason" } }),
   setMemberRoles: () => ({ body: { roles: ["tester"] } }),
   createInvitation: () => ({
     body: { email: `new.${crypto.randomUUID()}@lab.test`, roles: ["tester"] },

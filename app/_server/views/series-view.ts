@@ -1,13 +1,15 @@
 import type { Trx } from "../../../db/client";
 import { countCaptured, loadCapture, toMaxLevelDb } from "../../../db/acts/capture";
 import { findCurrentAnalysis } from "../../../db/queries/current-analysis";
+import { countDecided } from "../../../db/queries/decisions";
 import { getLab } from "../../../db/queries/labs";
+import { findStandingSignOff } from "../../../db/queries/sign-offs";
 import { toSeriesNumber } from "../../../db/queries/series";
 import type { SeriesListRow } from "../../../db/queries/series-list";
 import type { Progress, SeriesRow, SeriesView } from "../../../lib/api/series";
 import { USABLE_RUN_STATES } from "../../../lib/runs/arrival-schema";
 import { toFileStem, toPlannedRuns } from "../../../lib/series/planned-runs";
-import { toSeriesSteps } from "../../../lib/series/states";
+import { toBandsWords, toSeriesSteps } from "../../../lib/series/states";
 import { toDay } from "../../../lib/time/time-words";
 import { toLoudspeakerView } from "./loudspeaker-view";
 import { toPerson } from "./person-view";
@@ -22,6 +24,10 @@ export async function loadSeriesView(
   const { series, planned, runs } = capture;
   const current = await findCurrentAnalysis(trx, labId, seriesId);
   const done = await findCurrentAnalysis(trx, labId, seriesId, "done");
+  const signOff = await findStandingSignOff(trx, labId, seriesId);
+  const reviewed = signOff?.analysis_id ?? done?.id ?? null;
+  const bands =
+    reviewed === null ? undefined : (await countDecided(trx, labId, [reviewed])).get(reviewed);
   const last = runs.at(-1);
   const zone = (await getLab(trx, labId)).time_zone;
   const toNote = (at: Date, name: string | null): string =>
@@ -31,7 +37,9 @@ export async function loadSeriesView(
     captured: countCaptured(capture),
     planned: planned.length,
     analysis: current === null || current.state === "cancelled" ? null : current.state,
-    signedOff: series.state === "signed off",
+    signedOff: signOff !== null,
+    signedOffNote: signOff === null ? null : toNote(new Date(signOff.at), signOff.by.name),
+    bands: bands ?? { total: 0, decided: 0 },
     progress: toShare(current?.progress ?? null),
     capturedNote: last === undefined ? null : toNote(last.uploaded_at, last.uploadedByName),
     analysedNote:
@@ -63,20 +71,23 @@ export async function loadSeriesView(
 
 /** @param progress of its analysis, while one is under way. */
 export function toSeriesRow(row: SeriesListRow, progress: Progress | null): SeriesRow {
-  const planned = toPlannedRuns(row.plan, toFileStem(row.loudspeaker.model));
+  const slots = [
+    ...toPlannedRuns(row.plan, toFileStem(row.loudspeaker.model)).map((run) => run.slot),
+    ...row.requestedSlots,
+  ];
   const usable = row.liveRuns.filter((run) => USABLE_RUN_STATES.includes(run.state));
   const settled = new Set([...usable.map((run) => run.slot), ...row.excusedSlots]);
-  const captured = planned.filter((run) => settled.has(run.slot)).length;
+  const captured = slots.filter((slot) => settled.has(slot)).length;
   const levels = row.liveRuns.flatMap((run) => (run.levelDb === null ? [] : [run.levelDb]));
   return {
     id: row.id,
     number: toSeriesNumber(row.number),
     loudspeaker: row.loudspeaker,
     state: row.state,
-    state_detail: toStateDetail(row.state, captured, planned.length, progress),
+    state_detail: toStateDetail(row, captured, slots.length, progress),
     levels_dB: row.plan.levels.map((level) => level.level_dB).sort((a, b) => a - b),
     captured,
-    planned: planned.length,
+    planned: slots.length,
     limits: row.listSummary?.limits ?? [],
     max_level_dB: levels.length === 0 ? null : Math.max(...levels),
     with: row.changedBy,
@@ -85,7 +96,7 @@ export function toSeriesRow(row: SeriesListRow, progress: Progress | null): Seri
 }
 
 function toStateDetail(
-  state: SeriesRow["state"],
+  { state, bands }: Pick<SeriesListRow, "state" | "bands">,
   captured: number,
   planned: number,
   progress: Progress | null,
@@ -96,7 +107,7 @@ function toStateDetail(
     capturing: recordings,
     analysing: progress === null ? "waits for a worker" : toRunWords(progress),
     "analysis failed": "needs tester",
-    "in review": captured < planned ? recordings : "needs analyst",
+    "in review": toBandsWords(bands),
     "signed off": "not published",
   };
   return details[state];

@@ -1,4 +1,4 @@
-import { requireOpen } from "@/db/acts/act-on-run";
+import { requireUnarchived } from "@/db/acts/act-on-run";
 import { loadCapture } from "@/db/acts/capture";
 import { requestAnalysis } from "@/db/acts/request-analysis";
 import { deriveState } from "@/db/acts/settle-series";
@@ -24,7 +24,8 @@ export const POST = handle(startAnalysis, async ({ params, inLab, caller, scope 
   const { view, followUp } = await inLab(async (trx) => {
     await lockSeries(trx, labId, seriesId);
     const capture = await loadCapture(trx, labId, seriesId);
-    requireOpen(capture);
+    // A signed-off series may be analysed anew, by a newer engine: the sign-off stays with its version.
+    requireUnarchived(capture);
     const asked = await requestAnalysis(trx, scope, capture);
     await deriveState(trx, scope, capture);
     await notifyChange(trx, { labId, seriesId, analysisId: asked.analysisId });
