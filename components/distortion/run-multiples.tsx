@@ -3,8 +3,7 @@
 import { useMemo } from "react";
 import { toDistortionFigure } from "@/lib/charts/distortion";
 import { MULTIPLE_LAYOUT } from "@/lib/charts/distortion-layout";
-import { sayDistortion, sayRun } from "@/lib/charts/distortion-words";
-import { formatPercent } from "@/lib/charts/format";
+import { sayDistortion, sayRun, sayThdBeside } from "@/lib/charts/distortion-words";
 import { listPlainLevels } from "@/lib/charts/series-levels";
 import { COLOURS } from "@/lib/charts/tokens";
 import type { Result, ResultRun } from "@/lib/result/result-schema";
@@ -92,8 +91,6 @@ function Multiple({ result, run, criterionPercent, selectedHz, xLabels }: Multip
     [result, run, level, criterionPercent, xLabels],
   );
   const at = result.bands.findIndex((band) => band.nominal_Hz === (hoveredHz ?? selectedHz));
-  const here = result.bands[at]?.levels.find((one) => one.file === run.file);
-  const thd = here?.thd_percent ?? null;
   const x = figure.plot.x + figure.bands.centre(Math.max(at, 0));
   return (
     <>
@@ -103,7 +100,7 @@ function Multiple({ result, run, criterionPercent, selectedHz, xLabels }: Multip
         )}
         <b className="figures text-[14px]/[18px] font-semibold">{sayRun(run)}</b>
         <span className="figures ml-auto text-label text-ink-2">
-          THD {thd === null ? "in the noise" : formatPercent(thd)}
+          {sayThdBeside(result.bands, run, hoveredHz ?? selectedHz)}
         </span>
       </span>
       <span className="block overflow-hidden">
