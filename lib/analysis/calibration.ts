@@ -10,6 +10,8 @@ export interface Tone {
   amplitude: number;
   /** Tone over everything else within half an octave, dB. */
   purityDb: number;
+  /** By how much its blocks of 0.2 s differ, the outer tenths left out to either side, dB. */
+  spreadDb: number;
 }
 
 const SHORTEST_S = 0.3;
@@ -46,7 +48,9 @@ export function measureTone(
     );
   }
   const { frequencyHz, purityDb } = findTone(samples, rateHz, nominalHz, plans);
-  const amplitude = Number.isFinite(purityDb) ? fitAmplitude(samples, rateHz, frequencyHz) : 0;
+  const { amplitude, spreadDb } = Number.isFinite(purityDb)
+    ? fitAmplitude(samples, rateHz, frequencyHz)
+    : { amplitude: 0, spreadDb: 0 };
   if (!(purityDb >= LEAST_PURITY_DB) || !(amplitude > 0)) {
     throw new AnalysisError(
       "calibration.not-a-tone",
@@ -54,7 +58,7 @@ export function measureTone(
       { file, details: { frequencyHz, purityDb } },
     );
   }
-  return { frequencyHz, amplitude, purityDb };
+  return { frequencyHz, amplitude, purityDb, spreadDb };
 }
 
 function findTone(
@@ -95,7 +99,11 @@ function findTone(
   };
 }
 
-function fitAmplitude(samples: Recording["samples"], rateHz: number, frequencyHz: number): number {
+function fitAmplitude(
+  samples: Recording["samples"],
+  rateHz: number,
+  frequencyHz: number,
+): Pick<Tone, "amplitude" | "spreadDb"> {
   const length = Math.round(BLOCK_S * rateHz);
   const amplitudes: number[] = [];
   for (let from = 0; from + length <= samples.length; from += length) {
@@ -104,9 +112,18 @@ function fitAmplitude(samples: Recording["samples"], rateHz: number, frequencyHz
   const strongest = Math.max(...amplitudes);
   const steady = amplitudes.filter((a) => a >= LEAST_BLOCK_SHARE * strongest).sort((a, b) => a - b);
   const middle = steady.length / 2;
-  return steady.length % 2 === 1
-    ? steady[Math.floor(middle)]!
-    : (steady[middle - 1]! + steady[middle]!) / 2;
+  return {
+    amplitude:
+      steady.length % 2 === 1
+        ? steady[Math.floor(middle)]!
+        : (steady[middle - 1]! + steady[middle]!) / 2,
+    spreadDb:
+      20 *
+      Math.log10(
+        steady[Math.ceil(0.9 * (steady.length - 1))]! /
+          steady[Math.floor(0.1 * (steady.length - 1))]!,
+      ),
+  };
 }
 
 function fitBlock(

@@ -79,14 +79,28 @@ export function measureRun(
   context: MeasuringContext,
   onProgress?: OnProgress,
 ): RawRun {
+  const loopback =
+    recording.loopback === undefined ? null : measureLoopback(recording, shape, context);
+  const first = context.finder.find(recording, shape.sweeps);
+  return measureFoundRun(recording, first, shape, context, { loopback, onProgress });
+}
+
+/** @param first the sweep of this recording, the last thing that the finder deconvolved. */
+export function measureFoundRun(
+  recording: Recording,
+  first: FoundSweep,
+  shape: RunShape,
+  context: MeasuringContext,
+  {
+    loopback = null,
+    onProgress,
+  }: { loopback?: Loopback | null; onProgress?: OnProgress | undefined } = {},
+): RawRun {
   const { finder, plans } = context;
   const { file } = recording;
   const { sweep } = finder.stimulus;
   const tell = (stage: "aligned" | "harmonics" | "floor", done: number): void =>
     onProgress?.({ file, stage, done, total: 3 });
-  const loopback =
-    recording.loopback === undefined ? null : measureLoopback(recording, shape, context);
-  const first = finder.find(recording, shape.sweeps);
   tell("aligned", 1);
   const driftPpm =
     loopback?.driftPpm ?? estimateDriftPpm(first.deconvolved.response, first.lag, sweep, plans);
@@ -118,6 +132,12 @@ export function measureRun(
     missing,
     loopbackDb: loopback?.levelDb ?? null,
   };
+}
+
+interface Loopback {
+  stimulusAt: number;
+  driftPpm: number;
+  levelDb: number;
 }
 
 interface MeasuredOrders {
@@ -178,7 +198,7 @@ function measureLoopback(
   recording: Recording,
   shape: RunShape,
   context: MeasuringContext,
-): { stimulusAt: number; driftPpm: number; levelDb: number } | null {
+): Loopback | null {
   const { finder, plans, edgeHz, windows } = context;
   const { sweep } = finder.stimulus;
   const samples = recording.loopback;

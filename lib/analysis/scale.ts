@@ -32,6 +32,15 @@ export interface Scale {
   warnings: Warning[];
 }
 
+/** Whether a level at 1 m can be told in this place. */
+export const isSplValid = (environment: Environment): boolean => SPL_VALID[environment];
+
+/** What refers a level at the microphone to 1 m in the free field, dB. */
+export function toPlaceDb(environment: Environment, distanceM: number): number {
+  const distanceDb = environment === "near-field" ? 0 : 20 * Math.log10(distanceM);
+  return distanceDb + (environment === "ground-plane" ? GROUND_PLANE_DB : 0);
+}
+
 /**
  * @param read recordings of the calibrator by file name.
  * @throws AnalysisError "calibration.missing", "calibration.not-a-tone", "run.too-short"
@@ -50,9 +59,8 @@ export async function measureScale(
     );
   }
   const warnings: Warning[] = [];
-  const splValid = SPL_VALID[environment];
-  const distanceDb = environment === "near-field" ? 0 : 20 * Math.log10(distanceM);
-  const placeDb = distanceDb + (environment === "ground-plane" ? GROUND_PLANE_DB : 0);
+  const splValid = isSplValid(environment);
+  const placeDb = toPlaceDb(environment, distanceM);
   warnOfPlace(series, splValid, warnings);
   // Tables state their levels themselves.
   if (calibration === undefined)

@@ -62,11 +62,21 @@ export class SweepFinder {
    * @throws AnalysisError "run.silent", "run.no-sweep"
    */
   find(recording: Recording, sweeps = 1): FoundSweep {
+    const found = this.look(recording, sweeps);
+    requireSweep(found.arrival, this.stimulus.sweep, recording.file);
+    return found;
+  }
+
+  /**
+   * The same without a verdict: the arrival may be that of no sweep at all.
+   * @throws AnalysisError "run.silent"
+   */
+  look(recording: Recording, sweeps = 1): FoundSweep {
     const { samples, file } = recording;
     const whole = LONGEST_WHOLE * this.stimulus.samples.length;
     if (samples.length <= whole && sweeps === 1)
       return this.#findIn(samples, 0, samples.length, file);
-    return this.findNear(recording, this.#locateFirst(samples, Math.ceil(whole)));
+    return this.#lookNear(recording, this.#locateFirst(samples, Math.ceil(whole)));
   }
 
   /** Where the stimulus begins, to a point of the envelope: the first of the strong arrivals. */
@@ -87,6 +97,12 @@ export class SweepFinder {
 
   /** One sweep of a train, whose stimulus begins near the given sample. */
   findNear(recording: Recording, stimulusAt: number): FoundSweep {
+    const found = this.#lookNear(recording, stimulusAt);
+    requireSweep(found.arrival, this.stimulus.sweep, recording.file);
+    return found;
+  }
+
+  #lookNear(recording: Recording, stimulusAt: number): FoundSweep {
     const { rateHz } = this.stimulus.sweep;
     const start = Math.max(
       0,
@@ -111,7 +127,6 @@ export class SweepFinder {
     const { sweep, sweepStart, sweepLength } = this.stimulus;
     const deconvolved = this.deconvolver(piece.length).deconvolve(piece);
     const arrival = findArrival(deconvolved, sweep.rateHz, file);
-    requireSweep(arrival, sweep, file);
     const missingAt = (first: number, length: number): number =>
       Math.max(0, -first) + Math.max(0, first + sweepLength - length);
     // Of the lags that a circle holds alike, the one whose sweep lies in the piece.
