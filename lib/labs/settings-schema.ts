@@ -16,16 +16,23 @@ export const labSettingsSchema = z.strictObject({
   retention_days: z.number().int().min(30).max(36_500).nullable().default(null),
   arrival: z
     .strictObject({
-      /** Measured level against the planned one: warn and fail beyond, dB. */
-      level_warn_dB: z.number().min(0.1).max(6).default(0.5),
-      level_fail_dB: z.number().min(0.2).max(12).default(2),
-      /** Signal over noise in the reference band, dB. */
-      snr_warn_dB: z.number().min(0).max(80).default(40),
+      /** Measured level against the planned one: warn and fail beyond, dB; the same gives no warning. */
+      level_warn_dB: z.number().min(0.1).max(12).default(3),
+      level_fail_dB: z.number().min(0.2).max(12).default(3),
+      /** Step to the neighbouring run against the planned one: warn and fail beyond, dB. */
+      step_warn_dB: z.number().min(0.05).max(6).default(0.2),
+      step_fail_dB: z.number().min(0.1).max(12).default(0.5),
+      /** Signal over noise in the reference band, dB; single bands warn under the failure. */
+      snr_warn_dB: z.number().min(0).max(80).default(20),
       snr_fail_dB: z.number().min(0).max(80).default(20),
     })
     .refine((a) => a.level_warn_dB <= a.level_fail_dB, {
       error: "The warning must come before the failure.",
       path: ["level_warn_dB"],
+    })
+    .refine((a) => a.step_warn_dB <= a.step_fail_dB, {
+      error: "The warning must come before the failure.",
+      path: ["step_warn_dB"],
     })
     .refine((a) => a.snr_warn_dB >= a.snr_fail_dB, {
       error: "The warning must come before the failure.",
