@@ -54,6 +54,23 @@ export const arrivalCheckSchema = z.object({
 });
 export type ArrivalCheck = z.infer<typeof arrivalCheckSchema>;
 
+/** A sweep in figures, levels re a sine that just reaches full scale; third octaves of the plan's sweep. */
+const sweepSummarySchema = z.object({
+  /** [bands] null where the recording holds too little of it. */
+  band_dBFS: z.array(value),
+  /** [bands] standard uncertainty from noise. */
+  sigma_dB: z.array(value),
+  /** Mean square over the reference band. */
+  level_dBFS: z.number(),
+  /** [12] phase from the low to the high end of 500 Hz to 2 kHz, even in lg f, re the arrival. */
+  phase_rad: z.array(z.number()),
+  /** Noise from 2 to 8 kHz before the sweep; follows the input gain. null where there is too little. */
+  hiss_dBFS: value,
+  /** When parts of the sweep arrived after the mid band. */
+  arrivals: z.array(z.object({ hz: z.number(), delay_ms: z.number() })),
+});
+export type SweepSummary = z.infer<typeof sweepSummarySchema>;
+
 export const arrivalReportSchema = z.object({
   engine_version: z.string(),
   format: z.string(),
@@ -80,6 +97,18 @@ export const arrivalReportSchema = z.object({
     to_Hz: value,
   }),
   checks: z.array(arrivalCheckSchema),
+  /** SPL of a sine that just reaches full scale, by which levels were told; null where not known yet. */
+  full_scale_dB: value.optional(),
+  /** What siblings are held against. Absent without a sweep. */
+  sweep: sweepSummarySchema.optional(),
+  /** The calibrator's tone. Absent without one. */
+  tone: z
+    .object({
+      frequency_Hz: z.number(),
+      /** Re a sine that just reaches full scale. */
+      level_dBFS: z.number(),
+    })
+    .optional(),
 });
 export type ArrivalReport = z.infer<typeof arrivalReportSchema>;
 

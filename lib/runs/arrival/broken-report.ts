@@ -1,6 +1,6 @@
 import { AppError } from "../../errors/app-error";
 import type { ArrivalReport } from "../arrival-schema";
-import { plainCheck } from "./file-checks";
+import { plainCheck } from "./check";
 
 /** Where the checks themselves could not be carried out: the take is not at fault, and is safe. */
 export function toBrokenReport(error: unknown, engineVersion: string): ArrivalReport {

@@ -16,6 +16,14 @@ const place = (slot: string) => planned.find((run) => run.slot === slot) ?? null
 const tone = (amplitude: number, length = 48_000) =>
   Float64Array.from({ length }, (_, n) => amplitude * Math.sin((2 * Math.PI * 1000 * n) / 48_000));
 
+const hiss = (rms: number, length = 48_000) => {
+  let state = 7;
+  return Float64Array.from({ length }, () => {
+    state = (Math.imul(state, 1_664_525) + 1_013_904_223) >>> 0;
+    return rms * Math.sqrt(12) * (state / 2 ** 32 - 0.5);
+  });
+};
+
 function request(
   channels: Float64Array[],
   over: {
@@ -33,7 +41,7 @@ function request(
       file: "76.wav",
       digest: "a".repeat(64),
       channel: over.channel ?? 1,
-      place: over.slot === null ? null : place(over.slot ?? "short-76"),
+      place: over.slot === null ? null : place(over.slot ?? "calibrator-before"),
     },
     plan,
     limits: labSettingsSchema.parse({}).arrival,
@@ -79,6 +87,18 @@ describe("checkArrival", () => {
     ["another rate", request([tone(0.5)], { rateHz: 44_100 }), "rate", /44\.1 kHz.*48 kHz/],
     ["three flat samples", request([clipped(3)]), "clipping", /on 3 samples, between 0\.02/],
     [
+      "16 bits that clipped, in a file of 24",
+      request([clipped(3).map((x) => Math.min(x, 1 - 2 ** -15))]),
+      "clipping",
+      /on 3 samples/,
+    ],
+    [
+      "a flat top in float",
+      request([clipped(3)], { format: "float32" }),
+      "clipping",
+      /on 3 samples/,
+    ],
+    [
       "float beyond full scale",
       request([tone(1.2)], { format: "float32" }),
       "clipping",
@@ -122,8 +142,8 @@ describe("checkArrival", () => {
 
   it.each<[string, ArrivalRequest]>([
     ["two samples at full scale", request([clipped(2)])],
-    ["float at full scale, not beyond", request([tone(1)], { format: "float32" })],
-    ["quiet room noise", request([tone(1e-4)], { slot: "ambient" })],
+    ["float peaks at full scale, not beyond", request([tone(1)], { format: "float32" })],
+    ["quiet room noise", request([hiss(1e-4)], { slot: "ambient" })],
     ["a second channel by choice", request([tone(0), tone(0.5)], { channel: 2 })],
     ["another channel of the same file", request([tone(0.5)], { siblings: [sibling(2)] })],
     ["a file without a place", request([tone(0.5)], { slot: null })],

@@ -1,25 +1,15 @@
 /** Checks of the file itself, in the tester's words: what is wrong, what it spoils, the remedy. */
-import type { Recording } from "../../analysis/types";
+import type { Recording, ThirdOctave } from "../../analysis/types";
 import type { ArrivalCheck } from "../arrival-schema";
 import type { ArrivalRequest } from "./arrival-request";
+import { sayHz } from "../../analysis/say";
+import { GAIN_REMEDY, passed, plainCheck, sayCount, speaking } from "./check";
 import { round, toDbfs, type FileFacts } from "./file-facts";
+import { toBandsBetween, toPlace, type SweepTimeline } from "./sweep-timeline";
 
 const DC_LIMIT_DBFS = -40;
 /** A recording of sound that peaks under this holds none. */
 const SILENT_PEAK_DBFS = -70;
-
-/** The keys that most checks leave empty. */
-export const plainCheck = {
-  spoils: "",
-  remedy: "",
-  figure: null,
-  where: null,
-  bands_Hz: [],
-} as const satisfies Partial<ArrivalCheck>;
-
-/** After a fault of the input gain: both ways keep the calibration. */
-export const GAIN_REMEDY =
-  "If it was an accident, a door or a bump, record this run again at the same gain. If the gain is too high, lower it, record the calibrator again and repeat every level.";
 
 /** @param channels in the file. */
 export function checkFile(
@@ -31,7 +21,6 @@ export function checkFile(
   return [
     checkRate(request, recording.rateHz),
     checkChannel(request.run.channel, channels),
-    checkClipping(recording, facts),
     checkMean(facts),
     checkSilence(request, facts),
     checkDuplicate(request),
@@ -77,37 +66,37 @@ function checkChannel(channel: number, channels: number): ArrivalCheck {
   };
 }
 
-function checkClipping({ rateHz }: Recording, facts: FileFacts): ArrivalCheck {
-  const [longest] = facts.clips;
-  if (longest === undefined) {
-    return {
-      ...plainCheck,
-      code: "clipping",
-      verdict: "pass",
+/** @param timeline of the sweep, where one was found: then the place is said by its frequency. */
+export function checkClipping(
+  { rateHz }: Recording,
+  facts: FileFacts,
+  sweep: { timeline: SweepTimeline; bands: readonly ThirdOctave[] } | null,
+): ArrivalCheck {
+  if (facts.clips.length === 0) {
+    return passed("clipping", {
       title: "not clipped",
       finding: `The input peaks at ${toText(toDbfs(facts.peak))}.`,
       figure: { value: 0, limit: 0, unit: "samples" },
-    };
+    });
   }
-  const first = Math.min(...facts.clips.map((clip) => clip.from));
-  const last = Math.max(...facts.clips.map((clip) => clip.to));
-  const count = facts.clippedSamples.toLocaleString("en").replaceAll(",", " ");
-  return {
-    ...plainCheck,
-    code: "clipping",
-    verdict: "fail",
+  const fromS = Math.min(...facts.clips.map((clip) => clip.from)) / rateHz;
+  const toS = Math.max(...facts.clips.map((clip) => clip.to)) / rateHz;
+  const place = sweep === null ? null : toPlace(sweep.timeline, fromS, toS);
+  const playing = place !== null && place.from_Hz !== null && place.to_Hz !== null;
+  const count = sayCount(facts.clippedSamples);
+  return speaking("clipping", "fail", {
     title: "clipped input",
-    finding: `The input clipped on ${count} ${facts.clippedSamples === 1 ? "sample" : "samples"}, between ${(first / rateHz).toFixed(2)} and ${(last / rateHz).toFixed(2)} s.`,
+    finding: `The input clipped on ${count} ${facts.clippedSamples === 1 ? "sample" : "samples"}, between ${
+      playing
+        ? `${sayHz(Number(place.from_Hz?.toPrecision(3)))} and ${sayHz(Number(place.to_Hz?.toPrecision(3)))} of the sweep`
+        : `${fromS.toFixed(2)} and ${toS.toFixed(2)} s`
+    }.`,
     spoils: "Harmonics there would be the recorder's, not the loudspeaker's.",
     remedy: GAIN_REMEDY,
     figure: { value: facts.clippedSamples, limit: 0, unit: "samples" },
-    where: {
-      from_s: round(first / rateHz, 4),
-      to_s: round(last / rateHz, 4),
-      from_Hz: null,
-      to_Hz: null,
-    },
-  };
+    where: place ?? { from_s: round(fromS, 4), to_s: round(toS, 4), from_Hz: null, to_Hz: null },
+    bands_Hz: sweep === null ? [] : toBandsBetween(sweep.timeline, sweep.bands, fromS, toS),
+  });
 }
 
 function checkMean(facts: FileFacts): ArrivalCheck {

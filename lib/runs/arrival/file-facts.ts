@@ -17,25 +17,30 @@ export interface FileFacts {
 
 /** Stretches of fewer samples are ordinary peaks. */
 const CLIP_RUN = 3;
+/** Full scale of 16 bits: where a converter of 16 bits clips, in whatever file its samples lie. */
+const FULL_SCALE = 1 - 2 ** -15;
 const COLUMNS = 400;
 
 /**
  * One pass over the samples.
  *
- * @param recording samples re full scale; integer files clip at their own largest value on either
- *   side, float files where they pass 1.
+ * @param recording samples re full scale; flat tops at full scale are clipped, and in float files
+ *   whatever passes it.
  */
 export function measureFile({ samples, fullScale }: Recording): FileFacts {
   const float = fullScale >= 1;
+  const full = Math.min(fullScale, FULL_SCALE);
   let peak = 0;
   let sum = 0;
   let squares = 0;
   let start = -1;
+  let beyond = false;
   const clips: { from: number; to: number }[] = [];
   const close = (to: number): void => {
-    // A float sample beyond full scale is past it by itself; integers need a flat top.
-    if (start >= 0 && (float || to - start >= CLIP_RUN)) clips.push({ from: start, to });
+    // A float sample beyond full scale is past it by itself; else it needs a flat top.
+    if (start >= 0 && (beyond || to - start >= CLIP_RUN)) clips.push({ from: start, to });
     start = -1;
+    beyond = false;
   };
   for (let n = 0; n < samples.length; n += 1) {
     const sample = samples[n] ?? 0;
@@ -43,8 +48,9 @@ export function measureFile({ samples, fullScale }: Recording): FileFacts {
     if (size > peak) peak = size;
     sum += sample;
     squares += sample * sample;
-    if (float ? size > 1 : size >= fullScale) {
+    if (size >= full) {
       if (start < 0) start = n;
+      if (float && size > 1) beyond = true;
     } else if (start >= 0) close(n);
   }
   close(samples.length);
@@ -59,14 +65,28 @@ export function measureFile({ samples, fullScale }: Recording): FileFacts {
   };
 }
 
-/** @returns lowest and highest sample of each of up to 400 columns, three decimals. */
-export function drawEnvelope({ samples, rateHz }: Recording): ArrivalReport["envelope"] {
-  const columns = Math.min(COLUMNS, samples.length);
+/** The whole recording, or the stretch that a sweep takes, whether it is all there or not. */
+export interface EnvelopeSpan {
+  fromS: number;
+  toS: number;
+  /** Frequencies of the sweep there; null without one. */
+  fromHz: number | null;
+  toHz: number | null;
+}
+
+/** @returns lowest and highest sample of each of up to 400 columns, three decimals; 0 where nothing was recorded. */
+export function drawEnvelope(
+  { samples, rateHz }: Recording,
+  span: EnvelopeSpan = { fromS: 0, toS: samples.length / rateHz, fromHz: null, toHz: null },
+): ArrivalReport["envelope"] {
+  const start = Math.round(span.fromS * rateHz);
+  const length = Math.round(span.toS * rateHz) - start;
+  const columns = Math.min(COLUMNS, length);
   const low: number[] = [];
   const high: number[] = [];
   for (let column = 0; column < columns; column += 1) {
-    const from = Math.floor((column * samples.length) / columns);
-    const to = Math.floor(((column + 1) * samples.length) / columns);
+    const from = Math.max(0, start + Math.floor((column * length) / columns));
+    const to = Math.min(samples.length, start + Math.floor(((column + 1) * length) / columns));
     let least = Infinity;
     let most = -Infinity;
     for (let n = from; n < to; n += 1) {
@@ -74,16 +94,16 @@ export function drawEnvelope({ samples, rateHz }: Recording): ArrivalReport["env
       if (sample < least) least = sample;
       if (sample > most) most = sample;
     }
-    low.push(round(least, 3));
-    high.push(round(most, 3));
+    low.push(from < to ? round(least, 3) : 0);
+    high.push(from < to ? round(most, 3) : 0);
   }
   return {
-    from_s: 0,
-    to_s: round(samples.length / rateHz, 4),
+    from_s: round(span.fromS, 4),
+    to_s: round(span.toS, 4),
     low,
     high,
-    from_Hz: null,
-    to_Hz: null,
+    from_Hz: span.fromHz,
+    to_Hz: span.toHz,
   };
 }
 
