@@ -4,6 +4,7 @@ import { getLab } from "../db/queries/labs";
 import { getRun, saveReport, type RunRow } from "../db/queries/runs";
 import { lockSeries } from "../db/queries/series";
 import { loadCapture, type Capture } from "../db/acts/capture";
+import { recheckLevels } from "../db/acts/recheck-levels";
 import { settleSeries } from "../db/acts/settle-series";
 import { inLab } from "../db/in-lab";
 import { ENGINE_VERSION } from "../lib/analysis/engine-version";
@@ -61,7 +62,11 @@ async function load(tools: JobTools, { labId, runId }: CheckArrivalPayload): Pro
   if (found === null) return null;
   const { run, capture, limits } = found;
   const request = toRequest(run, capture, limits);
-  const digests = new Set([run.digest, ...request.siblings.map((sibling) => sibling.digest)]);
+  const digests = new Set([
+    run.digest,
+    ...request.siblings.map((sibling) => sibling.digest),
+    ...(request.plan.microphone === null ? [] : [request.plan.microphone.digest]),
+  ]);
   const paths: Record<string, string> = {};
   for (const digest of digests) {
     // A sibling that is missing is its own trouble, not that of this take.
@@ -135,7 +140,10 @@ async function save(
         failed: report.checks.filter((c) => c.verdict === "fail").map((c) => c.code),
       },
     });
-    return { done: true, followUp: await settleSeries(trx, scope, run.series_id) };
+    const calibrator = run.role === "calibrator-before" || run.role === "calibrator-after";
+    const stale = calibrator ? await recheckLevels(trx, labId, capture) : [];
+    const followUp = await settleSeries(trx, scope, run.series_id);
+    return { done: true, followUp: { ...followUp, runIds: [...stale, ...followUp.runIds] } };
   });
   if (outcome.followUp !== null) await follow(tools, outcome.followUp);
   return outcome.done;
