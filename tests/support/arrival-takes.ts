@@ -57,7 +57,7 @@ export async function recordGoodSeries(): Promise<void> {
   for (const { run, makeWav } of recordSeries({
     ...model,
     plan,
-    recordedUpTo: null,
+    recorded: "all",
     mishaps: {},
   })) {
     const { recording } = await readRecording(toByteSource(makeWav()), { file: run.fileName });
