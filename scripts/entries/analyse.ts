@@ -2,8 +2,8 @@
  * The analysis command: folder in, JSON out (docs/contract.md). Exit 0: analysed; 2: the input is at
  * fault, said in one line of JSON; 1: our fault.
  */
-import { renameSync, statSync, writeFileSync } from "node:fs";
-import { resolve } from "node:path";
+import { accessSync, constants, realpathSync, renameSync, statSync, writeFileSync } from "node:fs";
+import { basename, dirname, join, resolve } from "node:path";
 import { parseArgs } from "node:util";
 import { analyseSeries } from "../../lib/analysis/analyse-series";
 import type { OnProgress } from "../../lib/analysis/types";
@@ -11,7 +11,9 @@ import { AppError } from "../../lib/errors/app-error";
 import { toResultText } from "../../lib/result/result-text";
 import type { Result } from "../../lib/result/result-schema";
 import { createFolderSource, readSeriesText } from "../../lib/series/folder-source";
+import { listSeriesFiles } from "../../lib/series/list-series-files";
 import { parseSeries } from "../../lib/series/parse-series";
+import type { Series } from "../../lib/series/series-schema";
 
 const USAGE = "analyse <folder> [--out result.json]";
 const INPUT_AT_FAULT = 2;
@@ -22,6 +24,7 @@ async function main(): Promise<void> {
     throw new AppError("series.file-missing", `There is no folder ${folder}.`);
   }
   const series = parseSeries(readSeriesText(folder));
+  if (out !== undefined) checkOut(out, folder, series);
   const progress = process.stderr.isTTY ? { onProgress: showProgress } : {};
   const result = await analyseSeries(series, createFolderSource(folder), progress);
   if (process.stderr.isTTY) process.stderr.write("\r\u001B[K");
@@ -38,7 +41,10 @@ function readArguments(): { folder: string; out: string | undefined } {
     const [folder, ...more] = positionals;
     if (folder === undefined || more.length > 0)
       throw new Error(`one folder is needed, ${positionals.length} given`);
-    return { folder: resolve(folder), out: values.out };
+    return {
+      folder: resolve(folder),
+      out: values.out === undefined ? undefined : resolve(values.out),
+    };
   } catch (error) {
     throw new AppError(
       "request.invalid",
@@ -55,16 +61,44 @@ function sayWarnings({ warnings }: Result): void {
   for (const { code, message } of warnings) process.stderr.write(`warning ${code}: ${message}\n`);
 }
 
+/**
+ * Seen before the work begins: a result has a place to go to, and it is none of the inputs.
+ *
+ * @throws AppError "request.invalid"
+ */
+function checkOut(out: string, folder: string, series: Series): void {
+  const parent = dirname(out);
+  if (!statSync(parent, { throwIfNoEntry: false })?.isDirectory()) {
+    throw new AppError("request.invalid", `--out: there is no folder ${parent}. Make it first.`);
+  }
+  if (statSync(out, { throwIfNoEntry: false })?.isDirectory() === true) {
+    throw new AppError("request.invalid", `--out: ${out} is a folder. Name a file in it.`);
+  }
+  try {
+    accessSync(parent, constants.W_OK);
+  } catch (error) {
+    throw new AppError("request.invalid", `--out: nothing can be written to ${parent}.`, {
+      cause: error,
+    });
+  }
+  const place = join(realpathSync(parent), basename(out));
+  const input = listSeriesFiles(series).find((file) => join(realpathSync(folder), file) === place);
+  if (input !== undefined) {
+    throw new AppError("request.invalid", `--out: ${out} is an input. Name another file.`, {
+      file: input,
+    });
+  }
+}
+
 /** A file appears whole or not at all. */
 function write(text: string, out: string | undefined): void {
   if (out === undefined) {
     process.stdout.write(text);
     return;
   }
-  const path = resolve(out);
-  const draft = `${path}.${process.pid}.draft`;
+  const draft = `${out}.${process.pid}.draft`;
   writeFileSync(draft, text);
-  renameSync(draft, path);
+  renameSync(draft, out);
 }
 
 function explain(error: unknown): void {

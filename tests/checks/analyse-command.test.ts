@@ -189,4 +189,29 @@ describe("analyse <folder>", () => {
       expect(toFault(outcome).code).toMatch(/^[a-z-]+\.[a-z-]+$/);
     },
   );
+
+  it.each([
+    ["series.json"],
+    ["102.wav"],
+    ["calibrator.wav"],
+    ["ambient.wav"],
+    [join("..", "series", "76.wav")],
+  ])("never writes its result over an input: %s", async (file) => {
+    const path = join(folder, file);
+    const before = readFileSync(path);
+    const outcome = await run(folder, "--out", path);
+    expect([outcome.code, outcome.stdout]).toEqual([2, ""]);
+    expect(toFault(outcome)).toMatchObject({ code: "request.invalid" });
+    expect(readFileSync(path).equals(before)).toBe(true);
+  });
+
+  it.each([
+    ["a folder that is not there", join("none", "result.json")],
+    ["a folder in place of a file", "series"],
+  ])("refuses %s as --out before it begins", async (_, out) => {
+    const outcome = await run(folder, "--out", out);
+    expect([outcome.code, outcome.stdout]).toEqual([2, ""]);
+    expect(toFault(outcome)).toMatchObject({ code: "request.invalid" });
+    expect(toFault(outcome).message).toContain("--out");
+  });
 });
