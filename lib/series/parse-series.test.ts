@@ -12,6 +12,11 @@ const SERIES = {
   runs: [{ file: "76.wav", level_dB: 76 }],
 };
 
+const withRun = (keys: object): object => ({
+  ...SERIES,
+  runs: [{ file: "76.wav", level_dB: 76, ...keys }],
+});
+
 describe("parseSeries", () => {
   it("fills in defaults and bears a byte-order mark", () => {
     const series = parseSeries(`\uFEFF${JSON.stringify(SERIES)}`);
@@ -41,6 +46,11 @@ describe("parseSeries", () => {
       { ...SERIES, stimulus: { ...SERIES.stimulus, stop_Hz: 30_000 } },
       "stimulus.stop_Hz",
     ],
+    ["series.invalid", { ...SERIES, reference_band_Hz: [30_000, 40_000] }, "reference_band_Hz"],
+    ["series.invalid", withRun({ sweeps: 3 }), "runs[0].period_s is needed"],
+    ["series.invalid", withRun({ period_s: 12 }), "runs[0].sweeps is needed"],
+    ["series.invalid", withRun({ sweeps: 3, period_s: 4 }), "runs[0].period_s must not"],
+    ["series.invalid", withRun({ loopback_channel: 1 }), "runs[0].loopback_channel"],
     ["series.invalid", { ...SERIES, settings: { criteria: [{}] } }, "settings.criteria[0]"],
     ["series.file-name", { ...SERIES, ambient: { file: "../room.wav" } }, "ambient.file"],
     [

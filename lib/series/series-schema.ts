@@ -20,7 +20,10 @@ export const relativeFileSchema = z
       !name.includes("\0") &&
       !/^[A-Za-z]:/.test(name) &&
       name.split("/").every((part) => part !== "" && part !== "." && part !== ".."),
-    { error: "must be a name inside the folder, without ..", params: { code: "series.file-name" } },
+    {
+      error: "must be a name inside the folder: relative, with no . or .. as a step",
+      params: { code: "series.file-name" },
+    },
   );
 
 export const criterionSchema = z
@@ -59,11 +62,11 @@ export const stimulusSchema = z
     lead_out_s: finite.min(0).max(60).default(0),
   })
   .refine((s) => s.stop_Hz >= 2 * s.start_Hz, {
-    error: "stop_Hz must be at least twice start_Hz",
+    error: "must be at least twice start_Hz",
     path: ["stop_Hz"],
   })
   .refine((s) => s.stop_Hz <= s.rate_Hz / 2, {
-    error: "stop_Hz must not pass half of rate_Hz",
+    error: "must not pass half of rate_Hz",
     path: ["stop_Hz"],
   });
 export type Stimulus = z.infer<typeof stimulusSchema>;
@@ -84,20 +87,33 @@ export const microphoneSchema = z.strictObject({
   kind: z.enum(["response", "correction"]),
 });
 
-export const runSchema = z.strictObject({
-  file: relativeFileSchema,
-  level_dB: finite.min(0).max(180),
-  kind: z.enum(RUN_KINDS).default("short-term"),
-  conditioning: conditioningSchema.optional(),
-  /** Gain of the stimulus on the scale of level_dB; level_dB where not given. */
-  drive_dB: finite.min(-100).max(220).optional(),
-  channel: z.number().int().min(1).max(64).default(1),
-  loopback_channel: z.number().int().min(1).max(64).optional(),
-  variant: z.string().min(1).max(120).optional(),
-  /** A train: this many sweeps, period_s apart. */
-  sweeps: z.number().int().min(1).max(1000).optional(),
-  period_s: positive.max(3600).optional(),
-});
+export const runSchema = z
+  .strictObject({
+    file: relativeFileSchema,
+    level_dB: finite.min(0).max(180),
+    kind: z.enum(RUN_KINDS).default("short-term"),
+    conditioning: conditioningSchema.optional(),
+    /** Gain of the stimulus on the scale of level_dB; level_dB where not given. */
+    drive_dB: finite.min(-100).max(220).optional(),
+    channel: z.number().int().min(1).max(64).default(1),
+    loopback_channel: z.number().int().min(1).max(64).optional(),
+    variant: z.string().min(1).max(120).optional(),
+    /** A train: this many sweeps, period_s apart. */
+    sweeps: z.number().int().min(1).max(1000).optional(),
+    period_s: positive.max(3600).optional(),
+  })
+  .refine((r) => (r.sweeps ?? 1) === 1 || r.period_s !== undefined, {
+    error: "is needed with sweeps: a train is told by both",
+    path: ["period_s"],
+  })
+  .refine((r) => r.period_s === undefined || r.sweeps !== undefined, {
+    error: "is needed with period_s: a train is told by both",
+    path: ["sweeps"],
+  })
+  .refine((r) => r.loopback_channel !== r.channel, {
+    error: "must be another channel than the microphone's",
+    path: ["loopback_channel"],
+  });
 export type Run = z.infer<typeof runSchema>;
 
 export const settingsSchema = z.strictObject({
@@ -130,8 +146,26 @@ export const seriesSchema = z
     settings: settingsSchema.default({ criteria: [...DEFAULT_CRITERIA] }),
   })
   .refine((s) => s.environment !== "gated" || s.gate_ms !== undefined, {
-    error: "gate_ms is needed with the environment gated",
+    error: "is needed with the environment gated",
     path: ["gate_ms"],
+  })
+  .refine(
+    ({ reference_band_Hz: band, stimulus }) =>
+      band === undefined || (band[0] < stimulus.stop_Hz && band[1] > stimulus.start_Hz),
+    {
+      error: "must lie where the sweep is",
+      path: ["reference_band_Hz"],
+    },
+  )
+  .superRefine(({ runs, stimulus }, context) => {
+    runs.forEach(({ period_s }, at) => {
+      if (period_s === undefined || period_s >= stimulus.length_s) return;
+      context.addIssue({
+        code: "custom",
+        message: "must not be shorter than the sweep",
+        path: ["runs", at, "period_s"],
+      });
+    });
   });
 /** A series as the engine takes it: parsed, defaults filled in. */
 export type Series = z.infer<typeof seriesSchema>;
