@@ -7,7 +7,7 @@ describe("requireRoom", () => {
   });
 
   it.each([
-    [RESERVE_BYTES + 9, 10, "0 MB can still be taken, this needs 0 MB"],
+    [RESERVE_BYTES + 9, 10, "0 MB can still be taken, this needs 1 MB"],
     [RESERVE_BYTES + 100_000_000, 400_000_000, "100 MB can still be taken, this needs 400 MB"],
     [0, 1_000_000, "0 MB can still be taken, this needs 1 MB"],
   ])("refuses with the figures: %d free, %d needed", (free, needed, words) => {

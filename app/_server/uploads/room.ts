@@ -9,10 +9,12 @@ export function requireRoom(freeBytes: number, neededBytes: number): void {
 }
 
 export function toFullError(freeBytes: number, neededBytes: number): AppError {
-  const toMb = (bytes: number): string => `${Math.max(0, Math.floor(bytes / 1_000_000))} MB`;
+  const toMb = (megabytes: number): string => `${Math.max(0, megabytes)} MB`;
+  const room = toMb(Math.floor((freeBytes - RESERVE_BYTES) / 1_000_000));
+  const need = toMb(Math.ceil(neededBytes / 1_000_000));
   return new AppError(
     "storage.full",
-    `The disk of the server is nearly full: ${toMb(freeBytes - RESERVE_BYTES)} can still be taken, this needs ${toMb(neededBytes)}. Ask the admin of your lab to make room, then send the file again.`,
+    `The disk of the server is nearly full: ${room} can still be taken, this needs ${need}. Ask the admin of your lab to make room, then send the file again.`,
     { details: { free_bytes: freeBytes, needed_bytes: neededBytes, reserve_bytes: RESERVE_BYTES } },
   );
 }

@@ -1,10 +1,11 @@
-import { mkdtemp, readFile, rm } from "node:fs/promises";
+import { mkdtemp, readFile, rm, symlink } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { Readable } from "node:stream";
 import { Upload } from "@tus/server";
 import { afterEach, beforeEach, describe, expect, it } from "vitest";
 import { writeWav } from "../../../lib/audio/write-wav";
+import { RESERVE_BYTES } from "./room";
 import { StagingStore } from "./staging-store";
 
 const wav = Buffer.from(writeWav([Float64Array.from({ length: 5000 }, Math.sin)], 48_000));
@@ -50,6 +51,32 @@ describe("the staging store", () => {
       file: "take.wav",
     });
     expect(await contents()).toHaveLength(0);
+  });
+
+  it("refuses with the figures when the room goes while bytes come in", async () => {
+    store = new StagingStore(folder, () => Promise.resolve(RESERVE_BYTES - 1));
+    const size = 50_000_000;
+    const id = await begin(size);
+    const pieces = function* () {
+      yield wav;
+      for (let sent = wav.length; sent < size; sent += 1_000_000) yield Buffer.alloc(1_000_000);
+    };
+    await expect(store.write(Readable.from(pieces()), id, 0)).rejects.toMatchObject({
+      code: "storage.full",
+      details: { free_bytes: RESERVE_BYTES - 1 },
+    });
+    // What came before the refusal waits for the rest.
+    expect((await contents()).subarray(0, wav.length).equals(wav)).toBe(true);
+  });
+
+  it("says that the disk is full where the system says so", async () => {
+    const id = await begin(wav.length);
+    await rm(join(folder, id));
+    await symlink("/dev/full", join(folder, id));
+    await expect(store.write(Readable.from([wav]), id, 0)).rejects.toMatchObject({
+      code: "storage.full",
+      details: { needed_bytes: wav.length },
+    });
   });
 
   it("does not take uploads of unknown length", () => {

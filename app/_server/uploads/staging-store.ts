@@ -1,10 +1,14 @@
 /** The staging folder of unfinished uploads: the tus file store, careful about kind and room. */
+import { createWriteStream } from "node:fs";
+import { join } from "node:path";
 import { Transform, type Readable, type TransformCallback } from "node:stream";
+import { pipeline } from "node:stream/promises";
 import { FileStore } from "@tus/file-store";
 import { AppError } from "../../../lib/errors/app-error";
 import { PEEK_BYTES, peekAudio } from "../../../lib/runs/peek-audio";
 import { UPLOAD_LIFETIME_MS } from "../../../lib/api/uploads";
 import { freeBytesAt } from "../../../lib/storage/file-store";
+import { isFullDisk } from "../../../lib/storage/file-system-error";
 import { RESERVE_BYTES, toFullError } from "./room";
 
 /** How often the free room is looked at while bytes come in. */
@@ -14,30 +18,45 @@ const LOOK_EVERY_BYTES = 32 * 1024 * 1024;
 const SWALLOW_BYTES = 64 * 1024 * 1024;
 
 export class StagingStore extends FileStore {
-  constructor(directory: string) {
+  private readonly freeBytes: FreeBytes;
+
+  constructor(directory: string, freeBytes: FreeBytes = freeBytesAt) {
     super({ directory, expirationPeriodInMilliseconds: UPLOAD_LIFETIME_MS });
+    this.freeBytes = freeBytes;
     // A length that is not known beforehand could not be held against limit and room.
     this.extensions = this.extensions.filter((name) => name !== "creation-defer-length");
   }
 
   override async write(readable: Readable, id: string, offset: number): Promise<number> {
-    const { metadata } = await this.getUpload(id);
+    const { metadata, size } = await this.getUpload(id);
+    const neededBytes = Math.max(0, (size ?? 0) - offset);
     const guard = new ArrivalGuard({
-      directory: this.directory,
+      freeBytes: () => this.freeBytes(this.directory),
+      neededBytes,
       fileName: metadata?.["fileName"] ?? "The file",
       fromStart: offset === 0,
     });
     // A cut connection must reach the file as an end, so that what came stays.
     readable.on("error", () => guard.end());
-    const written = super.write(readable.pipe(guard), id, offset);
-    await Promise.allSettled([written]);
-    if (guard.errored instanceof AppError) throw guard.errored;
-    return written;
+    // Not the write of the store behind, which hides why it failed.
+    const file = createWriteStream(join(this.directory, id), { flags: "r+", start: offset });
+    try {
+      await pipeline(readable.pipe(guard), file);
+    } catch (error) {
+      if (guard.errored instanceof AppError) throw guard.errored;
+      if (!isFullDisk(error)) throw error;
+      throw toFullError(await this.freeBytes(this.directory), neededBytes);
+    }
+    return offset + file.bytesWritten;
   }
 }
 
+type FreeBytes = (directory: string) => Promise<number>;
+
 interface Watch {
-  directory: string;
+  freeBytes: () => Promise<number>;
+  /** What this request has still to bring. */
+  neededBytes: number;
   fileName: string;
   /** Whether the first bytes of the file come first. */
   fromStart: boolean;
@@ -48,6 +67,7 @@ class ArrivalGuard extends Transform {
   private readonly watch: Watch;
   private head: Buffer | null;
   private unwatchedBytes = 0;
+  private seenBytes = 0;
   private swallowedBytes = 0;
   private refusal: Error | null = null;
 
@@ -83,10 +103,12 @@ class ArrivalGuard extends Transform {
   private async look(piece: Buffer): Promise<Buffer> {
     if (this.refusal !== null) return EMPTY;
     this.unwatchedBytes += piece.length;
+    this.seenBytes += piece.length;
     if (this.unwatchedBytes >= LOOK_EVERY_BYTES) {
       this.unwatchedBytes = 0;
-      const free = await freeBytesAt(this.watch.directory);
-      if (free < RESERVE_BYTES) throw toFullError(free, piece.length);
+      const free = await this.watch.freeBytes();
+      const needed = this.watch.neededBytes - this.seenBytes + piece.length;
+      if (free < RESERVE_BYTES) throw toFullError(free, needed);
     }
     if (this.head === null) return piece;
     const head = Buffer.concat([this.head, piece]);
