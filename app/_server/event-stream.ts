@@ -21,10 +21,10 @@ export interface StreamOptions {
 
 export function answerEvents({ request, start, mayStill }: StreamOptions): Response {
   const encoder = new TextEncoder();
+  let ended = false;
   let stop: () => void = () => undefined;
   const body = new ReadableStream<Uint8Array>({
     start(controller) {
-      let ended = false;
       const write = (text: string): void => {
         if (!ended) controller.enqueue(encoder.encode(text));
       };
@@ -65,6 +65,8 @@ export function answerEvents({ request, start, mayStill }: StreamOptions): Respo
       else if (request.signal.aborted || shutdown.aborted) end();
     },
     cancel() {
+      // Word that is still on its way finds no reader.
+      ended = true;
       stop();
     },
   });
