@@ -4,7 +4,7 @@ import { describe, expect, it } from "vitest";
 import { OPERATIONS } from "./operations";
 import { toAnswerSchema, toOpenApi } from "./openapi";
 
-const document = toOpenApi("https://tidemark.example");
+const document = toOpenApi({ publicUrl: "https://tidemark.example", cookie: "session-4300" });
 
 describe("the OpenAPI document", () => {
   it("is plain JSON and names every operation once", () => {
@@ -13,6 +13,13 @@ describe("the OpenAPI document", () => {
     expect(new Set(ids).size).toBe(ids.length);
     const text = JSON.stringify(document);
     for (const id of ids) expect(text).toContain(`"operationId":"${id}"`);
+  });
+
+  it("names place and cookie of this installation", () => {
+    expect(document).toMatchObject({
+      servers: [{ url: "https://tidemark.example" }],
+      components: { securitySchemes: { session: { in: "cookie", name: "session-4300" } } },
+    });
   });
 
   it("names every parameter of every path", () => {

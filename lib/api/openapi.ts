@@ -21,8 +21,17 @@ const SIGNED_IN_ERRORS: readonly ErrorCode[] = [
 ];
 const INPUT_ERRORS: readonly ErrorCode[] = ["request.invalid", "request.media-type"];
 
-/** @param publicUrl address of this installation, without a slash at the end. */
-export function toOpenApi(publicUrl: string): JsonObject {
+/**
+ * @param place.publicUrl address of this installation, without a slash at the end.
+ * @param place.cookie name of its session cookie.
+ */
+export function toOpenApi({
+  publicUrl,
+  cookie,
+}: {
+  publicUrl: string;
+  cookie: string;
+}): JsonObject {
   const paths: Record<string, JsonObject> = {};
   for (const [tag, operations] of Object.entries(OPERATION_GROUPS)) {
     for (const operation of operations) {
@@ -45,7 +54,7 @@ export function toOpenApi(publicUrl: string): JsonObject {
       schemas: { Problem: toSchema(problemSchema, "output") },
       securitySchemes: {
         token: { type: "http", scheme: "bearer", description: "A token of the lab." },
-        session: { type: "apiKey", in: "cookie", name: "tidemark-session" },
+        session: { type: "apiKey", in: "cookie", name: cookie },
       },
     },
   };
