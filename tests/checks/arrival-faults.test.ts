@@ -25,7 +25,7 @@ import {
   withNoise,
 } from "../support/arrival-takes";
 
-beforeAll(recordGoodSeries);
+beforeAll(recordGoodSeries, 120_000);
 
 interface Fault {
   name: string;
