@@ -127,6 +127,14 @@ export function SettingsForm({ lab, mostUploadMb, onReread }: SettingsFormProps)
               label="level off the plan, fail beyond, dB"
             />
             <NumberSetting
+              name="settings.arrival.step_warn_dB"
+              label="step to the other runs, warn beyond, dB"
+            />
+            <NumberSetting
+              name="settings.arrival.step_fail_dB"
+              label="step to the other runs, fail beyond, dB"
+            />
+            <NumberSetting
               name="settings.arrival.snr_warn_dB"
               label="signal-to-noise, warn under, dB"
             />

@@ -34,6 +34,8 @@ export function toSettingRows({ name, time_zone, settings }: LabState): SettingR
     },
     { label: "level off the plan, warning beyond", value: db(arrival.level_warn_dB) },
     { label: "level off the plan, failure beyond", value: db(arrival.level_fail_dB) },
+    { label: "step to the other runs, warning beyond", value: db(arrival.step_warn_dB) },
+    { label: "step to the other runs, failure beyond", value: db(arrival.step_fail_dB) },
     { label: "signal-to-noise, warning under", value: db(arrival.snr_warn_dB) },
     { label: "signal-to-noise, failure under", value: db(arrival.snr_fail_dB) },
   ];
