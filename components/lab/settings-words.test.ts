@@ -44,7 +44,7 @@ describe("toSettingDifferences", () => {
     [
       "a limit at arrival",
       change({ arrival: { ...before.settings.arrival, snr_warn_dB: 35 } }),
-      [{ label: "signal-to-noise, warning under", theirs: "40\u00a0dB", mine: "35\u00a0dB" }],
+      [{ label: "signal-to-noise, warning under", theirs: "20\u00a0dB", mine: "35\u00a0dB" }],
     ],
   ])("%s", (_name, mine, expected) => {
     expect(toSettingDifferences(before, mine)).toEqual(expected);
