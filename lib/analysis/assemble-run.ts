@@ -135,7 +135,7 @@ interface Component {
 }
 
 /** All existing orders count, those under the floor with what little is left: so noise adds no bias. */
-function toThd(
+export function toThd(
   parts: readonly Component[],
   fundamental: number,
 ): { percent: number; quality: Quality | null; orders: string } {

@@ -3,6 +3,7 @@ import { AnalysisError } from "../errors/app-error";
 import type { Warning } from "../result/result-schema";
 import type { Series } from "../series/series-schema";
 import type { Environment } from "../series/vocabulary";
+import { toAirLossDbPerM } from "./air-absorption";
 import { measureTone, toFullScaleDb } from "./calibration";
 import type { Plans } from "./cell-power";
 import { isTableName } from "./table-run";
@@ -13,6 +14,10 @@ const GROUND_PLANE_DB = -6.02;
 /** From three times the largest dimension on the level falls as from a point. */
 const FAR_FIELD_DIMENSIONS = 3;
 const SUSPECT_CHANGE_DB = 0.5;
+/** Usual weather, for a caution only: what the day's was is not known. */
+const USUAL_AIR = { temperatureC: 20, relativeHumidityPercent: 50 };
+const TOLD_AIR_LOSS_DB = 0.3;
+const AIR_LOSS_AT_HZ = 10_000;
 
 const SPL_VALID: Record<Environment, boolean> = {
   anechoic: true,
@@ -121,6 +126,13 @@ function warnOfPlace(
     warnings.push({
       code: "distance.near",
       message: `${distanceM} m is nearer than three times the largest dimension (${(FAR_FIELD_DIMENSIONS * dimensionM).toFixed(2)} m): levels referred to 1 m are uncertain.`,
+    });
+  }
+  const airDb = toAirLossDbPerM(AIR_LOSS_AT_HZ, USUAL_AIR) * (distanceM - 1);
+  if (splValid && airDb > TOLD_AIR_LOSS_DB) {
+    warnings.push({
+      code: "distance.air",
+      message: `Over ${distanceM} m the air takes about ${airDb.toFixed(1)} dB at 10 kHz (20 °C, 50 % humidity) and more above: levels referred to 1 m are that much too low there. Compression and distortion re the fundamental are not changed up to a few kilohertz.`,
     });
   }
   if (environment === "gated" && gateMs !== undefined) {

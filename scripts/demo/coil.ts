@@ -1,8 +1,7 @@
 /** A voice coil that heats: its resistance rises and the level falls, slowly. */
+import { COPPER_PER_K } from "../../lib/analysis/voice-coil";
 import type { Stage } from "./filters";
 
-/** Copper, 1/K. */
-const TEMPERATURE_COEFFICIENT = 0.00393;
 const BLOCK_S = 0.001;
 
 export interface CoilSetting {
@@ -21,10 +20,6 @@ export interface Heating {
   minutes: number;
   gapS: number;
 }
-
-/** Loss of a coil that is hotter by so much, dB. @see docs/check-values.md section 11, voltage drive */
-export const toHeatLossDb = (riseK: number): number =>
-  20 * Math.log10(1 + TEMPERATURE_COEFFICIENT * riseK);
 
 export class Coil implements Stage {
   private coilK = 0;
@@ -61,7 +56,7 @@ export class Coil implements Stage {
     const full = this.unit * 10 ** (levelDb / 10);
     for (let start = 0; start < block.length; start += this.blockSamples) {
       const end = Math.min(block.length, start + this.blockSamples);
-      const gain = 1 / (1 + TEMPERATURE_COEFFICIENT * this.riseK);
+      const gain = 1 / (1 + COPPER_PER_K * this.riseK);
       let energy = 0;
       for (let n = start; n < end; n += 1) {
         const x = block[n] ?? 0;

@@ -1,6 +1,7 @@
 /** The parts of the virtual loudspeaker against what is known of them in closed form. */
 import { describe, expect, it } from "vitest";
-import { Coil, toHeatLossDb } from "./coil";
+import { toHeatLossDb } from "../../lib/analysis/voice-coil";
+import { Coil } from "./coil";
 import { Driver, Polynomial, type DriverSetting } from "./driver";
 import { Chain, createCrossoverHalf, createPeak, Parallel, type Stage } from "./filters";
 import { Limiter, toGainDb, type LimiterSetting } from "./limiter";

@@ -1,0 +1,3 @@
+import { run } from "./setup/bootstrap.mjs";
+
+void run("checks");
