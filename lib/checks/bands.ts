@@ -87,7 +87,7 @@ const WORKED: Record<string, CheckRow> = {
     what: "bands that a sweep from 20 Hz to 20 kHz measures",
     compute: () => thirdOctaves(20, 20_000).length,
     expected: 27,
-    tolerance: 0.5,
+    tolerance: 1e-9,
     unit: "",
     source: "40 Hz to 16 kHz: docs/domain.md section 3 [C]",
   },
@@ -129,7 +129,7 @@ const table: Record<string, CheckRow> = Object.fromEntries(
       [
         `name-of-${row.n}`,
         {
-          what: `band ${row.n}, its name`,
+          what: `${name}: its name by the exact ${row.exact_hz} Hz`,
           compute: () => thirdOctave(row.n).nominalHz,
           expected: row.nominal_hz,
           tolerance: 1e-9,
