@@ -17,6 +17,7 @@ import { listPlainLevels } from "@/lib/charts/series-levels";
 import { listCriterionParts, readCriterion } from "@/lib/result/criteria";
 import type { Result, ResultRun } from "@/lib/result/result-schema";
 import { resultQuery } from "../queries/analyses";
+import { findLoadFailure } from "../queries/load-failure";
 import { seriesQuery } from "../queries/series";
 import { useSeriesEvents } from "../queries/use-series-events";
 import { Button, LinkButton } from "../parts/button";
@@ -34,17 +35,13 @@ export function DistortionView({ seriesId }: { seriesId: string }) {
   const series = useQuery(seriesQuery(seriesId));
   const done = series.data?.latest_done_analysis ?? null;
   const result = useQuery({ ...resultQuery(done?.id ?? ""), enabled: done !== null });
-  const failure = series.error ?? result.error;
+  const failure = findLoadFailure([series, result]);
   if (failure !== null) {
-    const problem = failure instanceof ApiProblem ? failure.problem : null;
+    const problem = failure.error instanceof ApiProblem ? failure.error.problem : null;
     return (
       <FaultBar
         title="The distortion could not be loaded"
-        actions={
-          <Button onClick={() => void Promise.all([series.refetch(), result.refetch()])}>
-            Try again
-          </Button>
-        }
+        actions={<Button onClick={failure.retry}>Try again</Button>}
         {...(problem === null ? {} : { report: `report ${problem.requestId}` })}
       >
         {problem?.detail ??

@@ -9,6 +9,7 @@ import { listCriterionParts, readCriterion, sayCriterion } from "@/lib/result/cr
 import type { Result } from "@/lib/result/result-schema";
 import type { Criterion } from "@/lib/series/series-schema";
 import { analysisQuery, resultQuery } from "../queries/analyses";
+import { findLoadFailure } from "../queries/load-failure";
 import { runsQuery } from "../queries/runs";
 import { seriesQuery } from "../queries/series";
 import { useSeriesEvents } from "../queries/use-series-events";
@@ -45,8 +46,8 @@ export function OutputLimitView({ seriesId, mayAnalyse }: OutputLimitViewProps) 
   });
   const result = useQuery({ ...resultQuery(done?.id ?? ""), enabled: done !== null });
 
-  const failure = series.error ?? runs.error ?? result.error;
-  if (failure !== null) return <LoadFault error={failure} onRetry={() => void series.refetch()} />;
+  const failure = findLoadFailure([series, runs, result]);
+  if (failure !== null) return <LoadFault error={failure.error} onRetry={failure.retry} />;
   if (series.data === undefined || (done !== null && result.data === undefined)) {
     return <LoadingState label="Loading the output limit" figure={<EmptyWall />} />;
   }
