@@ -31,6 +31,7 @@ describe("readEnvironment", () => {
     expect(read({})).toEqual({
       webHost: "127.0.0.1",
       webPort: 4300,
+      behindProxy: false,
       publicUrl: "http://127.0.0.1:4300",
       databasePort: 54330,
       databaseName: "tidemark",
@@ -61,6 +62,7 @@ describe("readEnvironment", () => {
       webHost: "0.0.0.0",
       webPort: 8080,
       publicUrl: "https://bench.example",
+      behindProxy: true,
       databasePort: 6000,
       dataDir: "/var/data",
       maxUploadBytes: 20_000_000,

@@ -14,6 +14,8 @@ export interface Environment {
   webPort: number;
   /** Address under which people reach the web server, without a slash at the end. */
   publicUrl: string;
+  /** Whether another server stands in front, which tells us where a request came from. */
+  behindProxy: boolean;
   /** Port of the database on loopback, and the name of the database. */
   databasePort: number;
   databaseName: string;
@@ -99,6 +101,7 @@ export function readEnvironment(
     publicUrl:
       set.TIDEMARK_PUBLIC_URL?.replace(/\/+$/, "") ??
       toLocalUrl({ webHost: set.TIDEMARK_WEB_HOST, webPort: set.TIDEMARK_WEB_PORT }),
+    behindProxy: set.TIDEMARK_PUBLIC_URL !== undefined,
     databasePort: set.TIDEMARK_DB_PORT,
     databaseName: set.TIDEMARK_DB_NAME,
     dataDir,
