@@ -17,9 +17,13 @@ const SIGNED_IN_ERRORS: readonly ErrorCode[] = [
   "auth.required",
   "auth.token-invalid",
   "auth.session-needed",
-  "request.origin",
 ];
-const INPUT_ERRORS: readonly ErrorCode[] = ["request.invalid", "request.media-type"];
+const QUERY_ERRORS: readonly ErrorCode[] = ["request.invalid"];
+const BODY_ERRORS: readonly ErrorCode[] = [
+  "request.invalid",
+  "request.media-type",
+  "request.too-large",
+];
 
 /**
  * @param place.publicUrl address of this installation, without a slash at the end.
@@ -108,13 +112,15 @@ function toAnswer(operation: Operation): JsonObject {
 
 /** Every code that the operation may answer, its own and those of its access. */
 export function listErrors(operation: Operation): ErrorCode[] {
-  const takesInput = operation.body !== undefined || operation.query !== undefined;
+  const isWrite = operation.method !== "GET";
   return [
     ...new Set([
       ...operation.errors,
-      ...(takesInput ? INPUT_ERRORS : []),
+      ...(operation.query === undefined ? [] : QUERY_ERRORS),
+      ...(operation.body === undefined ? [] : BODY_ERRORS),
       ...(operation.params === undefined ? [] : (["not-found"] as const)),
       ...(operation.access === "anyone" ? [] : SIGNED_IN_ERRORS),
+      ...(isWrite ? (["request.origin"] as const) : []),
       ...(operation.access === "anyone" || operation.access === "account"
         ? []
         : (["auth.forbidden"] as const)),
