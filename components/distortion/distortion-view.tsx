@@ -136,7 +136,7 @@ export function DistortionScreen({ result }: { result: Result }) {
           ]}
         />
       </div>
-      <div className="grid gap-x-7 gap-y-6 xl:grid-cols-[minmax(0,1fr)_404px]">
+      <div className="grid grid-cols-[minmax(0,1fr)] gap-x-7 gap-y-6 xl:grid-cols-[minmax(0,1fr)_404px]">
         <div className="min-w-0">
           <DistortionFigure
             result={result}

@@ -162,32 +162,20 @@ function cellShapes(cell: MapCell, place: CellPlace): Shape[] {
 
 function rowLabelShapes(row: MapRow, y: number, width: number): Shape[] {
   const swatch = { kind: "rect", x: width - 6, width: 4, fill: row.paint.fill } as const;
-  const cut = row.kind === "long-term";
+  const label = { kind: "text", x: width - 12, fill: COLOURS.ink2, anchor: "end" } as const;
+  const text = formatLevel(row.levelDb);
+  if (row.kind === "short-term") {
+    return [
+      { ...label, y: y + 16.5, text, size: 12 },
+      { ...swatch, y: y + 4, height: 16 },
+    ];
+  }
+  // Two lines within the row: what hangs below would lie on the next one.
   return [
-    {
-      kind: "text",
-      x: width - 12,
-      y: y + 16.5,
-      text: formatLevel(row.levelDb),
-      size: 12,
-      fill: COLOURS.ink2,
-      anchor: "end",
-    },
-    ...(cut
-      ? [
-          { ...swatch, y: y + 4, height: 7 },
-          { ...swatch, y: y + 13, height: 7 },
-          {
-            kind: "text",
-            x: width - 12,
-            y: y + 36,
-            text: "long-term",
-            size: 11,
-            fill: COLOURS.ink2,
-            anchor: "end",
-          } as const,
-        ]
-      : [{ ...swatch, y: y + 4, height: 16 }]),
+    { ...label, y: y + 10.5, text, size: 11 },
+    { ...label, y: y + 21.5, text: "long-term", size: 11 },
+    { ...swatch, y: y + 4, height: 7 },
+    { ...swatch, y: y + 13, height: 7 },
   ];
 }
 
