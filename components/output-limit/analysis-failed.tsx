@@ -1,6 +1,9 @@
 "use client";
 
 import type { Failure } from "@/lib/api/series";
+import { toMoment } from "@/lib/time/time-words";
+import { useLabZone } from "../frame/lab-session";
+import { useNow } from "../frame/use-now";
 import { useStartAnalysis } from "../queries/series";
 import { Button, LinkButton } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
@@ -14,14 +17,14 @@ interface AnalysisFailedProps {
 /** Cause in plain words, what is safe, then the likeliest remedy first. */
 export function AnalysisFailed({ seriesId, failure, mayAct }: AnalysisFailedProps) {
   const start = useStartAnalysis(seriesId);
-  const at = failure.at.slice(0, 16).replace("T", " ");
+  const at = toMoment(failure.at, useNow(), useLabZone());
   return (
     <FaultBar
       className="mt-5"
       title={
         failure.file === null ? "The analysis stopped" : `The analysis stopped at ${failure.file}`
       }
-      report={`${at} UTC · report ${failure.report}`}
+      report={`${at} · report ${failure.report}`}
       actions={
         mayAct && (
           <>

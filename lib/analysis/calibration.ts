@@ -23,6 +23,11 @@ const LEAST_PURITY_DB = 10;
 /** Blocks weaker than this share of the strongest are handling, not tone. */
 const LEAST_BLOCK_SHARE = 0.7;
 
+const sayPurity = (purityDb: number): string =>
+  purityDb < 0
+    ? `lies ${(-purityDb).toFixed(1)} dB under the rest`
+    : `is only ${purityDb.toFixed(1)} dB over the rest`;
+
 /** SPL of a sine that just reaches full scale, from a calibrator of levelDb. */
 export function toFullScaleDb(tone: Tone, levelDb: number): number {
   return levelDb - 20 * Math.log10(tone.amplitude);
@@ -54,7 +59,7 @@ export function measureTone(
   if (!(purityDb >= LEAST_PURITY_DB) || !(amplitude > 0)) {
     throw new AnalysisError(
       "calibration.not-a-tone",
-      `${file} holds no steady tone near ${nominalHz} Hz${Number.isFinite(purityDb) ? `: the strongest, at ${frequencyHz.toFixed(1)} Hz, is only ${purityDb.toFixed(1)} dB over the rest` : ""}. Record the calibrator again, or state its frequency.`,
+      `${file} holds no steady tone near ${nominalHz} Hz${Number.isFinite(purityDb) ? `: the strongest, at ${frequencyHz.toFixed(1)} Hz, ${sayPurity(purityDb)}` : ""}. Record the calibrator again, or state its frequency.`,
       { file, details: { frequencyHz, purityDb } },
     );
   }
