@@ -1,5 +1,6 @@
 /** The seed of the demo labs: interrupted and taken up again, and held against uploads by hand. */
 import { existsSync, statSync } from "node:fs";
+import type { Browser } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { asAccount, inLab } from "../../db/in-lab";
 import { findPasswordHash } from "../../db/queries/accounts";
@@ -22,6 +23,7 @@ import { beginSeed, isUnderWay } from "../../scripts/demo/seed-state";
 import { bundlePath } from "../../scripts/setup/bundles.mjs";
 import { readSignIns, signInsPath } from "../../scripts/setup/demo-sign-ins";
 import { call, openApiBench, seriesInState, target, type ApiBench } from "../api/support";
+import { measureOverflow, openBrowser, PHONE, signIn } from "../e2e/browser";
 import { makeTestMember } from "../support/lab-bench";
 import { uploadWhole } from "../support/tus";
 
@@ -144,6 +146,47 @@ describe("the seed of the demo labs", () => {
     expect(text.length).toBeGreaterThan(10_000);
     expect(text).toBe(seededText);
   });
+});
+
+describe("the seeded lab in a browser", () => {
+  let browser: Browser;
+  beforeAll(async () => {
+    browser = await openBrowser();
+  });
+  afterAll(() => browser.close());
+
+  it.each(lab.members.map(({ email, roles }) => [roles.join(" and "), email]))(
+    "shows its screens to %s on a phone, whole and without a fault",
+    async (_roles, email) => {
+      const password = readSignIns(bench.product.dataDir)[0]?.password ?? "";
+      const { url } = bench.product;
+      const context = await signIn(browser, { url, email, password }, PHONE);
+      const faults: string[] = [];
+      const page = await context.newPage();
+      page.on("pageerror", (error) => faults.push(`${page.url()}: ${error.message}`));
+      page.on("console", (message) => {
+        if (message.type() === "error") faults.push(`${page.url()}: ${message.text()}`);
+      });
+      await page.goto("/series");
+      const results = page.getByRole("link", { name: /Ketch 12/ });
+      await results.first().waitFor();
+      const addresses = await results.evaluateAll((links) =>
+        links.map((link) => link.getAttribute("href") ?? ""),
+      );
+      expect(addresses).toHaveLength(lab.series.length);
+      for (const address of addresses) {
+        const series = address.replace(/(\/series\/[^/]+).*/, "$1");
+        for (const screen of ["output-limit", "distortion", "runs", "plan", "history"]) {
+          await page.goto(`${series}/${screen}`, { waitUntil: "networkidle" });
+          await page.getByRole("heading", { name: "Ketch 12" }).waitFor();
+          const wider = await measureOverflow(page);
+          if (wider > 0) faults.push(`${page.url()}: ${wider} px wider than the phone`);
+        }
+      }
+      await context.close();
+      expect(faults).toEqual([]);
+    },
+  );
 });
 
 async function expectSignIns(labId: string, password: string): Promise<void> {
