@@ -21,6 +21,7 @@ process.on("message", (job: RecordingJob) => {
   } catch (error) {
     answer.error = error instanceof Error ? error.message : String(error);
   }
-  process.send?.(answer);
+  // A parent that is gone meanwhile wants no answer.
+  process.send?.(answer, () => undefined);
 });
 process.on("disconnect", () => process.exit(0));
