@@ -2,7 +2,7 @@
 
 import { useMemo } from "react";
 import { toDistortionFigure } from "@/lib/charts/distortion";
-import { MULTIPLE_LAYOUT } from "@/lib/charts/distortion-layout";
+import { MULTIPLE_LAYOUT, toMultiplePitch } from "@/lib/charts/distortion-layout";
 import { sayDistortion, sayRun, sayThdBeside } from "@/lib/charts/distortion-words";
 import { listPlainLevels } from "@/lib/charts/series-levels";
 import { COLOURS } from "@/lib/charts/tokens";
@@ -11,6 +11,7 @@ import { useCrosshair } from "../parts/crosshair";
 import { CurvePlot } from "../parts/curve-plot";
 import { joinClasses } from "../parts/join-classes";
 import { LevelSwatch } from "../parts/level-swatch";
+import { useWidth } from "../parts/use-width";
 
 interface RunMultiplesProps {
   result: Result;
@@ -36,7 +37,7 @@ export function RunMultiples({
         <h2>All runs</h2>
         <span className="figures text-label text-ink-2">THD_F, H2, H3 · %</span>
       </div>
-      <ul className="max-lg:grid max-lg:gap-x-6 sm:max-lg:grid-cols-2">
+      <ul className="max-lg:grid max-lg:gap-x-6 max-sm:grid-cols-1 sm:max-lg:grid-cols-2">
         {runs.map((one, at) => (
           <li key={one.file} className="border-b border-rule">
             <button
@@ -71,9 +72,13 @@ interface MultipleProps extends Pick<
 }
 
 const SHOWN = [0, 2, 3];
+/** Beside the large figure, px. */
+const MULTIPLE_WIDTH = 388;
 
 function Multiple({ result, run, criterionPercent, selectedHz, xLabels }: MultipleProps) {
   const { hoveredHz } = useCrosshair();
+  const [ref, width] = useWidth<HTMLSpanElement>(MULTIPLE_WIDTH);
+  const pitch = toMultiplePitch(width, result.bands.length);
   const level = useMemo(
     () => listPlainLevels(result.runs).find((one) => one.levelDb >= run.level_dB),
     [result.runs, run.level_dB],
@@ -86,9 +91,9 @@ function Multiple({ result, run, criterionPercent, selectedHz, xLabels }: Multip
         level: level?.paint.line ?? COLOURS.ink,
         shown: SHOWN,
         criterionPercent,
-        layout: { ...MULTIPLE_LAYOUT, xLabels },
+        layout: { ...MULTIPLE_LAYOUT, pitch, xLabels },
       }),
-    [result, run, level, criterionPercent, xLabels],
+    [result, run, level, criterionPercent, pitch, xLabels],
   );
   const at = result.bands.findIndex((band) => band.nominal_Hz === (hoveredHz ?? selectedHz));
   const x = figure.plot.x + figure.bands.centre(Math.max(at, 0));
@@ -103,7 +108,7 @@ function Multiple({ result, run, criterionPercent, selectedHz, xLabels }: Multip
           {sayThdBeside(result.bands, run, hoveredHz ?? selectedHz)}
         </span>
       </span>
-      <span className="block overflow-hidden">
+      <span ref={ref} className="block overflow-hidden">
         <CurvePlot figure={figure} label={sayDistortion(result.bands, run)}>
           {at >= 0 && (
             <line

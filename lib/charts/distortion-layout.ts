@@ -28,7 +28,7 @@ export const DISTORTION_LAYOUT: DistortionLayout = {
 };
 
 /** One of the small figures of all runs. */
-export const MULTIPLE_LAYOUT: Partial<DistortionLayout> = {
+export const MULTIPLE_LAYOUT = {
   pitch: 12.2,
   plotHeight: 132,
   left: 52,
@@ -37,4 +37,11 @@ export const MULTIPLE_LAYOUT: Partial<DistortionLayout> = {
   ticksPercent: [0.1, 1, 10],
   full: false,
   xLabels: false,
-};
+} satisfies Partial<DistortionLayout>;
+
+/** @param width px for a small figure. @returns px from band to band, at most as wide as laid out. */
+export function toMultiplePitch(width: number, bands: number): number {
+  const room = width - MULTIPLE_LAYOUT.left - MULTIPLE_LAYOUT.right;
+  const pitch = Math.floor((room / Math.max(bands, 1)) * 10) / 10;
+  return Math.min(MULTIPLE_LAYOUT.pitch, Math.max(1, pitch));
+}

@@ -2,7 +2,7 @@ import { describe, expect, it } from "vitest";
 import { makeSampleResult } from "../../tests/support/sample-result";
 import { toCurvePath, toPlotX, toPlotY } from "./curve-figure";
 import { toDistortionFigure } from "./distortion";
-import { MULTIPLE_LAYOUT } from "./distortion-layout";
+import { MULTIPLE_LAYOUT, toMultiplePitch } from "./distortion-layout";
 import { SHOWN_FIRST, toFloorPercent, toPercentCurve } from "./distortion-parts";
 import { sayDistortion, sayOrders, toDistortionReadout } from "./distortion-words";
 import { flattenShapes, type TextShape } from "./figure";
@@ -110,6 +110,18 @@ describe("end labels", () => {
       layout: MULTIPLE_LAYOUT,
     });
     expect(flattenShapes(small.over).some((s) => s.role === "end-label")).toBe(false);
+  });
+});
+
+describe("the small figures", () => {
+  it("keep within the width that a phone leaves them, and grow no further than laid out", () => {
+    const margins = MULTIPLE_LAYOUT.left + MULTIPLE_LAYOUT.right;
+    for (const width of [338, 360]) {
+      const pitch = toMultiplePitch(width, 27);
+      expect(margins + 27 * pitch).toBeLessThanOrEqual(width);
+      expect(margins + 27 * (pitch + 0.1)).toBeGreaterThan(width);
+    }
+    expect(toMultiplePitch(800, 27)).toBe(MULTIPLE_LAYOUT.pitch);
   });
 });
 

@@ -176,7 +176,7 @@ describe("the seeded lab in a browser", () => {
       expect(addresses).toHaveLength(lab.series.length);
       for (const address of addresses) {
         const series = address.replace(/(\/series\/[^/]+).*/, "$1");
-        for (const screen of ["output-limit", "distortion", "runs", "plan", "history"]) {
+        for (const screen of ["output-limit", "distortion", "runs"]) {
           await page.goto(`${series}/${screen}`, { waitUntil: "networkidle" });
           await page.getByRole("heading", { name: "Ketch 12" }).waitFor();
           const wider = await measureOverflow(page);
