@@ -3,6 +3,7 @@ import type { Result } from "../result/result-schema";
 import { toResult } from "../result/to-result";
 import type { Series } from "../series/series-schema";
 import { assessSeries } from "./assess-series";
+import { Plans } from "./cell-power";
 import { measureSeries, type MeasureOptions, type SeriesSource } from "./measure-series";
 
 /**
@@ -15,9 +16,10 @@ export async function analyseSeries(
   source: SeriesSource,
   options: MeasureOptions = {},
 ): Promise<Result> {
-  const { measured, warnings } = await measureSeries(series, source, options);
+  const plans = options.plans ?? new Plans();
+  const { measured, warnings } = await measureSeries(series, source, { ...options, plans });
   options.onProgress?.({ file: null, stage: "onset", done: 0, total: 1 });
-  const assessment = assessSeries(measured, series.settings);
+  const assessment = assessSeries(measured, series.settings, plans);
   options.onProgress?.({ file: null, stage: "onset", done: 1, total: 1 });
   return toResult(series, measured, assessment, warnings);
 }

@@ -83,7 +83,8 @@ function toCompactness(
     m += 1
   )
     near += at(power, m);
-  const all = power.reduce((sum, p) => sum + p, 0);
+  let all = 0;
+  for (let m = 0; m < power.length; m += 1) all += power[m]!;
   return near / all;
 }
 

@@ -7,6 +7,9 @@ import type { OrderPower, RawRun } from "./measure-run";
 import { HARMONIC_ORDERS, toOrdersText } from "./orders";
 import type { BandMeasure, MeasuredRun, ThirdOctave } from "./types";
 
+/** [cells] fundamental of a run, floor subtracted. */
+export const toLowResponse = (raw: RawRun): Float64Array => subtractFloor(raw.orders[0]!);
+
 /** 14 dB over the floor is measured, 6 to 14 dB uncertain (docs/domain.md section 4). */
 const MEASURED_RATIO = 10 ** 1.4;
 const UNCERTAIN_RATIO = 10 ** 0.6;
@@ -26,8 +29,8 @@ export interface AssemblyContext {
   referenceBandHz: readonly [number, number];
   /** Noise that the gate lets through, of that in the ungated window. */
   gateNoiseShare: number;
-  /** The quietest plain short-term run: its response refers harmonics to the input. */
-  lowRun: RawRun;
+  /** [cells] fundamental of the quietest plain short-term run, floor subtracted: it refers harmonics to the input. */
+  lowResponse: Float64Array;
 }
 
 /** @param run as the series names it; driveDb as it was really applied. */
@@ -180,8 +183,11 @@ function toBandMeasure(
 ): BandMeasure {
   const { grid, topHz, fullScaleDb } = context;
   const first = toFirstCellOf(band, grid);
-  const mean = (cells: Float64Array): number =>
-    cells.subarray(first, first + CELLS_PER_BAND).reduce((sum, p) => sum + p, 0) / CELLS_PER_BAND;
+  const mean = (cells: Float64Array): number => {
+    let sum = 0;
+    for (let c = first; c < first + CELLS_PER_BAND; c += 1) sum += cells[c]!;
+    return sum / CELLS_PER_BAND;
+  };
   const { power, floor: floors, windowS } = raw.orders[0]!;
   const floor = mean(floors);
   const clean = mean(power) - floor;
@@ -242,16 +248,14 @@ function toSigmaDb(noiseShare: number, freedom: number): number {
 function toInputFactor(
   { order, power, floor }: OrderPower,
   first: number,
-  { grid, lowRun }: AssemblyContext,
+  { grid, lowResponse }: AssemblyContext,
 ): number {
-  const low = lowRun.orders[0]!;
-  const clean = subtractFloor(low);
   let sum = 0;
   let weights = 0;
   for (let c = first; c < first + CELLS_PER_BAND; c += 1) {
-    const there = readLog(clean, grid, order * grid.centreHz[c]!);
+    const there = readLog(lowResponse, grid, order * grid.centreHz[c]!);
     const weight = Math.max(power[c]! - floor[c]!, floor[c]!);
-    sum += weight * (clean[c]! / there);
+    sum += weight * (lowResponse[c]! / there);
     weights += weight;
   }
   return sum / weights;

@@ -12,6 +12,7 @@ import type {
   shapeSchema,
 } from "../result/result-schema";
 import type { Criterion, Settings } from "../series/series-schema";
+import { Plans } from "./cell-power";
 import { listBandLevels, orNull, referRuns } from "./band-levels";
 import { nameCauses, type BandCause } from "./cause";
 import { groupRuns, groupShortTerm, type LevelGroup } from "./compression";
@@ -55,17 +56,19 @@ interface Assessed {
  * Assesses a measured series: compression, onset, cause and limits per band, headline and programme estimate.
  *
  * @param series at least one plain short-term run; not modified.
+ * @param plans tables of earlier series, to be used again.
  * @returns null stands for "no value".
  * @throws AnalysisError "series.reference-missing"
  */
 export function assessSeries(
   series: MeasuredSeries,
   settings: Pick<Settings, "criteria">,
+  plans = new Plans(),
 ): Assessment {
   const groups = groupShortTerm(series);
   const longTerm = groupRuns(series, "long-term", undefined);
   const steps = readSteps(groups, groups[0], series.bands.length);
-  const onsets = findOnsets(groups, steps, series.bands.length);
+  const onsets = findOnsets(groups, steps, series.bands.length, (drives) => plans.onset(drives));
   const causes = nameCauses(series, groups, onsets);
   const references = referRuns(series, groups, steps);
   const assessed = series.bands.map((band, index): Assessed => {

@@ -75,9 +75,8 @@ function findTone(
   const length = Math.min(samples.length, LONGEST_SEARCH);
   const from = Math.floor((samples.length - length) / 2);
   const fft = plans.fft(toFftSize(length));
-  for (let n = 0; n < length; n += 1) {
-    fft.data[n] = samples[from + n]! * (0.5 - 0.5 * Math.cos((2 * Math.PI * (n + 0.5)) / length));
-  }
+  const window = plans.hann(length);
+  for (let n = 0; n < length; n += 1) fft.data[n] = samples[from + n]! * window[n]!;
   fft.data.fill(0, length);
   const power = plans.power(fft);
   const binHz = rateHz / fft.size;
@@ -155,8 +154,12 @@ function fitBlock(
     re += x * cr;
     im -= x * ci;
     weight += w;
-    [cr, ci] = [cr * stepR - ci * stepI, cr * stepI + ci * stepR];
-    [hr, hi] = [hr * hannR - hi * hannI, hr * hannI + hi * hannR];
+    const nextR = cr * stepR - ci * stepI;
+    ci = cr * stepI + ci * stepR;
+    cr = nextR;
+    const nextHannR = hr * hannR - hi * hannI;
+    hi = hr * hannI + hi * hannR;
+    hr = nextHannR;
   }
   return (2 * Math.hypot(re, im)) / weight;
 }

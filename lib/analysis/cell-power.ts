@@ -2,14 +2,20 @@
 import { planComplexFft, type ComplexFft } from "./fft/complex-fft";
 import { planRealFft, toFftSize, type RealFft } from "./fft/real-fft";
 import { LogTable, meanUniformInLog } from "./log-means";
+import { planOnset, type OnsetPlan } from "./onset/onset-plan";
 import type { OrderWindow } from "./order-windows";
 
-/** FFT plans and tables shared by every run of a series. */
+/** Labs keep to a few sets of levels; each set of tables takes some megabytes. */
+const MOST_ONSET_PLANS = 4;
+
+/** FFT plans and tables shared by every run of a series, and by the series of a process that analyses many. */
 export class Plans {
   readonly logs = new LogTable();
   readonly #fft = new Map<number, RealFft>();
   readonly #complex = new Map<number, ComplexFft>();
   readonly #power = new Map<number, Float64Array>();
+  readonly #hann = new Map<number, Float64Array>();
+  readonly #onset = new Map<string, OnsetPlan>();
 
   /** The plan of a size, made once. */
   fft(size: number): RealFft {
@@ -22,6 +28,29 @@ export class Plans {
   complex(size: number): ComplexFft {
     const plan = this.#complex.get(size) ?? planComplexFft(size);
     this.#complex.set(size, plan);
+    return plan;
+  }
+
+  /** [size] periodic Hann window, sampled between its points so that it is symmetric. */
+  hann(size: number): Float64Array {
+    const known = this.#hann.get(size);
+    if (known !== undefined) return known;
+    const window = new Float64Array(size);
+    for (let n = 0; n < size; n += 1) {
+      window[n] = 0.5 - 0.5 * Math.cos((2 * Math.PI * (n + 0.5)) / size);
+    }
+    this.#hann.set(size, window);
+    return window;
+  }
+
+  /** Tables of the onset for a set of drives; the sets used last are kept. */
+  onset(drivesDb: readonly number[]): OnsetPlan {
+    const key = drivesDb.join(" ");
+    const plan = this.#onset.get(key) ?? planOnset(drivesDb);
+    this.#onset.delete(key);
+    this.#onset.set(key, plan);
+    const [oldest] = this.#onset.keys();
+    if (this.#onset.size > MOST_ONSET_PLANS && oldest !== undefined) this.#onset.delete(oldest);
     return plan;
   }
 

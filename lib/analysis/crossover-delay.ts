@@ -115,8 +115,10 @@ const around = ({ hz, order }: AllPass, perOctave: number): AllPass[] =>
 function pick(readings: Readings, candidates: readonly AllPass[]): AllPass {
   let best: AllPass = { hz: COARSE.fromHz, order: 2 };
   let least = Number.POSITIVE_INFINITY;
+  const left = new Float64Array(readings.x.length);
   for (const candidate of candidates) {
-    const { misfit } = fit(without(readings, candidate));
+    takeOff(readings, candidate, left);
+    const { misfit } = fitTo(readings, left);
     if (misfit < least) [best, least] = [candidate, misfit];
   }
   return best;
@@ -126,26 +128,35 @@ const withoutAll = (readings: Readings, allPasses: readonly AllPass[]): Readings
   allPasses.reduce(without, readings);
 
 /** Takes off the group delay of an all-pass: first order, or second order with Q = 1/sqrt 2. */
-function without(readings: Readings, { hz, order }: AllPass): Readings {
-  const omega = 2 * Math.PI * hz;
+function without(readings: Readings, allPass: AllPass): Readings {
   const delayS = new Float64Array(readings.delayS.length);
-  for (let n = 0; n < delayS.length; n += 1) {
+  takeOff(readings, allPass, delayS);
+  return { ...readings, delayS };
+}
+
+/** @param into [points] receives the delay that is left. */
+function takeOff(readings: Readings, { hz, order }: AllPass, into: Float64Array): void {
+  const omega = 2 * Math.PI * hz;
+  for (let n = 0; n < into.length; n += 1) {
     const ratio = readings.squareHz[n]! / (hz * hz);
     const own =
       order === 1
         ? 2 / (omega * (1 + ratio))
         : (2 * Math.SQRT2 * (1 + ratio)) / (omega * (1 + ratio * ratio));
-    delayS[n] = readings.delayS[n]! - own;
+    into[n] = readings.delayS[n]! - own;
   }
-  return { ...readings, delayS };
 }
 
 /** Least squares, each reading by its phase. */
-function fit({ x, weight, delayS }: Readings): Fit {
+const fit = (readings: Readings): Fit => fitTo(readings, readings.delayS);
+
+function fitTo({ x, weight }: Readings, delayS: Float64Array): Fit {
   const { slope, offset } = toLine(x, weight, delayS);
-  let [residue, sum] = [0, 0];
+  let residue = 0;
+  let sum = 0;
   for (let i = 0; i < x.length; i += 1) {
-    residue += weight[i]! * (delayS[i]! - offset - slope * x[i]!) ** 2;
+    const miss = delayS[i]! - offset - slope * x[i]!;
+    residue += weight[i]! * (miss * miss);
     sum += weight[i]!;
   }
   return { slope, misfit: Math.sqrt(residue / sum) };
@@ -156,7 +167,11 @@ function toLine(
   weight: Float64Array,
   y: Float64Array,
 ): { slope: number; offset: number } {
-  let [sum, sumX, sumY, sumXX, sumXY] = [0, 0, 0, 0, 0];
+  let sum = 0;
+  let sumX = 0;
+  let sumY = 0;
+  let sumXX = 0;
+  let sumXY = 0;
   for (let i = 0; i < x.length; i += 1) {
     const w = weight[i]!;
     sum += w;

@@ -86,8 +86,8 @@ export function createDeconvolver(
   const lastBin = Math.floor((highHz * size) / sweep.rateHz);
   const count = lastBin - firstBin + 1;
   const zooms: Zooms = {
-    whole: plans.complex(toFftSize(2 * count)),
-    part: plans.complex(toFftSize(2 * toPartBins(count))),
+    whole: toZoom(count, plans),
+    part: toZoom(toPartBins(count), plans),
   };
   const kept = {
     first: firstBin,
@@ -167,36 +167,52 @@ function invertInPlace(
 const PART = 0.25;
 const toPartBins = (count: number): number => Math.max(1, Math.floor(count * PART));
 
-/** Transforms back to lag at the pace of what they hold. */
+/** Transforms so many bins back to lag, at the pace of what they hold. */
+interface Zoom {
+  fft: ComplexFft;
+  /** [bins] a raised cosine keeps the flanks short. */
+  weights: Float64Array;
+  /** [2 size] scratch. */
+  data: Float64Array;
+}
+
 interface Zooms {
-  whole: ComplexFft;
-  part: ComplexFft;
+  whole: Zoom;
+  part: Zoom;
+}
+
+function toZoom(bins: number, plans: Plans): Zoom {
+  const weights = new Float64Array(bins);
+  for (let k = 0; k < bins; k += 1) weights[k] = 1 - Math.cos((2 * Math.PI * (k + 0.5)) / bins);
+  const fft = plans.complex(toFftSize(2 * bins));
+  return { fft, weights, data: new Float64Array(2 * fft.size) };
 }
 
 function toEnvelope(kept: Float64Array, { whole, part }: Zooms, size: number): ArrivalEnvelope {
   const count = kept.length / 2;
   const bins = toPartBins(count);
-  const toLag = (peak: number): number => (peak * size) / part.size;
+  const toLag = (peak: number): number => (peak * size) / part.fft.size;
   return {
-    power: toLagPower(kept, 0, count, whole),
-    samplesPerPoint: size / whole.size,
-    lowLag: toLag(toPeak(toLagPower(kept, 0, bins, part))),
-    highLag: toLag(toPeak(toLagPower(kept, count - bins, count, part))),
+    power: toLagPower(kept, 0, whole),
+    samplesPerPoint: size / whole.fft.size,
+    lowLag: toLag(toPeak(toLagPower(kept, 0, part))),
+    highLag: toLag(toPeak(toLagPower(kept, count - bins, part))),
   };
 }
 
-/** |analytic response|^2 of bins from to before to, over lag; a raised cosine keeps its flanks short. */
-function toLagPower(kept: Float64Array, from: number, to: number, zoom: ComplexFft): Float64Array {
-  const bins = new Float64Array(2 * zoom.size);
-  for (let k = from; k < to; k += 1) {
+/** |analytic response|^2 over lag, of the bins from one on. */
+function toLagPower(kept: Float64Array, from: number, { fft, weights, data }: Zoom): Float64Array {
+  for (let k = 0; k < weights.length; k += 1) {
     // Conjugated, so that the forward transform goes back to lag.
-    const weight = 1 - Math.cos((2 * Math.PI * (k - from + 0.5)) / (to - from));
-    bins[2 * (k - from)] = weight * kept[2 * k]!;
-    bins[2 * (k - from) + 1] = -weight * kept[2 * k + 1]!;
+    data[2 * k] = weights[k]! * kept[2 * (from + k)]!;
+    data[2 * k + 1] = -weights[k]! * kept[2 * (from + k) + 1]!;
   }
-  const lag = zoom.transform(bins);
-  const power = new Float64Array(zoom.size);
-  for (let m = 0; m < power.length; m += 1) power[m] = lag[2 * m]! ** 2 + lag[2 * m + 1]! ** 2;
+  data.fill(0, 2 * weights.length);
+  const lag = fft.transform(data);
+  const power = new Float64Array(fft.size);
+  for (let m = 0; m < power.length; m += 1) {
+    power[m] = lag[2 * m]! * lag[2 * m]! + lag[2 * m + 1]! * lag[2 * m + 1]!;
+  }
   return power;
 }
 

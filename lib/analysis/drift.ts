@@ -62,12 +62,13 @@ function toExcessDelay(
   const before = Math.round(BEFORE_S * rateHz);
   const from = Math.round(arrivalLag) - before;
   const length = points / 2;
-  const windowed = Float64Array.from({ length }, (_, n) => {
+  const windowed = new Float64Array(length);
+  for (let n = 0; n < length; n += 1) {
     const flank =
       n < before / 2 ? n / (before / 2) : n > length * 0.6 ? (length - n) / (length * 0.4) : 1;
     const index = (((from + n) % response.length) + response.length) % response.length;
-    return response[index]! * (0.5 - 0.5 * Math.cos(Math.PI * flank));
-  });
+    windowed[n] = response[index]! * (0.5 - 0.5 * Math.cos(Math.PI * flank));
+  }
   const transform = (fill: (n: number) => number): Float64Array => {
     for (let n = 0; n < length; n += 1) fft.data[n] = fill(n);
     fft.data.fill(0, length);

@@ -14,10 +14,12 @@ export function measurePeak({ samples, fullScale }: Recording): {
   for (let n = 0; n < samples.length; n += 1) {
     const size = Math.abs(samples[n]!);
     if (size > peak) peak = size;
-    if (size >= fullScale) {
-      run += 1;
-      if (run > longest) longest = run;
-    } else run = 0;
+    if (size < fullScale) {
+      run = 0;
+      continue;
+    }
+    run += 1;
+    if (run > longest) longest = run;
   }
   return { peakDbfs: 20 * Math.log10(peak), clipped: longest >= CLIPPED_SAMPLES || peak > 1 };
 }

@@ -2,7 +2,7 @@
 import { AnalysisError } from "../errors/app-error";
 import type { Warning } from "../result/result-schema";
 import type { Run, Series } from "../series/series-schema";
-import { assembleRun, type AssemblyContext } from "./assemble-run";
+import { assembleRun, toLowResponse, type AssemblyContext } from "./assemble-run";
 import { thirdOctaves, twentyFourthOctaves, type Grid } from "./bands";
 import { Plans } from "./cell-power";
 import { measureRun, type MeasuringContext, type RawRun } from "./measure-run";
@@ -185,7 +185,7 @@ function assembleSeries(
     fullScaleDb: scale.fullScaleDb,
     referenceBandHz: context.referenceBandHz,
     gateNoiseShare: (context.gate?.energyS ?? 0) / context.windows[0]!.energyS,
-    lowRun: reference.raw,
+    lowResponse: toLowResponse(reference.raw),
   };
   return {
     gridHz: grid.centreHz,

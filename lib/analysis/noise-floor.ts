@@ -35,15 +35,13 @@ export function measureNoise(
   const wished = Math.min(samples.length, Math.round(LONGEST_BLOCK_S * rateHz));
   const size = toFftSize(wished / 2 + 1);
   const fft = plans.fft(size);
-  const window = Float64Array.from(
-    { length: size },
-    (_, n) => 0.5 - 0.5 * Math.cos((2 * Math.PI * (n + 0.5)) / size),
-  );
+  const window = plans.hann(size);
+  const { data } = fft;
   const byFrequency = new Float64Array(size / 2 + 1);
   let blocks = 0;
   const hop = Math.max(size / 2, Math.floor((samples.length - size) / MOST_BLOCKS));
   for (let from = 0; from + size <= samples.length; from += hop, blocks += 1) {
-    for (let n = 0; n < size; n += 1) fft.data[n] = window[n]! * samples[from + n]!;
+    for (let n = 0; n < size; n += 1) data[n] = window[n]! * samples[from + n]!;
     const power = plans.power(fft);
     for (let k = 0; k < power.length; k += 1) byFrequency[k]! += power[k]!;
   }
@@ -137,20 +135,18 @@ export function toNoiseCells(
 const OCTAVE_REACH = 12;
 
 function blend(room: Float64Array, own: Float64Array, roomS: number, ownS: number): void {
-  const ratios = room.map((_, c) => {
+  const ratios = new Float64Array(room.length);
+  for (let c = 0; c < room.length; c += 1) {
     let ownSum = 0;
     let roomSum = 0;
-    for (
-      let i = Math.max(0, c - OCTAVE_REACH);
-      i < Math.min(room.length, c + OCTAVE_REACH + 1);
-      i += 1
-    ) {
+    const end = Math.min(room.length, c + OCTAVE_REACH + 1);
+    for (let i = Math.max(0, c - OCTAVE_REACH); i < end; i += 1) {
       if (Number.isNaN(room[i]!) || Number.isNaN(own[i]!)) continue;
       ownSum += own[i]!;
       roomSum += room[i]!;
     }
-    return roomSum > 0 && ownSum > 0 ? ownSum / roomSum : 1;
-  });
+    ratios[c] = roomSum > 0 && ownSum > 0 ? ownSum / roomSum : 1;
+  }
   for (let c = 0; c < room.length; c += 1) {
     const ratio = ratios[c]!;
     const same = ratio < SAME_NOISE_RATIO && ratio > 1 / SAME_NOISE_RATIO;

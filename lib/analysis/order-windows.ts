@@ -56,6 +56,7 @@ function toWindow(
   const fall = Math.max(1, Math.floor(after * FLANK_AFTER));
   for (let n = 0; n < fall; n += 1)
     weights[weights.length - 1 - n] = 0.5 - 0.5 * Math.cos((Math.PI * (n + 0.5)) / fall);
-  const energyS = weights.reduce((sum, w) => sum + w * w, 0) / rateHz;
-  return { order, lead, before, weights, energyS };
+  let energy = 0;
+  for (let n = 0; n < weights.length; n += 1) energy += weights[n]! * weights[n]!;
+  return { order, lead, before, weights, energyS: energy / rateHz };
 }

@@ -78,7 +78,7 @@ function tallyDevices(name: DeviceClass, noiseDb: number, stepDb: number): Tally
       bands: 1,
     });
     const groups = groupShortTerm(series);
-    const [onset] = findOnsets(groups, readSteps(groups, groups[0], 1), 1, plan);
+    const [onset] = findOnsets(groups, readSteps(groups, groups[0], 1), 1, () => plan);
     if (onset?.status !== "found" || !onset.posterior) {
       tally.missed++;
       continue;

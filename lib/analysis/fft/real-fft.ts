@@ -101,12 +101,29 @@ export function planRealFft(size: number): RealFft {
     return into;
   };
 
+  /** The product in some bins, before the walk over all of them overwrites the packed spectrum. */
+  const keep = (z: Float64Array, transfer: Float64Array, { first, last, bins }: KeptBins): void => {
+    for (let k = first; k <= last; k += 1) {
+      const upper = 2 * k > half;
+      const a = upper ? 2 * (half - k) : 2 * k;
+      const b = a === 0 ? 0 : 2 * half - a;
+      const wr = twiddles[a]!;
+      const wi = twiddles[a + 1]!;
+      const evenR = (z[a]! + z[b]!) / 2;
+      const evenI = (z[a + 1]! - z[b + 1]!) / 2;
+      const oddR = (z[a + 1]! + z[b + 1]!) / 2;
+      const oddI = (z[b]! - z[a]!) / 2;
+      const tr = oddR * wr - oddI * wi;
+      const ti = oddR * wi + oddI * wr;
+      const re = upper ? evenR - tr : evenR + tr;
+      const im = upper ? ti - evenI : evenI + ti;
+      bins[2 * (k - first)] = re * transfer[2 * k]! - im * transfer[2 * k + 1]!;
+      bins[2 * (k - first) + 1] = re * transfer[2 * k + 1]! + im * transfer[2 * k]!;
+    }
+  };
+
   const filter = (z: Float64Array, transfer: Float64Array, kept?: KeptBins): Float64Array => {
-    const keep = (k: number, re: number, im: number): void => {
-      if (kept === undefined || k < kept.first || k > kept.last) return;
-      kept.bins[2 * (k - kept.first)] = re;
-      kept.bins[2 * (k - kept.first) + 1] = im;
-    };
+    if (kept !== undefined) keep(z, transfer, kept);
     // One walk over the pairs (k, half - k): unpack, multiply, pack conjugated for the inverse.
     const scale = 1 / size;
     const dcR = (z[0]! + z[1]!) * transfer[0]!;
@@ -130,8 +147,6 @@ export function planRealFft(size: number): RealFft {
       const hai = xar * transfer[a + 1]! + xai * transfer[a]!;
       const hbr = xbr * transfer[b]! - xbi * transfer[b + 1]!;
       const hbi = xbr * transfer[b + 1]! + xbi * transfer[b]!;
-      keep(k, har, hai);
-      keep(half - k, hbr, hbi);
       const er = (har + hbr) * scale;
       const ei = (hai - hbi) * scale;
       const dr = (har - hbr) * scale;
@@ -146,8 +161,6 @@ export function planRealFft(size: number): RealFft {
     }
     data[0] = (dcR + topR) * scale;
     data[1] = -(dcR - topR) * scale;
-    keep(0, dcR, 0);
-    keep(half, topR, 0);
     const samples = complex.transform(data);
     for (let n = 1; n < size; n += 2) samples[n] = -samples[n]!;
     return samples;

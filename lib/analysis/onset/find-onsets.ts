@@ -40,14 +40,14 @@ export interface BandOnset {
 /**
  * @param groups plain short-term levels, ascending; the first is the reference.
  * @param steps readings of the same groups.
- * @param plan tables of the groups' drives; made here where left out. One plan serves any number of series.
+ * @param toPlan gives the tables of the groups' drives; one plan serves any number of series.
  * @returns [bands]
  */
 export function findOnsets(
   groups: readonly LevelGroup[],
   steps: readonly StepReading[],
   bands: number,
-  plan?: OnsetPlan,
+  toPlan: (drivesDb: readonly number[]) => OnsetPlan = planOnset,
 ): BandOnset[] {
   const drafts = Array.from({ length: bands }, (_, b) => draftBand(groups, steps, b));
   inferOverload(drafts);
@@ -56,7 +56,7 @@ export function findOnsets(
   );
   if (groups.length < 2 || fitted.length === 0)
     return drafts.map((draft) => conclude(draft, groups));
-  const tables = plan ?? planOnset(groups.map(({ driveDb }) => driveDb));
+  const tables = toPlan(groups.map(({ driveDb }) => driveDb));
   const likelihoods = drafts.map((draft) =>
     fitted.includes(draft) ? likelihoodOf(tables, draft) : null,
   );

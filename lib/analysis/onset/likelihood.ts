@@ -83,24 +83,25 @@ export function computeLikelihood(
   for (let j = 0; j < plan.shapes.length; j++) {
     r1.fill(first);
     r2.fill(second);
-    for (const [k, { profile, at }] of plan.levels.entries()) {
-      const weight = weights[k] ?? 0;
+    for (let k = 0; k < levels; k++) {
+      const weight = weights[k]!;
       if (weight === 0) continue;
+      const { profile, at } = plan.levels[k]!;
       const { lossDb: table } = profile;
       const from = j * plan.profileLength + at - firstColumn;
       const twiceGain = 2 * (gainDb[k] ?? 0);
       // Later columns hold onsets so far above this level that nothing is lost there.
       const end = Math.min(columns, at - firstColumn - (profile.start[j] ?? 0) + 1);
       for (let i = 0; i < end; i++) {
-        const loss = table[from - i] ?? 0;
+        const loss = table[from - i]!;
         const weighted = weight * loss;
-        r1[i] = (r1[i] ?? 0) + weighted;
-        r2[i] = (r2[i] ?? 0) + weighted * (loss + twiceGain);
+        r1[i]! += weighted;
+        r2[i]! += weighted * (loss + twiceGain);
       }
     }
     let best = -Infinity;
     for (let i = 0; i < columns; i++) {
-      const value = -0.5 * ((r2[i] ?? 0) - (r1[i] ?? 0) ** 2 / weightSum) + (place[i] ?? 0);
+      const value = -0.5 * (r2[i]! - (r1[i]! * r1[i]!) / weightSum) + place[i]!;
       logLikelihood[j * columns + i] = value;
       if (value > best) best = value;
     }

@@ -53,22 +53,22 @@ export function computePosterior(
     -Infinity,
   );
   const used = allowed.filter((j) => bestOf(j) - best >= NEGLIGIBLE_LOG);
-  const mass = new Float64Array(plan.shapes.length * columns);
+  const mass = new Float64Array(used.length * columns);
   const byColumn = new Float64Array(columns);
   const byShape = new Float64Array(plan.shapes.length);
   let total = 0;
-  for (const j of used) {
+  used.forEach((j, row) => {
     const offset = (logPrior[j] ?? 0) - best;
     for (let i = 0; i < columns; i++) {
-      const log = (logLikelihood[j * columns + i] ?? 0) + offset;
+      const log = logLikelihood[j * columns + i]! + offset;
       if (log < NEGLIGIBLE_LOG) continue;
       const value = Math.exp(log);
-      mass[j * columns + i] = value;
-      byColumn[i] = (byColumn[i] ?? 0) + value;
-      byShape[j] = (byShape[j] ?? 0) + value;
+      mass[row * columns + i] = value;
+      byColumn[i]! += value;
+      byShape[j]! += value;
       total += value;
     }
-  }
+  });
   const grid = {
     firstDb: plan.firstOnsetDb + likelihood.firstColumn * ONSET_STEP_DB,
     mass,
@@ -110,9 +110,10 @@ export function slopeAt(shape: Shape, offsetDb: number): number {
 
 interface MassGrid {
   firstDb: number;
-  /** [shapes * columns] */
+  /** [used * columns] */
   mass: Float64Array;
   columns: number;
+  /** Shapes with a weight: those of the rows of mass. */
   used: number[];
   total: number;
 }
@@ -122,23 +123,21 @@ function quantilesOf(plan: OnsetPlan, grid: MassGrid, lossDb: number): Quantiles
   // Drives of the loss lie on the onset's own lattice moved by each shape's offset: spread linearly.
   const bins = columns + Math.ceil(60 / ONSET_STEP_DB);
   const histogram = new Float64Array(bins + 1);
-  const lowestOffset = Math.min(0, ...grid.used.map((j) => plan.shapes[j]?.offsetDb(lossDb) ?? 0));
-  for (const j of grid.used) {
-    const offset = plan.shapes[j]?.offsetDb(lossDb) ?? Infinity;
+  const offsets = grid.used.map((j) => getAt(plan.shapes, j).offsetDb(lossDb));
+  const lowestOffset = Math.min(0, ...offsets);
+  grid.used.forEach((_, row) => {
+    const offset = offsets[row] ?? Infinity;
     const moved = Math.min((offset - lowestOffset) / ONSET_STEP_DB, bins);
     const whole = Math.floor(moved);
     const part = moved - whole;
     for (let i = 0; i < columns; i++) {
-      const value = mass[j * columns + i] ?? 0;
+      const value = mass[row * columns + i]!;
       if (value === 0) continue;
       const bin = Math.min(i + whole, bins);
-      histogram[bin] = (histogram[bin] ?? 0) + value * (1 - part);
-      if (part > 0) {
-        const next = Math.min(bin + 1, bins);
-        histogram[next] = (histogram[next] ?? 0) + value * part;
-      }
+      histogram[bin]! += value * (1 - part);
+      if (part > 0) histogram[Math.min(bin + 1, bins)]! += value * part;
     }
-  }
+  });
   const origin = firstDb + lowestOffset - ONSET_STEP_DB / 2;
   const at = (share: number): number => {
     let sum = 0;
@@ -169,12 +168,12 @@ function drawSamples(plan: OnsetPlan, grid: MassGrid, byColumn: Float64Array): L
     if (here === 0) continue;
     const onsetDb = grid.firstDb + i * ONSET_STEP_DB;
     let sum = before;
-    for (const j of grid.used) {
-      const value = grid.mass[j * grid.columns + i] ?? 0;
+    for (let row = 0; row < grid.used.length; row++) {
+      const value = grid.mass[row * grid.columns + i]!;
       if (value === 0) continue;
       sum += value;
       while (samples.length < SAMPLES && (samples.length + 0.5) * grid.total <= sum * SAMPLES) {
-        samples.push({ onsetDb, shape: getAt(plan.shapes, j) });
+        samples.push({ onsetDb, shape: getAt(plan.shapes, getAt(grid.used, row)) });
       }
     }
     before += here;

@@ -1,6 +1,6 @@
 /** What a recording holds of the planned sweep, measured with the engine's own front. */
 import { LEAST_COMPACTNESS } from "../../analysis/arrival";
-import { assembleRun } from "../../analysis/assemble-run";
+import { assembleRun, toLowResponse } from "../../analysis/assemble-run";
 import { thirdOctaves, twentyFourthOctaves } from "../../analysis/bands";
 import type { Plans } from "../../analysis/cell-power";
 import { toArrivalBandHz } from "../../analysis/deconvolution";
@@ -112,7 +112,7 @@ export function measureSweep(
       fullScaleDb: 0,
       referenceBandHz: plan.reference_band_Hz,
       gateNoiseShare: (context.gate?.energyS ?? 0) / (context.windows[0]?.energyS ?? 1),
-      lowRun: raw,
+      lowResponse: toLowResponse(raw),
     },
   );
   const held = bands.map(
