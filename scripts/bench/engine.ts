@@ -1,95 +1,26 @@
 /**
- * The engine on four runs, stimulus, room noise and calibrator: warm in this process, and as the whole
- * analysis command. 2^19 and 2^21 samples are the length of each file.
+ * The engine on four runs, stimulus, room noise and calibrator: warm in this process, as the whole
+ * analysis command, and against the same work in numpy and scipy. 2^19 and 2^21 samples are the
+ * length of each file.
  */
-import { spawn } from "node:child_process";
-import { mkdir, rm, writeFile } from "node:fs/promises";
+import { spawn, spawnSync } from "node:child_process";
 import { join } from "node:path";
+import { median } from "simple-statistics";
+import { z } from "zod";
 import { analyseSeries } from "../../lib/analysis/analyse-series";
 import { Plans } from "../../lib/analysis/cell-power";
 import type { RealFft } from "../../lib/analysis/fft/real-fft";
-import { synthesiseStimulus, toSweepTiming } from "../../lib/analysis/sweep";
-import { writeWav } from "../../lib/audio/write-wav";
 import { toResultText } from "../../lib/result/result-text";
 import { createFolderSource, readSeriesText } from "../../lib/series/folder-source";
 import { parseSeries } from "../../lib/series/parse-series";
-import { createRandom } from "../demo/random";
 import type { Bench } from "../setup/bench";
 import { cloneDir } from "../setup/bootstrap.mjs";
 import { bundlePath, ensureBundle, listBundles } from "../setup/bundles.mjs";
+import { long, makeFolder, removeFolder, short, type BenchSeries } from "./support/engine-folders";
 
-const LEVELS = [76, 86, 96, 102];
-const LEAD_S = 0.4;
-const DELAY = 3000;
-
-interface BenchSeries {
-  folder: string;
-  samples: number;
-  rateHz: number;
-}
-
-const toSeries = (name: string, samples: number, rateHz: number): BenchSeries => ({
-  folder: join(cloneDir, ".tidemark", "bench-engine", name),
-  samples,
-  rateHz,
-});
-const short = toSeries("2e19", 2 ** 19, 48_000);
-const long = toSeries("2e21", 2 ** 21, 96_000);
-
-/** A loudspeaker that clips softly, in noise: every part of the engine has something to find. */
-async function make({ folder, samples, rateHz }: BenchSeries): Promise<void> {
-  await mkdir(folder, { recursive: true });
-  const wishedS = samples / rateHz - 2 * LEAD_S - 0.3;
-  const shape = {
-    startHz: 20,
-    stopHz: 20_000,
-    lengthS: wishedS,
-    rateHz,
-    leadInS: LEAD_S,
-    leadOutS: LEAD_S,
-  };
-  const stimulus = synthesiseStimulus(shape);
-  const random = createRandom(folder.slice(cloneDir.length));
-  const write = (file: string, sample: (n: number) => number): Promise<void> =>
-    writeFile(
-      join(folder, file),
-      writeWav([Float64Array.from({ length: samples }, (_, n) => sample(n))], rateHz),
-    );
-  for (const level of LEVELS) {
-    const gain = 10 ** ((level - 102) / 20);
-    await write(
-      `${level}.wav`,
-      (n) => 0.3 * Math.tanh(gain * (stimulus[n - DELAY] ?? 0)) + 1e-4 * random.normal(),
-    );
-  }
-  await write("stimulus.wav", (n) => 0.7 * (stimulus[n] ?? 0));
-  await write("room.wav", () => 1e-4 * random.normal());
-  await write(
-    "calibrator.wav",
-    (n) => 0.05 * Math.sin((2 * Math.PI * 1000 * n) / rateHz) + 1e-4 * random.normal(),
-  );
-  const series = {
-    loudspeaker: "Bench",
-    environment: "anechoic",
-    distance_m: 1,
-    stimulus: {
-      file: "stimulus.wav",
-      start_Hz: 20,
-      stop_Hz: 20_000,
-      length_s: toSweepTiming(shape).lengthS,
-      rate_Hz: rateHz,
-      lead_in_s: LEAD_S,
-      lead_out_s: LEAD_S,
-    },
-    calibration: { file: "calibrator.wav", level_dB: 94 },
-    ambient: { file: "room.wav" },
-    runs: LEVELS.map((level) => ({ file: `${level}.wav`, level_dB: level })),
-  };
-  await writeFile(join(folder, "series.json"), JSON.stringify(series));
-}
-
-const remove = (series: BenchSeries): Promise<void> =>
-  rm(series.folder, { recursive: true, force: true });
+const WARM_RUNS = 7;
+/** The compiler has settled by then; a worker is past it with its second series. */
+const WARM_UP_RUNS = 10;
 
 /** Plans that add up the time of their transforms. */
 class TimedPlans extends Plans {
@@ -126,8 +57,8 @@ async function analyseMs({ folder }: BenchSeries): Promise<number> {
 }
 
 async function warmUp(series: BenchSeries): Promise<void> {
-  await make(series);
-  for (let i = 0; i < 3; i += 1) await analyseMs(series);
+  await makeFolder(series);
+  for (let i = 0; i < WARM_UP_RUNS; i += 1) await analyseMs(series);
 }
 
 async function fftShare(): Promise<number> {
@@ -158,57 +89,129 @@ async function runCommand({ folder }: BenchSeries): Promise<{ seconds: number; r
   return { seconds, rssMib: Number(rss) / 1024 };
 }
 
-async function prepareCommand(): Promise<void> {
-  await make(short);
+async function prepareCommand(series: BenchSeries): Promise<void> {
+  await makeFolder(series);
   const bundle = listBundles().find(({ name }) => name === "analyse");
   if (bundle === undefined) throw new Error("scripts/entries/analyse.ts is missing");
   await ensureBundle(bundle);
 }
+
+const peerSchema = z.object({ warm_ms: z.number(), process_s: z.number() });
+
+/** Runs the peer; its own figure, warm, and the time of the whole process. */
+function runPeer({ folder }: BenchSeries, runs: number): z.infer<typeof peerSchema> {
+  const from = performance.now();
+  const script = join(cloneDir, "scripts/bench/peer.py");
+  const { status, stdout, stderr } = spawnSync("python3", [script, folder, String(runs)], {
+    encoding: "utf8",
+  });
+  if (status !== 0) throw new Error(`the peer ended with ${String(status)}: ${stderr}`);
+  const said: unknown = JSON.parse(stdout);
+  const process_s = (performance.now() - from) / 1000;
+  return peerSchema.parse({ ...z.looseObject({}).parse(said), process_s });
+}
+
+function findPeerMissing(): string | null {
+  const { status } = spawnSync("python3", ["-c", "import numpy, scipy"]);
+  return status === 0 ? null : "python3 with scipy is not here (Debian: python3-scipy)";
+}
+
+/** Engine over peer, one after the other, so that whatever else the machine does meets both. */
+async function comparePeer(series: BenchSeries): Promise<number> {
+  const peer = runPeer(series, WARM_RUNS);
+  const own: number[] = [];
+  for (let i = 0; i < WARM_RUNS; i += 1) own.push(await analyseMs(series));
+  process.stderr.write(
+    `  engine: ${median(own).toFixed(0)} ms, peer: ${peer.warm_ms.toFixed(0)} ms\n`,
+  );
+  return median(own) / peer.warm_ms;
+}
+
+async function compareProcesses(series: BenchSeries): Promise<number> {
+  const peer = runPeer(series, 1).process_s;
+  const own = (await runCommand(series)).seconds;
+  process.stderr.write(`  command: ${own.toFixed(2)} s, peer: ${peer.toFixed(2)} s\n`);
+  return own / peer;
+}
+
+const againstPeer = (series: BenchSeries, name: string): Bench[] => [
+  {
+    key: `engine.series_${name}_re_peer`,
+    name: `analysis of ${name} samples, warm, against numpy and scipy`,
+    unit: "times",
+    runs: 3,
+    missing: findPeerMissing,
+    before: () => warmUp(series),
+    run: () => comparePeer(series),
+    after: () => removeFolder(series),
+  },
+  {
+    key: `engine.process_${name}_re_peer`,
+    name: `the analysis command of ${name} samples against numpy and scipy, whole processes`,
+    unit: "times",
+    runs: 5,
+    missing: findPeerMissing,
+    before: () => prepareCommand(series),
+    run: () => compareProcesses(series),
+    after: () => removeFolder(series),
+  },
+];
 
 export const benches: Bench[] = [
   {
     key: "engine.series_2e19_ms",
     name: "analysis of four runs of 2^19 samples at 48 kHz, warm, one thread",
     unit: "ms",
-    runs: 7,
+    runs: WARM_RUNS,
     before: () => warmUp(short),
     run: () => analyseMs(short),
-    after: () => remove(short),
+    after: () => removeFolder(short),
   },
   {
     key: "engine.series_2e21_ms",
     name: "analysis of four runs of 2^21 samples at 96 kHz, warm, one thread",
     unit: "ms",
-    runs: 7,
+    runs: WARM_RUNS,
     before: () => warmUp(long),
     run: () => analyseMs(long),
-    after: () => remove(long),
+    after: () => removeFolder(long),
   },
   {
     key: "engine.fft_share",
     name: "share of the transforms in the analysis of 2^19 samples",
     unit: "of 1",
-    runs: 7,
+    runs: WARM_RUNS,
     before: () => warmUp(short),
     run: fftShare,
-    after: () => remove(short),
+    after: () => removeFolder(short),
   },
   {
     key: "engine.process_2e19_s",
     name: "the analysis command as a whole process, 2^19 samples",
     unit: "s",
-    runs: 7,
-    before: prepareCommand,
+    runs: WARM_RUNS,
+    before: () => prepareCommand(short),
     run: async () => (await runCommand(short)).seconds,
-    after: () => remove(short),
+    after: () => removeFolder(short),
+  },
+  {
+    key: "engine.process_2e21_s",
+    name: "the analysis command as a whole process, 2^21 samples",
+    unit: "s",
+    runs: 5,
+    before: () => prepareCommand(long),
+    run: async () => (await runCommand(long)).seconds,
+    after: () => removeFolder(long),
   },
   {
     key: "engine.rss_mib",
     name: "resident memory of the analysis command, 2^19 samples",
     unit: "MiB",
     runs: 3,
-    before: prepareCommand,
+    before: () => prepareCommand(short),
     run: async () => (await runCommand(short)).rssMib,
-    after: () => remove(short),
+    after: () => removeFolder(short),
   },
+  ...againstPeer(short, "2e19"),
+  ...againstPeer(long, "2e21"),
 ];

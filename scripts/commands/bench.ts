@@ -1,6 +1,7 @@
 /**
  * `npm run bench -- [--json] [word ...]`: runs every bench whose key holds one of the words and
- * prints medians; with --json one object of keys to numbers on standard output.
+ * prints medians; with --json one object of keys to numbers on standard output, null where this
+ * machine lacks what a bench needs.
  */
 import { readdirSync } from "node:fs";
 import { join } from "node:path";
@@ -25,8 +26,14 @@ export async function main(args: string[]): Promise<number> {
   if (benches.length === 0) throw new SetUpError(`No bench is called ${words.join(" or ")}.`);
   await ensureSystemPackages([POSTGRESQL]);
   await ensureBuild();
-  const medians: Record<string, number> = {};
+  const medians: Record<string, number | null> = {};
   for (const bench of benches) {
+    const missing = bench.missing?.() ?? null;
+    if (missing !== null) {
+      medians[bench.key] = null;
+      process.stderr.write(`${bench.name}: left out, ${missing}\n`);
+      continue;
+    }
     const value = round(await measure(bench));
     medians[bench.key] = value;
     process.stderr.write(`${bench.name}: ${value} ${bench.unit} (median of ${bench.runs})\n`);

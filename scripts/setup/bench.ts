@@ -9,6 +9,8 @@ export interface Bench {
   runs: number;
   /** Measures once and gives the figure in `unit`. */
   run: () => Promise<number>;
+  /** Why it cannot run on this machine; null where it can. It is then reported as null. */
+  missing?: () => string | null;
   /** Made before the first run and taken away after the last. */
   before?: () => Promise<void>;
   after?: () => Promise<void>;
