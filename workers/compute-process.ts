@@ -9,9 +9,14 @@ import { readRecording } from "../lib/audio/read-recording";
 import { readTable } from "../lib/audio/read-table";
 import { AppError } from "../lib/errors/app-error";
 import { analyseSeries } from "../lib/analysis/analyse-series";
+import { Plans } from "../lib/analysis/cell-power";
 import { checkArrival } from "../lib/runs/arrival/check-arrival";
 import type { AnalyseTask, CheckTask, Reply, Request } from "./compute/messages";
 import { toSentError } from "./compute/sent-error";
+
+/** Tables stay from one analysis to the next, up to about 100 MB of them. */
+const MOST_POINTS = 2 ** 22;
+let plans = new Plans();
 
 const send = (reply: Reply): void => {
   process.send?.(reply);
@@ -47,7 +52,9 @@ async function check({ request, paths }: CheckTask) {
 }
 
 async function analyse({ series, paths }: AnalyseTask, id: number) {
+  if (plans.points > MOST_POINTS) plans = new Plans();
   return analyseSeries(series, createPathSource(paths), {
+    plans,
     onProgress: (event) => send({ id, kind: "progress", event }),
   });
 }

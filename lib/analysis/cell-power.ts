@@ -17,6 +17,11 @@ export class Plans {
   readonly #hann = new Map<number, Float64Array>();
   readonly #onset = new Map<string, OnsetPlan>();
 
+  /** Points of all real plans together: some 26 bytes each are held. */
+  get points(): number {
+    return [...this.#fft.keys()].reduce((sum, size) => sum + size, 0);
+  }
+
   /** The plan of a size, made once. */
   fft(size: number): RealFft {
     const plan = this.#fft.get(size) ?? planRealFft(size);

@@ -1,0 +1,114 @@
+/** A capture through the API, web and worker as they run in earnest: how soon a tester hears of it. */
+import { join } from "node:path";
+import { setTimeout as sleep } from "node:timers/promises";
+import { median } from "simple-statistics";
+import { getResult } from "../../lib/api/analyses";
+import { callApi, requestApi } from "../../lib/api/client";
+import { createLoudspeaker } from "../../lib/api/loudspeakers";
+import { getRun } from "../../lib/api/runs";
+import { createSeries, getSeries } from "../../lib/api/series";
+import { planSchema, type PlanInput } from "../../lib/series/plan-schema";
+import { uploadWhole } from "../../tests/support/tus";
+import { DEMO_LABS } from "../demo/demo-labs";
+import { recordSeries } from "../demo/record-series";
+import type { Bench } from "../setup/bench";
+import { cloneDir } from "../setup/bootstrap.mjs";
+import { makeBenchLab, openBenchProduct, type BenchProduct } from "./support/bench-lab";
+
+const dataDir = join(cloneDir, ".tidemark", "bench-capture");
+/** Four runs whose files last 15 s. */
+const PLAN: PlanInput = {
+  sweep: { length_s: 13, lead_in_s: 1, lead_out_s: 1 },
+  calibration: { by: "calibrator" },
+  closing: false,
+};
+const ASK_EVERY_MS = 10;
+const LONGEST_MS = 60_000;
+
+interface BenchFile {
+  name: string;
+  bytes: Uint8Array<ArrayBuffer>;
+  isRun: boolean;
+}
+
+let product: BenchProduct | undefined;
+let token = "";
+let files: BenchFile[] = [];
+
+const loudspeaker = DEMO_LABS[0]?.series[0];
+
+async function setUp(): Promise<void> {
+  if (loudspeaker === undefined) throw new Error("the demo labs have no series any more");
+  files = recordSeries({
+    ...loudspeaker,
+    plan: planSchema.parse(PLAN),
+    recorded: "all",
+    mishaps: {},
+  }).map(({ run, makeWav }) => ({
+    name: run.fileName,
+    bytes: makeWav(),
+    isRun: run.slot.startsWith("short"),
+  }));
+  product = await openBenchProduct(dataDir);
+  token = (await makeBenchLab(product, "capture")).token;
+  await capture();
+}
+
+async function waitFor<T>(ask: () => Promise<T>, wanted: (answer: T) => boolean): Promise<T> {
+  const until = performance.now() + LONGEST_MS;
+  for (;;) {
+    const answer = await ask();
+    if (wanted(answer)) return answer;
+    if (performance.now() > until) throw new Error(`never came: ${JSON.stringify(answer)}`);
+    await sleep(ASK_EVERY_MS);
+  }
+}
+
+/** Uploads every file; from the start of the last one's upload to the result, and the checks of the others. */
+async function capture(): Promise<{ checkS: number; resultS: number }> {
+  if (product === undefined || loudspeaker === undefined) throw new Error("there is no product");
+  const options = { baseUrl: product.url, token };
+  const made = await callApi(createLoudspeaker, { body: loudspeaker.loudspeaker }, options);
+  const body = { loudspeaker_id: made.id, plan: PLAN };
+  const { id: seriesId } = await callApi(createSeries, { body }, options);
+  const checksMs: number[] = [];
+  let from = 0;
+  for (const { name, bytes, isRun } of files) {
+    from = performance.now();
+    const target = { url: product.url, token };
+    const runId = await uploadWhole(target, bytes, { seriesId, fileName: name });
+    if (name === files.at(-1)?.name) break;
+    const ask = () => callApi(getRun, { params: { runId } }, options);
+    await waitFor(ask, ({ report }) => report !== null);
+    if (isRun) checksMs.push(performance.now() - from);
+  }
+  const ask = () => callApi(getSeries, { params: { seriesId } }, options);
+  const { latest_done_analysis: done } = await waitFor(
+    ask,
+    ({ latest_done_analysis: analysis }) => analysis !== null,
+  );
+  const params = { analysisId: done?.id ?? "" };
+  await (await requestApi(getResult, { params }, options)).text();
+  return { checkS: median(checksMs) / 1000, resultS: (performance.now() - from) / 1000 };
+}
+
+export const benches: Bench[] = [
+  {
+    key: "capture.result_s",
+    name: "from the start of the last upload of four runs of 15 s to their result by the API",
+    unit: "s",
+    runs: 5,
+    before: setUp,
+    run: async () => (await capture()).resultS,
+    after: async () => product?.stop(),
+  },
+  {
+    key: "capture.arrival_check_s",
+    name: "from the start of the upload of 15 s to its arrival report by the API",
+    unit: "s",
+    runs: 5,
+    before: setUp,
+    run: async () => (await capture()).checkS,
+    after: async () => product?.stop(),
+  },
+];
