@@ -11,6 +11,8 @@ export default defineConfig({
         test: {
           name: "unit",
           include: ["{lib,components,app,workers,db,scripts}/**/*.test.{ts,tsx}"],
+          // Nothing here waits; a slow machine is no failure.
+          testTimeout: 60_000,
           sequence: { groupOrder: 0 },
         },
       },
@@ -19,7 +21,8 @@ export default defineConfig({
         test: {
           name: "checks",
           include: ["tests/checks/**/*.test.ts"],
-          testTimeout: 60_000,
+          testTimeout: 180_000,
+          hookTimeout: 180_000,
           sequence: { groupOrder: 1 },
         },
       },
@@ -29,7 +32,7 @@ export default defineConfig({
           name: "rooms",
           include: ["tests/{db,api,workers,e2e,setup}/**/*.test.ts"],
           globalSetup: ["tests/support/global-setup.ts"],
-          testTimeout: 60_000,
+          testTimeout: 120_000,
           // The first suite that needs the product builds it, unless `npm test` did before.
           hookTimeout: 300_000,
           maxWorkers: 2,

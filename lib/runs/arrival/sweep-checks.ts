@@ -118,7 +118,7 @@ export function checkDropped(
   const fromS = toTimeS(timeline, step.fromHz);
   const toS = toTimeS(timeline, step.toHz);
   const lost = step.delayS < 0;
-  const samples = `${count === 1 ? "sample" : "samples"}`;
+  const samples = count === 1 ? "sample" : "samples";
   return speaking("dropped-samples", "fail", {
     title: lost ? "dropped samples" : "inserted samples",
     finding: `About ${sayCount(count)} ${samples} (${sayNumber(1000 * Math.abs(step.delayS), 1)} ms) ${lost ? "were dropped" : "too many stand"} between ${sayS(fromS)} and ${sayS(toS)}, at ${sayAt(step.fromHz)} to ${sayAt(step.toHz)}.`,
