@@ -15,7 +15,7 @@ import { makeTestLab, makeTestMember, type TestMember } from "../support/lab-ben
 import { toMetadata } from "../support/tus";
 import { makeThings, type Things } from "./role-things";
 import { ROLE_TABLE, type RoleRow, type Verdict } from "./role-table";
-import { openApiBench, type ApiBench } from "./support";
+import { openApiBench, validateResponse, type ApiBench } from "./support";
 
 const CALLERS = [...ROLES, "otherLab", "nobody"] as const;
 type Caller = (typeof CALLERS)[number];
@@ -82,15 +82,17 @@ const INPUTS: Readonly<Record<string, (things: Things) => { body?: unknown; quer
   putLoudspeakerPhoto: () => ({ body: "\x89PNG" }),
 };
 
-function ask(operation: Operation, things: Things, caller: Caller): Promise<Response> {
+async function ask(operation: Operation, things: Things, caller: Caller): Promise<Response> {
   const { body, query } = INPUTS[operation.id]?.(things) ?? {};
   const params = { ...things, slot: "short-76" };
   const raw = typeof body === "string";
-  return send(caller, toApiPath(operation, params, query), {
+  const response = await send(caller, toApiPath(operation, params, query), {
     method: operation.method,
     headers: { "content-type": raw ? "text/plain" : "application/json" },
     ...(body === undefined ? {} : { body: raw ? body : JSON.stringify(body) }),
   });
+  await validateResponse(operation, response);
+  return response;
 }
 
 function send(caller: Caller, path: string, init: RequestInit): Promise<Response> {

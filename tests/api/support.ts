@@ -3,8 +3,8 @@ import { setTimeout as sleep } from "node:timers/promises";
 import Ajv2020, { type ValidateFunction } from "ajv/dist/2020";
 import addFormats from "ajv-formats";
 import type { z } from "zod";
-import type { Problem } from "../../lib/api/common";
-import { toAnswerSchema } from "../../lib/api/openapi";
+import { problemSchema, type Problem } from "../../lib/api/common";
+import { listErrors, toAnswerSchema } from "../../lib/api/openapi";
 import { ApiProblem, callApi, type CallInput } from "../../lib/api/client";
 import { createLoudspeaker } from "../../lib/api/loudspeakers";
 import type { Operation } from "../../lib/api/operation";
@@ -45,6 +45,23 @@ export async function openApiBench(env: Record<string, string> = {}): Promise<Ap
 const validators = new Map<string, ValidateFunction>();
 const ajv = addFormats(new Ajv2020({ strict: false, allErrors: true }));
 
+/** Status, kind and contents of an answer are those that the published document names. */
+export async function validateResponse(operation: Operation, response: Response): Promise<void> {
+  const kind = response.headers.get("content-type");
+  if (response.ok) {
+    if (response.status !== operation.status && response.status !== 206) {
+      throw new Error(`${operation.id} answers ${response.status}, not ${operation.status}`);
+    }
+    if (kind === "application/json") validateAnswer(operation, await response.clone().json());
+    return;
+  }
+  if (kind !== "application/problem+json") return;
+  const { code, status } = problemSchema.parse(await response.clone().json());
+  if (status !== response.status || !listErrors(operation).some((known) => known === code)) {
+    throw new Error(`${operation.id} answers ${status} ${code}, which its document does not name`);
+  }
+}
+
 function validateAnswer(operation: Operation, json: unknown): void {
   const schema = toAnswerSchema(operation);
   if (schema === null) return;
@@ -74,8 +91,7 @@ export function call<
     token,
     fetch: async (address, init) => {
       const response = await fetch(address, init);
-      const json = response.headers.get("content-type") === "application/json";
-      if (json) validateAnswer(operation, await response.clone().json());
+      await validateResponse(operation, response);
       return response;
     },
   });
