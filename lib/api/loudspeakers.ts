@@ -118,7 +118,7 @@ export const putLoudspeakerPhoto = defineOperation({
   bodyMediaType: "image/*",
   status: 200,
   answer: loudspeakerSchema,
-  errors: ["not-found", "photo.not-image", "upload.too-large"],
+  errors: ["not-found", "photo.not-image", "upload.too-large", "storage.full"],
 });
 
 export const getLoudspeakerPhoto = defineOperation({
@@ -130,7 +130,7 @@ export const getLoudspeakerPhoto = defineOperation({
   params,
   status: 200,
   answerMediaType: "image/*",
-  errors: ["not-found"],
+  errors: ["not-found", "storage.missing"],
 });
 
 export const loudspeakerOperations = [

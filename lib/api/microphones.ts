@@ -26,7 +26,7 @@ export const sendMicrophoneFile = defineOperation({
   bodyMediaType: "text/plain",
   status: 201,
   answer: microphoneFileSchema,
-  errors: ["request.invalid", "microphone.not-readable", "upload.too-large"],
+  errors: ["request.invalid", "microphone.not-readable", "upload.too-large", "storage.full"],
 });
 
 export const microphoneOperations = [sendMicrophoneFile] as const;

@@ -171,7 +171,7 @@ export const createSeries = defineOperation({
   body: z.strictObject({ loudspeaker_id: idSchema, plan: planSchema.prefault({}) }),
   status: 201,
   answer: seriesViewSchema,
-  errors: ["request.invalid", "not-found"],
+  errors: ["request.invalid", "not-found", "plan.invalid"],
 });
 
 export const getSeries = defineOperation({
@@ -196,7 +196,14 @@ export const updatePlan = defineOperation({
   body: z.strictObject({ plan: planSchema, plan_version: z.number().int() }),
   status: 200,
   answer: seriesViewSchema,
-  errors: ["not-found", "request.invalid", "conflict.changed", "plan.locked"],
+  errors: [
+    "not-found",
+    "request.invalid",
+    "conflict.changed",
+    "conflict.state",
+    "plan.invalid",
+    "plan.locked",
+  ],
 });
 
 /** Criteria may be changed after the plan is fixed: they are a setting of the analysis. */
@@ -213,7 +220,7 @@ export const updateCriteria = defineOperation({
   }),
   status: 200,
   answer: seriesViewSchema,
-  errors: ["not-found", "request.invalid", "conflict.changed"],
+  errors: ["not-found", "request.invalid", "conflict.changed", "conflict.state"],
 });
 
 export const removeSeries = defineOperation({

@@ -75,7 +75,7 @@ function validateAnswer(operation: Operation, json: unknown): void {
 }
 
 /** Calls as the member with every role, unless another token is named. */
-export function call<
+export async function call<
   P extends z.ZodType,
   Q extends z.ZodType,
   B extends z.ZodType,
@@ -86,15 +86,22 @@ export function call<
   input: CallInput<z.input<P>, z.input<Q>, z.input<B>> = {},
   token: string = bench.all.token,
 ): Promise<z.output<A>> {
-  return callApi(operation, input, {
-    baseUrl: bench.product.url,
-    token,
-    fetch: async (address, init) => {
-      const response = await fetch(address, init);
-      await validateResponse(operation, response);
-      return response;
-    },
-  });
+  const faults: unknown[] = [];
+  try {
+    return await callApi(operation, input, {
+      baseUrl: bench.product.url,
+      token,
+      fetch: async (address, init) => {
+        const response = await fetch(address, init);
+        // The client would take a fault thrown here for a lost connection.
+        await validateResponse(operation, response).catch((fault: unknown) => faults.push(fault));
+        return response;
+      },
+    });
+  } finally {
+    // oxlint-disable-next-line no-unsafe-finally
+    if (faults.length > 0) throw faults[0];
+  }
 }
 
 /** The problem that a call ends with. */
