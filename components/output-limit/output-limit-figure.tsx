@@ -24,6 +24,9 @@ interface OutputLimitFigureProps extends WallKeys {
   decisions?: ReadonlyMap<number, BandDecision>;
   selectedHz: number | null;
   onSelect: (nominalHz: number) => void;
+  /** Bands that are selected together, and how they come to be. */
+  range?: ReadonlySet<number> | undefined;
+  onExtend?: ((nominalHz: number) => void) | undefined;
   /** Columns rise once, when the analysis has just been completed. */
   rise?: boolean;
 }
@@ -43,6 +46,8 @@ function Figure({
   decisions,
   selectedHz,
   onSelect,
+  range,
+  onExtend,
   rise,
   ...keys
 }: OutputLimitFigureProps) {
@@ -92,6 +97,8 @@ function Figure({
                   columns={columns}
                   selectedHz={selectedHz}
                   onSelect={onSelect}
+                  range={range}
+                  onExtend={onExtend}
                   withDecisions={withDecisions}
                   mapBelow={rows.length > 0}
                   rise={rise ?? false}

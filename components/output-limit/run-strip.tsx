@@ -43,7 +43,7 @@ export function RunStrip({ series, runs }: RunStripProps) {
           (one) => one.slot === run.slot && one.state !== "replaced" && one.state !== "excluded",
         );
         const paint = levels.find((level) => level.levelDb === run.levelDb)?.paint;
-        const [kind, words] = taken === undefined ? NOT_IN : SAY[taken.state];
+        const [kind, words] = taken === undefined ? toAwaited(run.asked?.by) : SAY[taken.state];
         return (
           <li
             key={run.slot}
@@ -75,7 +75,10 @@ export function RunStrip({ series, runs }: RunStripProps) {
   );
 }
 
-const NOT_IN: [VerdictKind, string] = ["wait", "not in"];
+const toAwaited = (askedBy: string | undefined): [VerdictKind, string] => [
+  "wait",
+  askedBy === undefined ? "not in" : `asked for by ${askedBy}`,
+];
 
 function toRunNote(
   role: string,

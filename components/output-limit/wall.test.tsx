@@ -116,6 +116,30 @@ describe("the wall by keyboard", () => {
     act(() => void buttons()[5]?.dispatchEvent(new MouseEvent("click", { bubbles: true })));
     expect(seen).toEqual([125]);
   });
+  it("extends the selection with Shift, by key and by press", () => {
+    const told: number[] = [];
+    act(() =>
+      root.render(
+        <CrosshairProvider>
+          <Wall
+            figure={figure}
+            columns={columns}
+            selectedHz={63}
+            range={new Set([50, 63])}
+            onSelect={(hz) => seen.push(hz)}
+            onExtend={(hz) => told.push(hz)}
+          />
+        </CrosshairProvider>,
+      ),
+    );
+    const pressed = buttons().filter((one) => one.getAttribute("aria-pressed") === "true");
+    expect(pressed.map((one) => one.getAttribute("data-band"))).toEqual(["50", "63"]);
+    const key = { key: "ArrowRight", shiftKey: true, bubbles: true, cancelable: true };
+    act(() => void stops()[0]?.dispatchEvent(new KeyboardEvent("keydown", key)));
+    const click = new MouseEvent("click", { bubbles: true, shiftKey: true });
+    act(() => void buttons()[5]?.dispatchEvent(click));
+    expect([told, seen]).toEqual([[80, 125], []]);
+  });
   it("names the whole in one sentence", () => {
     show(63);
     expect(page.querySelector('[role="group"]')?.getAttribute("aria-label")).toMatch(

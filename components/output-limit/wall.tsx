@@ -25,6 +25,10 @@ interface WallProps extends WallKeys {
   /** Nominal frequency of the selected band. */
   selectedHz: number | null;
   onSelect: (nominalHz: number) => void;
+  /** Bands that are selected together with it. */
+  range?: ReadonlySet<number> | undefined;
+  /** With Shift: everything from the selected band to this one. */
+  onExtend?: ((nominalHz: number) => void) | undefined;
   /** The decision is said with each column. */
   withDecisions?: boolean;
   /** The map goes on under the wall: the selection stays open below. */
@@ -42,6 +46,8 @@ export function Wall({
   columns: { columns, levels },
   selectedHz,
   onSelect,
+  range,
+  onExtend,
   withDecisions = true,
   mapBelow = false,
   rise = false,
@@ -52,6 +58,11 @@ export function Wall({
   const moved = useRef(false);
   const { bands, top, plot } = figure;
   const selected = columns.findIndex((column) => column.nominalHz === selectedHz);
+  const together = columns.flatMap((column, at) =>
+    range?.has(column.nominalHz) === true ? [at] : [],
+  );
+  const firstSelected = together[0] ?? selected;
+  const countSelected = Math.max(1, together.length);
   const hovered = columns.findIndex((column) => column.nominalHz === hoveredHz);
   const stop = columns[Math.max(selected, 0)]?.nominalHz;
 
@@ -67,7 +78,7 @@ export function Wall({
     const column = to === null ? undefined : columns[to];
     if (column !== undefined) {
       moved.current = true;
-      onSelect(column.nominalHz);
+      (event.shiftKey && onExtend !== undefined ? onExtend : onSelect)(column.nominalHz);
     } else if (!pressed(event.key, keys)) return;
     event.preventDefault();
   };
@@ -88,10 +99,13 @@ export function Wall({
             // oxlint-disable-next-line jsx-a11y/prefer-tag-over-role
             role="button"
             tabIndex={column.nominalHz === stop ? 0 : -1}
-            aria-pressed={column.nominalHz === selectedHz}
+            data-band={column.nominalHz}
+            aria-pressed={column.nominalHz === selectedHz || range?.has(column.nominalHz) === true}
             aria-label={sayColumn(column, levels, withDecisions)}
             className="cursor-pointer outline-offset-0"
-            onClick={() => onSelect(column.nominalHz)}
+            onClick={(event) =>
+              (event.shiftKey && onExtend !== undefined ? onExtend : onSelect)(column.nominalHz)
+            }
             onKeyDown={(event) => onKeyDown(event, at)}
             onPointerEnter={() => hover(column.nominalHz)}
             onPointerLeave={() => hover(null)}
@@ -120,8 +134,9 @@ export function Wall({
         {selected >= 0 && selectedHz !== null && (
           <Shapes
             shapes={[
-              ...selectionShapes(selected, {
+              ...selectionShapes(firstSelected, {
                 bands,
+                count: countSelected,
                 top: top - 1,
                 foot: plot.height,
                 ...(mapBelow ? { open: "foot" as const } : {}),

@@ -1,5 +1,5 @@
 import Link from "next/link";
-import { useId, type ButtonHTMLAttributes, type ReactNode } from "react";
+import { useId, type ButtonHTMLAttributes, type ReactNode, type Ref } from "react";
 import { joinClasses } from "./join-classes";
 
 /**
@@ -38,6 +38,7 @@ interface ButtonProps extends ButtonHTMLAttributes<HTMLButtonElement> {
   size?: ButtonSize;
   /** Work under way: the button keeps its words, takes no second press, and says so to readers. */
   busy?: boolean;
+  ref?: Ref<HTMLButtonElement>;
 }
 
 /** `<Button tone="main" onClick={save}>Save</Button>`. A button that cannot be used now is `Unavailable`. */

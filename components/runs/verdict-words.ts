@@ -21,8 +21,14 @@ export function toRowVerdict(row: RunRow): VerdictWords {
   if (slot.excused !== null) {
     return { kind: "ok", words: "excused", note: `“${slot.excused}”` };
   }
-  if (!slot.open) return { kind: "locked", words: slot.lock_reason ?? "not open yet", note: null };
-  return { kind: "wait", words: toDueWords(row), note: null };
+  if (!slot.open)
+    return { kind: "locked", words: slot.lock_reason ?? "not open yet", note: toAskedNote(row) };
+  return { kind: "wait", words: toDueWords(row), note: toAskedNote(row) };
+}
+
+/** Why a run stands here that the plan did not have. */
+function toAskedNote({ planned: { asked } }: RunRow): string | null {
+  return asked === undefined ? null : `asked for by ${asked.by}: “${asked.reason}”`;
 }
 
 /** A file on its way, or refused with the server's reason. */

@@ -13,7 +13,7 @@ import { isPlain, listPlainLevels, meanOf, type SeriesLevel } from "./series-lev
 export interface BandDecision {
   readonly state: DecisionState;
   /** The cause that was decided; left out while open. */
-  readonly cause?: DecidableCause;
+  readonly cause?: DecidableCause | "distortion only";
 }
 
 export interface BandColumn {

@@ -10,6 +10,8 @@ const TAB_TOP = 8;
 const DIGIT = 7.25;
 
 interface SelectionPlace {
+  /** Bands from the index upwards; one unless a range is selected. */
+  readonly count?: number;
   readonly bands: BandScale;
   /** y of the box's upper end; the tab's point touches it. */
   readonly top: number;
@@ -21,10 +23,10 @@ interface SelectionPlace {
 /** @returns the box; open where it goes on in the next figure. */
 export function selectionShapes(
   index: number,
-  { bands, top, foot, open }: SelectionPlace,
+  { bands, top, foot, open, count = 1 }: SelectionPlace,
 ): Shape[] {
   const left = bands.left(index) - 0.5;
-  const right = left + bands.pitch + 1;
+  const right = left + count * bands.pitch + 1;
   const d =
     open === "foot"
       ? `M${left} ${foot}V${top}H${right}V${foot}`

@@ -89,6 +89,8 @@ export const onsetSchema = z.object({
   reason: z.string().optional(),
 });
 
+export type Onset = z.infer<typeof onsetSchema>;
+
 export const evidenceSchema = z.object({
   /** Local slope d(output)/d(input) over the top step of the plain short-term runs. */
   slope: value,

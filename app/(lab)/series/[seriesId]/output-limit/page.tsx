@@ -11,7 +11,11 @@ export default async function OutputLimitPage({
   const [{ seriesId }, caller] = await Promise.all([params, getPageCaller()]);
   return (
     <div className="px-gutter pb-9 max-md:px-phone">
-      <OutputLimitView seriesId={seriesId} mayAnalyse={may(caller.roles, "analyse")} />
+      <OutputLimitView
+        seriesId={seriesId}
+        mayAnalyse={may(caller.roles, "analyse")}
+        mayDecide={may(caller.roles, "decide")}
+      />
     </div>
   );
 }
