@@ -58,9 +58,14 @@ export function Workspace({
   const criterion = readCriterion(parts, address);
   const [asking, setAsking] = useState(false);
   const place = useRef<HTMLDivElement>(null);
+  // The address follows the selection; it may lag behind, and a key must never meet another band.
+  const [bandHz, setBandHz] = useState(address.band);
   const band =
-    result.bands.find((one) => one.nominal_Hz === address.band) ?? pickFirstBand(result, criterion);
-  const selection = useSelection(band?.nominal_Hz ?? null, (hz) => void setAddress({ band: hz }));
+    result.bands.find((one) => one.nominal_Hz === bandHz) ?? pickFirstBand(result, criterion);
+  const selection = useSelection(band?.nominal_Hz ?? null, (hz) => {
+    setBandHz(hz);
+    void setAddress({ band: hz });
+  });
   const decisions = useDecisions({
     seriesId: series.id,
     analysisId: review.analysis_id,
@@ -77,7 +82,9 @@ export function Workspace({
   const [wallFocus, setWallFocus] = useState(0);
   useEffect(() => {
     if (wallFocus === 0) return;
-    place.current?.querySelector<SVGGElement>(`[data-band="${selection.hz ?? ""}"]`)?.focus();
+    place.current
+      ?.querySelector<SVGGElement>(`[role="button"][data-band="${selection.hz ?? ""}"]`)
+      ?.focus();
     // Only a new request moves the focus.
     // oxlint-disable-next-line react-hooks/exhaustive-deps
   }, [wallFocus]);
@@ -97,7 +104,7 @@ export function Workspace({
     const [hz] = decisions.undo() ?? [];
     if (hz !== undefined) selection.select(hz);
   };
-  const confirmAll = (): void =>
+  const confirmAll = (): void => {
     decisions.decide(
       count.openWithoutFinding.map(({ nominal_Hz }) => ({
         nominal_Hz,
@@ -105,6 +112,9 @@ export function Workspace({
         reason: null,
       })),
     );
+    // The button goes; the keyboard stays at work.
+    toWall();
+  };
   /** The keys of the wall, for wherever the focus stands in the workspace. */
   const onKeyDown = (event: KeyboardEvent): void => {
     if (event.defaultPrevented || isTyping(event.target) || !open) return;

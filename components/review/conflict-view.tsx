@@ -52,11 +52,11 @@ export function ConflictView({ conflict, bands, onKeepTheirs, onTakeMine }: Conf
       aria-label="Decided by two people"
       className="mt-4 border border-rule bg-sheet px-6 py-5 max-md:px-phone"
     >
-      <h3>
+      <h2 className="text-section">
         {names.length === 1
           ? `${names[0]} was decided while you were looking`
           : `${names.length} bands were decided while you were looking`}
-      </h3>
+      </h2>
       {pairs.map(({ their, own }) => (
         <div key={their.nominal_Hz} className="mt-3">
           {names.length > 1 && (

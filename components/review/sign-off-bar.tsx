@@ -92,7 +92,7 @@ function AnotherSigns({ review }: { review: Review }) {
     names.length === 1 ? names[0] : `${names.slice(0, -1).join(", ")} or ${names.at(-1) ?? ""}`;
   return (
     <div className="mt-3 border border-rule bg-sheet px-6 py-4 max-md:px-phone">
-      <h3 className="text-section">Another analyst signs this off</h3>
+      <h2 className="text-section">Another analyst signs this off</h2>
       <p className="mt-0.5 max-w-prose text-ink-2">
         You can see and decide everything. You uploaded runs of this version, so under the
         two-person rule somebody else signs off: {listed}.

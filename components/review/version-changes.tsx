@@ -48,11 +48,11 @@ export function VersionChanges({
       aria-label={`Version ${version} against version ${before.version}`}
       className="mt-4 border-l-4 border-edge py-0.5 pl-4"
     >
-      <h3 className="text-section">
+      <h2 className="text-section">
         {before.signed
           ? `Version ${before.version} is signed off; this is version ${version}, which is not`
           : `This is version ${version}; version ${before.version} was reviewed before it`}
-      </h3>
+      </h2>
       <p className="mt-1 max-w-prose">
         {changes.data === undefined
           ? (changes.error?.message ?? "Comparing the two versions.")
