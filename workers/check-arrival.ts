@@ -4,7 +4,7 @@ import { getLab } from "../db/queries/labs";
 import { getRun, saveReport, type RunRow } from "../db/queries/runs";
 import { lockSeries } from "../db/queries/series";
 import { loadCapture, type Capture } from "../db/acts/capture";
-import { recheckLevels } from "../db/acts/recheck-levels";
+import { recheckLevels, recheckNeighbours } from "../db/acts/recheck-levels";
 import { settleSeries } from "../db/acts/settle-series";
 import { inLab } from "../db/in-lab";
 import { ENGINE_VERSION } from "../lib/analysis/engine-version";
@@ -141,7 +141,13 @@ async function save(
       },
     });
     const calibrator = run.role === "calibrator-before" || run.role === "calibrator-after";
-    const stale = calibrator ? await recheckLevels(trx, labId, capture) : [];
+    // Once, when the take is new: two runs that contradict each other would go on for ever.
+    const isNew = run.report === null && run.slot !== null;
+    const stale = calibrator
+      ? await recheckLevels(trx, labId, capture)
+      : isNew
+        ? await recheckNeighbours(trx, labId, capture, runId)
+        : [];
     const followUp = await settleSeries(trx, scope, run.series_id);
     return { done: true, followUp: { ...followUp, runIds: [...stale, ...followUp.runIds] } };
   });

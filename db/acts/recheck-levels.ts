@@ -1,6 +1,6 @@
 /**
- * A calibrator recording that came after runs, or replaced another one, gives them a new scale: they
- * are checked once more.
+ * What was held against another recording is held against the new one: a calibrator recording gives
+ * the runs a new scale, a new take of a run is a new neighbour.
  */
 import { findFullScaleDb } from "../../lib/runs/arrival/siblings";
 import { isLive } from "../../lib/runs/ladder";
@@ -31,6 +31,33 @@ export async function recheckLevels(
     if (slot === null || used === undefined || !DECIDED_BY_CHECKS.has(state)) return false;
     return used === null || Math.abs(used - fullScaleDb) > SAME_DB;
   });
+  for (const run of stale) await updateRun(trx, labId, run.id, { state: "checking" });
+  return stale.map((run) => run.id);
+}
+
+/** Checks that hold a recording against its neighbours. */
+const BETWEEN_RUNS: ReadonlySet<string> = new Set(["level-step", "closing-repeat", "polarity"]);
+
+/**
+ * Runs that spoke up beside the takes that were there before `runId` came: a clipped neighbour that
+ * was replaced is no longer held against them.
+ *
+ * @returns the runs that are to be checked. The caller holds the series (lockSeries).
+ */
+export async function recheckNeighbours(
+  trx: Trx,
+  labId: string,
+  { series, runs }: Pick<Capture, "series" | "runs">,
+  runId: string,
+): Promise<string[]> {
+  if (series.state === "signed off") return [];
+  const stale = runs.filter(
+    ({ id, slot, state, report }) =>
+      id !== runId &&
+      slot !== null &&
+      DECIDED_BY_CHECKS.has(state) &&
+      report?.checks.some(({ code, verdict }) => BETWEEN_RUNS.has(code) && verdict !== "pass"),
+  );
   for (const run of stale) await updateRun(trx, labId, run.id, { state: "checking" });
   return stale.map((run) => run.id);
 }

@@ -1,5 +1,7 @@
 import { randomUUID } from "node:crypto";
 import { beforeAll, beforeEach, describe, expect, it } from "vitest";
+import { loadCapture } from "../../db/acts/capture";
+import { recheckNeighbours } from "../../db/acts/recheck-levels";
 import type { Trx } from "../../db/client";
 import { inLab } from "../../db/in-lab";
 import { dropRecording, findUnheldDigests, keepRecording } from "../../db/queries/recordings";
@@ -251,6 +253,54 @@ describe("an upload", () => {
     expect(await findExpiredUploads(bench.app)).not.toContainEqual({
       labId: lab.id,
       uploadId: late,
+    });
+  });
+});
+
+describe("a new take beside others", () => {
+  const check = (code: "level-step" | "hum", verdict: "pass" | "fail"): ArrivalReport => ({
+    ...REPORT,
+    checks: [
+      {
+        code,
+        verdict,
+        title: "",
+        finding: "",
+        spoils: "",
+        remedy: "",
+        figure: null,
+        where: null,
+        bands_Hz: [],
+      },
+    ],
+  });
+  const add = async (
+    trx: Trx,
+    levelDb: number,
+    state: "failed" | "kept",
+    report: ArrivalReport,
+  ): Promise<string> => {
+    const slot = `short-${levelDb}`;
+    const id = await createRun(trx, lab.id, newRun({ slot, levelDb }));
+    await saveReport(trx, lab.id, { runId: id, channel: 1, slot }, { state: "failed", report });
+    if (state === "kept") {
+      const by = lab.admin.accountId;
+      await updateRun(trx, lab.id, id, { state, reason: "no time left", reason_by: by });
+    }
+    return id;
+  };
+
+  it("has those checked again that spoke up beside the one before, and no others", async () => {
+    await act(async (trx) => {
+      const step = await add(trx, 86, "failed", check("level-step", "fail"));
+      await add(trx, 92, "failed", check("hum", "fail"));
+      await add(trx, 96, "failed", check("level-step", "pass"));
+      await add(trx, 99, "kept", check("level-step", "fail"));
+      const fresh = await add(trx, 76, "failed", check("level-step", "fail"));
+      const capture = await loadCapture(trx, lab.id, series.seriesId);
+      expect(await recheckNeighbours(trx, lab.id, capture, fresh)).toEqual([step]);
+      expect((await getRun(trx, lab.id, step)).state).toBe("checking");
+      expect((await getRun(trx, lab.id, fresh)).state).toBe("failed");
     });
   });
 });
