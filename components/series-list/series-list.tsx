@@ -132,7 +132,7 @@ function ListNotice({ rows }: { rows: readonly SeriesRow[] }) {
   const levelDb = toLoudestLevel(rows);
   if (levelDb === null) return null;
   const stage = rows.some((row) => row.loudspeaker.kind.includes("stage"));
-  const notice = toMaxLevelNotice({ levelDb, distanceM: 1, stage });
+  const notice = toMaxLevelNotice({ levelDb, distanceM: 1, stage, mayPlayLouder: true });
   return (
     <div className="px-gutter pb-3 max-md:px-phone">
       <SlimNotice notice={{ ...notice, text: `${notice.text} ${notice.method}` }} />

@@ -119,7 +119,12 @@ function toFrameNotice(
     return toTesterNotice(computeSessionDose(series.plan, rule), { where: "runs", stage });
   }
   if ((view === "output-limit" || view === "distortion") && series.max_level_dB !== null) {
-    const notice = toMaxLevelNotice({ levelDb: series.max_level_dB, distanceM: 1, stage });
+    const notice = toMaxLevelNotice({
+      levelDb: series.max_level_dB,
+      distanceM: 1,
+      stage,
+      mayPlayLouder: true,
+    });
     return { ...notice, text: `${notice.text} ${notice.method}` };
   }
   return null;

@@ -98,6 +98,14 @@ describe("toMaxLevelNotice", () => {
     expect(notice.text).toContain("It can play louder; then the time is shorter.");
   });
 
+  it("says of the loudest run that the loudspeaker may play louder, where a time is given", () => {
+    const quiet = toMaxLevelNotice({ levelDb: 91.2, distanceM: 1, mayPlayLouder: true });
+    expect(quiet.lead).toBe(`Up to 92${NB}dB at 1${NB}m:`);
+    expect(quiet.text).toContain("It may play louder; then the time is shorter.");
+    const loud = toMaxLevelNotice({ levelDb: 103, distanceM: 1, mayPlayLouder: true });
+    expect(loud.text).toBe("not without hearing protection.");
+  });
+
   it("names the venue limit for a stage loudspeaker", () => {
     expect(toMaxLevelNotice({ levelDb: 124, distanceM: 1, stage: true }).text).toContain(
       `at most 100${NB}dB(A)`,

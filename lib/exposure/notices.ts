@@ -113,6 +113,8 @@ export interface MaxLevel {
   distanceM: number;
   /** The limit itself was not reached. */
   atLeast?: boolean;
+  /** The loudest run in the view, which need not be the most that the loudspeaker can do. */
+  mayPlayLouder?: boolean;
   /** A loudspeaker for stages. */
   stage?: boolean;
 }
@@ -155,7 +157,11 @@ export function toMaxLevelNotice(max: MaxLevel): MaxLevelNotice {
 
 function toMaxLevelHazard(max: MaxLevel, allowedS: number, warning: boolean): string {
   if (warning) return `not without hearing protection.${max.atLeast ? " It can play louder." : ""}`;
-  const louder = max.atLeast ? " It can play louder; then the time is shorter." : "";
+  const louder = max.atLeast
+    ? " It can play louder; then the time is shorter."
+    : max.mayPlayLouder
+      ? " It may play louder; then the time is shorter."
+      : "";
   return max.levelDb < CAUTION_FROM_DB_A
     ? `a week\u2019s listening allowance is 40\u00a0h at 80\u00a0dB(A).${louder}`
     : `the week\u2019s listening allowance is used up in ${toTimeText(allowedS)}.${louder}`;
