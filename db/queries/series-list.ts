@@ -36,6 +36,8 @@ export interface SeriesListRow {
   requestedSlots: string[];
   /** Bands of the analysis that the list shows, and those with a decision. */
   bands: { total: number; decided: number };
+  /** A publication is live. */
+  published: boolean;
   /** Who changed it last. */
   changedBy: { id: string; name: string } | null;
   changedAt: Date;
@@ -117,6 +119,8 @@ async function pageOfSeries(
         where q.lab_id = s.lab_id and q.series_id = s.id and q.withdrawn_at is null)`.as(
         "requestedSlots",
       ),
+      sql<boolean>`exists (select from publications p where p.lab_id = s.lab_id
+        and p.series_id = s.id and p.state = 'live')`.as("published"),
     ])
     .orderBy("found.place")
     .execute();
@@ -139,6 +143,7 @@ async function pageOfSeries(
     excusedSlots: row.excusedSlots,
     requestedSlots: row.requestedSlots,
     bands: decided.get(row.listSummary?.analysis_id ?? "") ?? { total: 0, decided: 0 },
+    published: row.published,
     changedBy:
       row.changerId === null || row.changerName === null
         ? null

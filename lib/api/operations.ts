@@ -8,6 +8,7 @@ import { memberOperations } from "./members";
 import { microphoneOperations } from "./microphones";
 import type { Operation } from "./operation";
 import { reviewOperations } from "./review";
+import { publicationOperations } from "./publications";
 import { runOperations } from "./runs";
 import { seriesOperations } from "./series";
 import { sessionOperations } from "./session";
@@ -19,6 +20,7 @@ export const OPERATION_GROUPS: Readonly<Record<string, readonly Operation[]>> = 
   Recordings: runOperations,
   Analyses: analysisOperations,
   Review: reviewOperations,
+  Publications: publicationOperations,
   Account: [...sessionOperations, ...accountOperations],
   Members: memberOperations,
   Tokens: tokenOperations,

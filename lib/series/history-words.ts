@@ -12,6 +12,9 @@ const detailsSchema = z.object({
   message: z.string().optional(),
   recordings: z.number().optional(),
   loudspeaker: z.string().optional(),
+  revision: z.number().optional(),
+  name: z.string().optional(),
+  for_whom: z.string().optional(),
   changed: z.array(z.string()).optional(),
   decisions: z
     .array(
@@ -70,6 +73,13 @@ const WORDS: Record<string, (details: Details) => string> = {
   "series.signed-off": (d) =>
     `signed off version ${d.version ?? "?"} for ${d.criterion ?? "a criterion"}${d.one_person === true ? "; one person recorded and signed" : ""}`,
   "series.reopened": (d) => `took back the sign-off of version ${d.version ?? "?"}`,
+  "publication.published": (d) => `published revision ${d.revision ?? "?"}`,
+  "publication.corrected": (d) => `published revision ${d.revision ?? "?"}, a correction`,
+  "publication.withdrawn": (d) => `withdrew revision ${d.revision ?? "?"}`,
+  "preview.created": (d) => `made a private preview link for ${d.for_whom ?? "the maker"}`,
+  "preview.revoked": (d) => `revoked the preview link for ${d.for_whom ?? "the maker"}`,
+  "maker.commented": (d) => `${d.name ?? "the maker"} commented on the preview`,
+  "maker.answered": (d) => `answered the comment of ${d.name ?? "the maker"}`,
 };
 
 /** One band in full; of many, how many. A reason that all share is shown apart. */

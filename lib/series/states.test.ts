@@ -36,6 +36,7 @@ describe("toSeriesSteps", () => {
       analysedNote: null,
       signedOffNote: "11 May, M. Oduya",
       bands: { total: 27, decided: 12 },
+      publishedNote: null,
     });
 
   it("fills the review by bands, and the sign-off at once", () => {
@@ -45,6 +46,25 @@ describe("toSeriesSteps", () => {
     const signed = steps({ captured: 7, analysis: "done", signedOff: true }, 1);
     expect(signed[2]).toMatchObject({ share: 1, done: true });
     expect(signed[3]).toMatchObject({ share: 1, done: true, detail: "11 May, M. Oduya" });
+  });
+
+  it("fills the last box while a publication is live", () => {
+    const published = toSeriesSteps({
+      ...facts({ signedOff: true }),
+      progress: 0,
+      capturedNote: null,
+      analysedNote: null,
+      signedOffNote: null,
+      bands: { total: 0, decided: 0 },
+      publishedNote: "14 May, N. Okell",
+    });
+    expect(published.at(-1)).toEqual({
+      step: "published",
+      share: 1,
+      done: true,
+      detail: "14 May, N. Okell",
+    });
+    expect(steps({}).at(-1)).toMatchObject({ done: false, detail: "needs reviewer" });
   });
 
   it.each([

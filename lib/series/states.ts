@@ -36,6 +36,8 @@ export interface StepFacts extends SeriesFacts {
   signedOffNote: string | null;
   /** Bands of the analysis that counts, and those with a decision. */
   bands: { total: number; decided: number };
+  /** A live publication: "14 May, N. Okell"; null where there is none. */
+  publishedNote: string | null;
 }
 
 export interface SeriesStep {
@@ -45,7 +47,7 @@ export interface SeriesStep {
   detail: string;
 }
 
-/** The five boxes, left to right. Publication comes with a later part of the product. */
+/** The five boxes, left to right. */
 export function toSeriesSteps(facts: StepFacts): SeriesStep[] {
   const captured = facts.planned > 0 && facts.captured >= facts.planned;
   const analysed = facts.analysis === "done";
@@ -81,7 +83,12 @@ export function toSeriesSteps(facts: StepFacts): SeriesStep[] {
       done: facts.signedOff,
       detail: facts.signedOff ? (facts.signedOffNote ?? "signed off") : "needs analyst",
     },
-    { step: "published", share: 0, done: false, detail: "needs reviewer" },
+    {
+      step: "published",
+      share: facts.publishedNote === null ? 0 : 1,
+      done: facts.publishedNote !== null,
+      detail: facts.publishedNote ?? "needs reviewer",
+    },
   ];
 }
 

@@ -34,6 +34,7 @@ const row = (
 const EVERYONE = ["yes", "yes", "yes", "yes"] as const;
 const TESTER_ANALYST = ["yes", "yes", "no", "no"] as const;
 const ANALYST = ["no", "yes", "no", "no"] as const;
+const REVIEWER = ["no", "no", "yes", "no"] as const;
 const ADMIN = ["no", "no", "no", "yes"] as const;
 
 export const ROLE_TABLE: readonly RoleRow[] = [
@@ -84,6 +85,15 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("withdrawRunRequest", ANALYST, "not there"),
   row("signOff", ANALYST, "not there"),
   row("reopenSeries", ANALYST, "not there"),
+  // Publish, correct, withdraw, preview links: reviewer.
+  row("listPublications", EVERYONE, "not there"),
+  row("draftPublication", EVERYONE, "not there"),
+  row("listPreviews", EVERYONE, "not there"),
+  row("publish", REVIEWER, "not there"),
+  row("withdrawPublication", REVIEWER, "not there"),
+  row("createPreview", REVIEWER, "not there"),
+  row("revokePreview", REVIEWER, "not there"),
+  row("answerMakerComment", REVIEWER, "not there"),
   // Members, roles, tokens of others, lab settings, the lab-wide trail: admin.
   row("getLab", EVERYONE, "yes"),
   row("listMembers", EVERYONE, "yes"),

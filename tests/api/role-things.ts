@@ -1,9 +1,13 @@
 /** One of everything in our lab, made afresh, so that an act that takes it away finds it. */
 import { randomBytes, randomUUID } from "node:crypto";
-import { inLab } from "../../db/in-lab";
+import { commentAsMaker, createPreview } from "../../db/acts/previews";
+import { publishSeries } from "../../db/acts/publish";
+import type { Trx } from "../../db/client";
+import { inLab, type LabScope } from "../../db/in-lab";
 import { createAnalysis, claimAnalysis } from "../../db/queries/analyses";
 import { createInvitation } from "../../db/queries/invitations";
 import { createLoudspeaker } from "../../db/queries/loudspeakers";
+import { listMakerComments } from "../../db/queries/previews";
 import { keepRecording } from "../../db/queries/recordings";
 import { addRunRequest } from "../../db/queries/run-requests";
 import { saveResult } from "../../db/queries/results";
@@ -15,6 +19,7 @@ import { digestSecret } from "../../lib/account/secrets";
 import { planSchema } from "../../lib/series/plan-schema";
 import { makeTestMember } from "../support/lab-bench";
 import { makeSampleResult } from "../support/sample-result";
+import { signTestSeries } from "../support/signed-series";
 import { getTestSeries } from "../support/test-series";
 import type { ApiBench } from "./support";
 
@@ -97,6 +102,9 @@ export async function makeThings(bench: ApiBench) {
       tokenHash: digestSecret(randomUUID()),
       createdBy: scope.accountId,
     });
+    const publishedId = (await createSeries(trx, labId, scope.accountId, { loudspeakerId, plan }))
+      .id;
+    const published = await publishThings(trx, scope, publishedId, digest);
     return {
       loudspeakerId,
       seriesId,
@@ -106,7 +114,54 @@ export async function makeThings(bench: ApiBench) {
       uploadId,
       tokenId,
       invitationId,
+      ...published,
     };
   });
   return { ...made, labId, plan, accountId: member.scope.accountId, sessionId: randomUUID() };
+}
+
+/** A series of its own, so that what begins before the sign-off finds the other one as it was. */
+async function publishThings(
+  trx: Trx,
+  by: LabScope & { accountId: string },
+  seriesId: string,
+  inputsDigest: string,
+) {
+  const result = makeSampleResult();
+  const analysisId = await createAnalysis(trx, by.labId, {
+    seriesId,
+    inputs: { series: {}, files: [] },
+    inputsDigest,
+    settings: result.settings,
+    engineVersion: "1.0.0",
+    requestedBy: null,
+  });
+  await claimAnalysis(trx, by.labId, analysisId, 0);
+  await saveResult(trx, by.labId, analysisId, result, new Map());
+  await signTestSeries(trx, by, { seriesId, analysisId, criterion: { compression_dB: 3 } });
+  const words = {
+    words: "",
+    supplied_by: "bought by the lab",
+    maker_statement: null,
+    answer_to_maker: null,
+    evidence_public: false,
+  };
+  const publicationId = await publishSeries(trx, by, seriesId, {
+    words,
+    slug: `things-${randomBytes(6).toString("hex")}`,
+    embargoUntil: null,
+    changeNote: null,
+  });
+  const { id: previewId } = await createPreview(trx, by, seriesId, {
+    words,
+    forWhom: "the maker",
+    days: 14,
+  });
+  await commentAsMaker(trx, by.labId, previewId, {
+    name: "M",
+    email: "m@maker.test",
+    words: "Thanks.",
+  });
+  const commentId = (await listMakerComments(trx, by.labId, seriesId))[0]?.id ?? "";
+  return { publicationId, previewId, commentId };
 }

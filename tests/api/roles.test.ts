@@ -79,6 +79,11 @@ const INPUTS: Readonly<Record<string, (things: Things) => { body?: unknown; quer
     body: "20 0.0\n1000 0.0\n20000 0.1\n",
     query: { file_name: "m.txt" },
   }),
+  publish: () => ({ body: { supplied_by: "bought by the lab" } }),
+  draftPublication: () => ({ body: {} }),
+  withdrawPublication: () => ({ body: { reason: "a reason" } }),
+  createPreview: () => ({ body: { supplied_by: "bought by the lab", for_whom: "the maker" } }),
+  answerMakerComment: () => ({ body: { answer: "an answer" } }),
   putLoudspeakerPhoto: () => ({ body: "\x89PNG" }),
 };
 

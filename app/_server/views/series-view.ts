@@ -4,6 +4,7 @@ import { findCurrentAnalysis } from "../../../db/queries/current-analysis";
 import { countDecided } from "../../../db/queries/decisions";
 import { getLab } from "../../../db/queries/labs";
 import { findStandingSignOff } from "../../../db/queries/sign-offs";
+import { listPublications } from "../../../db/queries/publications";
 import { toSeriesNumber } from "../../../db/queries/series";
 import type { SeriesListRow } from "../../../db/queries/series-list";
 import type { Progress, SeriesRow, SeriesView } from "../../../lib/api/series";
@@ -32,6 +33,7 @@ export async function loadSeriesView(
   const zone = (await getLab(trx, labId)).time_zone;
   const toNote = (at: Date, name: string | null): string =>
     [toDay(at, new Date(), zone), ...(name === null ? [] : [name])].join(", ");
+  const live = (await listPublications(trx, labId, seriesId)).find((one) => one.state === "live");
   const steps = toSeriesSteps({
     begun: runs.length > 0 || capture.excuses.size > 0,
     captured: countCaptured(capture),
@@ -46,6 +48,7 @@ export async function loadSeriesView(
       done?.finished_at == null
         ? null
         : `${toDay(done.finished_at, new Date(), zone)}, version ${String(done.version)}`,
+    publishedNote: live === undefined ? null : toNote(live.published_at, live.publishedByName),
   });
   return {
     id: series.id,
@@ -96,7 +99,7 @@ export function toSeriesRow(row: SeriesListRow, progress: Progress | null): Seri
 }
 
 function toStateDetail(
-  { state, bands }: Pick<SeriesListRow, "state" | "bands">,
+  { state, bands, published }: Pick<SeriesListRow, "state" | "bands" | "published">,
   captured: number,
   planned: number,
   progress: Progress | null,
@@ -108,7 +111,7 @@ function toStateDetail(
     analysing: progress === null ? "waits for a worker" : toRunWords(progress),
     "analysis failed": "needs tester",
     "in review": toBandsWords(bands),
-    "signed off": "not published",
+    "signed off": published ? "published" : "not published",
   };
   return details[state];
 }
