@@ -34,7 +34,7 @@ export function proxy(request: NextRequest): NextResponse {
   return response;
 }
 
-// Never under /api: the proxy would hold whole uploads in memory.
+// Never under /api: the proxy would hold whole uploads in memory. Pages for readers have their own policy.
 export const config = {
-  matcher: ["/((?!api/|_next/|.*\\.[a-z0-9]+$).*)"],
+  matcher: ["/((?!api/|_next/|t/|preview/|published$|.*\\.[a-z0-9]+$).*)"],
 };

@@ -75,18 +75,28 @@ export function toBandColumns({
   return { levels, columns, spl: result.spl_valid };
 }
 
+/** The part of a band that a column is drawn from. */
+export type ColumnBand = Pick<Band, "nominal_Hz" | "exact_Hz" | "onset" | "cause" | "long_term"> & {
+  levels: readonly ColumnLevel[];
+};
+type ColumnLevel = Pick<
+  BandLevel,
+  "level_dB" | "kind" | "variant" | "spl_dB" | "expected_dB" | "compression_dB"
+>;
+
 /** SPL where it holds, else the run's level less what was lost. */
-const outputOf = (level: BandLevel): number | null =>
+const outputOf = (level: ColumnLevel): number | null =>
   level.spl_dB ?? (level.compression_dB === null ? null : level.level_dB - level.compression_dB);
 
-function toColumn(
-  band: Band,
+/** @param limit of this band, under the criterion that is shown. */
+export function toColumn(
+  band: ColumnBand,
   levels: readonly SeriesLevel[],
   limit: Limit,
   decision: BandDecision | undefined,
 ): BandColumn {
   const plain = band.levels.filter(isPlain);
-  const at = (levelDb: number): BandLevel[] => plain.filter((run) => run.level_dB === levelDb);
+  const at = (levelDb: number): ColumnLevel[] => plain.filter((run) => run.level_dB === levelDb);
   const measuredDb = levels.map(({ levelDb }) => meanOf(at(levelDb).map(outputOf)));
   const loudest = at(levels.at(-1)?.levelDb ?? Number.NaN);
   const lostDb = meanOf(loudest.map((run) => run.compression_dB));

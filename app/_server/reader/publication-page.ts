@@ -1,0 +1,123 @@
+/** The page behind /t/<lab>/<series>[/<revision>]: looked up at every request, drawn once per state. */
+import {
+  toReplacedBanner,
+  toRevisionsSection,
+  toWithdrawnBody,
+} from "../../../components/reader/revisions";
+import { toReaderPage } from "../../../components/reader/frame";
+import { toPublicationBody } from "../../../components/reader/publication-page";
+import { html } from "../../../lib/html/html";
+import { inLab } from "../../../db/in-lab";
+import { getLab } from "../../../db/queries/labs";
+import {
+  findPublication,
+  getSnapshotText,
+  listPublications,
+  type PublicationRow,
+} from "../../../db/queries/publications";
+import { getEnvironment } from "../../../lib/config/environment";
+import { toRevisionPath } from "../../../lib/publication/addresses";
+import { parseSnapshotText } from "../../../lib/publication/canonical";
+import type { Snapshot } from "../../../lib/publication/snapshot-schema";
+import { toAnswer } from "../../../lib/reader/page-words";
+import { getDatabase } from "../database";
+import { packPage, type PackedPage } from "./answer-page";
+import { takeTurns } from "./take-turns";
+
+export interface PublicationAddress {
+  lab: string;
+  slug: string;
+  /** null: the newest. */
+  revision: number | null;
+}
+
+interface Standing {
+  row: PublicationRow;
+  /** All that a reader may know of, newest first. */
+  revisions: PublicationRow[];
+  timeZone: string;
+}
+
+const KEPT_PAGES = 300;
+const pages = new Map<string, PackedPage>();
+
+const look = takeTurns((key) => findStanding(JSON.parse(key) as PublicationAddress));
+
+/** @returns null where nothing is published at this address. */
+export async function findPublicationPage(address: PublicationAddress): Promise<PackedPage | null> {
+  const standing = await look(JSON.stringify(address));
+  if (standing === null) return null;
+  const key = JSON.stringify([standing, getEnvironment().publicUrl]);
+  const known = pages.get(key);
+  if (known !== undefined) return known;
+  const page = await drawPage(standing);
+  pages.set(key, page);
+  const [oldest] = pages.keys();
+  if (pages.size > KEPT_PAGES && oldest !== undefined) pages.delete(oldest);
+  return page;
+}
+
+async function findStanding(address: PublicationAddress): Promise<Standing | null> {
+  const found = await findPublication(getDatabase(), address);
+  if (found === null) return null;
+  const { labId, publicationId } = found;
+  return inLab(getDatabase(), { labId, accountId: null }, async (trx) => {
+    const lab = await getLab(trx, labId);
+    const series = await trx
+      .selectFrom("publications")
+      .select("series_id")
+      .where("lab_id", "=", labId)
+      .where("id", "=", publicationId)
+      .executeTakeFirstOrThrow();
+    const all = await listPublications(trx, labId, series.series_id);
+    const now = new Date();
+    const revisions = all.filter((one) => one.embargo_until === null || one.embargo_until <= now);
+    const row = revisions.find((one) => one.id === publicationId);
+    return row === undefined ? null : { row, revisions, timeZone: lab.time_zone };
+  });
+}
+
+async function drawPage({ row, revisions, timeZone }: Standing): Promise<PackedPage> {
+  const text = await inLab(getDatabase(), { labId: row.lab_id, accountId: null }, (trx) =>
+    getSnapshotText(trx, row.lab_id, row.id),
+  );
+  const snapshot = parseSnapshotText(text);
+  const paths = { lab: snapshot.lab.slug, slug: row.slug };
+  const canonical = `${getEnvironment().publicUrl}${toRevisionPath(paths.lab, paths.slug, row.revision)}`;
+  const { model } = snapshot.loudspeaker;
+  if (row.state === "withdrawn") {
+    return packPage(
+      410,
+      toReaderPage({
+        title: `${model}: withdrawn`,
+        description: `The test of ${model} by ${snapshot.lab.name} was withdrawn.`,
+        canonical,
+        hidden: true,
+        body: toWithdrawnBody({ snapshot, row, revisions, timeZone }),
+        footer: toFooter(snapshot),
+      }),
+    );
+  }
+  return packPage(
+    200,
+    toReaderPage({
+      title: `${model}: how loud it plays`,
+      description: toAnswer(snapshot).join(" "),
+      canonical,
+      script: true,
+      body: toPublicationBody({
+        snapshot,
+        digest: row.digest,
+        timeZone,
+        banner: toReplacedBanner({ snapshot, row, revisions, timeZone }),
+        after: toRevisionsSection({ snapshot, row, revisions, timeZone }),
+      }),
+      footer: toFooter(snapshot),
+    }),
+  );
+}
+
+export const toFooter = ({ lab, series, revision }: Snapshot) =>
+  html`<span>${lab.name}</span
+    ><span>Results may be quoted with the method line and a link to this page.</span
+    ><span>${series.number} · revision ${revision}</span>`;

@@ -1,0 +1,6 @@
+import type { RouteArguments } from "@/app/_server/handle";
+import { answerPublication } from "@/app/_server/reader/answer-publication";
+
+/** One revision; its address never moves. */
+export const GET = async (request: Request, route: RouteArguments): Promise<Response> =>
+  answerPublication(request, await route.params);

@@ -1,0 +1,111 @@
+/** Sentences of the public page that are computed from the snapshot. */
+import {
+  formatCriterionPercent,
+  formatLevel,
+  formatList,
+  formatPlain,
+  NBSP,
+} from "../charts/format";
+import { toMaxLevelNotice, type HearingNotice } from "../exposure/notices";
+import type { Snapshot } from "../publication/snapshot-schema";
+import { toHeadlineSentences } from "../result/headline-words";
+import type { Criterion } from "../series/series-schema";
+import type { Environment } from "../series/vocabulary";
+import type { SeatSource } from "./seat";
+import { toPartsOfSound } from "./parts-of-sound";
+
+/** The answer: one or two sentences, or why there is none. */
+export function toAnswer(snapshot: Pick<Snapshot, "headline" | "headline_missing">): string[] {
+  return snapshot.headline === null
+    ? [snapshot.headline_missing ?? "This test gives no single figure."]
+    : toHeadlineSentences(snapshot.headline);
+}
+
+/** "10 % distortion or 3 dB compression". */
+export function toLimitWords(criterion: Criterion): string {
+  const parts: string[] = [];
+  if (criterion.thd_percent !== undefined) {
+    parts.push(`${formatCriterionPercent(criterion.thd_percent)} distortion`);
+  }
+  if (criterion.compression_dB !== undefined) {
+    parts.push(`${formatPlain(criterion.compression_dB)}${NBSP}dB compression`);
+  }
+  return parts.join(" or ");
+}
+
+/** How long a logarithmic sweep stays in one third of an octave, s. */
+const toBandS = ({ start_Hz, stop_Hz, length_s }: Snapshot["measured"]["sweep"]): number =>
+  length_s / (3 * Math.log2(stop_Hz / start_Hz));
+
+/** Stands with every figure of a publication. */
+export function toMethodWords(snapshot: Pick<Snapshot, "measured" | "criterion">): string {
+  const bandS = toBandS(snapshot.measured.sweep).toFixed(1);
+  return `Sine sweep, one tone at a time, about ${bandS}${NBSP}s per band, unweighted, level at 1${NBSP}m (3.3${NBSP}ft); limit: ${toLimitWords(snapshot.criterion)}. Music differs.`;
+}
+
+/** The hearing notice of a view that shows this publication's levels; null where no level stands in it. */
+export function toPublishedNotice(
+  snapshot: Pick<Snapshot, "bands" | "loudspeaker">,
+): HearingNotice | null {
+  const levels = snapshot.bands.flatMap((band) => [
+    band.limit.spl_dB ?? [],
+    ...band.levels.map((level) => level.spl_dB ?? []),
+  ]);
+  const shown = levels.flat();
+  if (shown.length === 0) return null;
+  return toMaxLevelNotice({
+    levelDb: Math.max(...shown),
+    distanceM: 1,
+    atLeast: snapshot.bands.some((band) => band.limit.status === "not reached"),
+    stage: snapshot.loudspeaker.kind.includes("stage"),
+  });
+}
+
+/** What the seat calculator starts from: the estimate for music, its spectrum by IEC 60268-1 where there is one. */
+export function toSeatSource(
+  snapshot: Pick<Snapshot, "programme" | "bands" | "measured">,
+): SeatSource {
+  const estimates = snapshot.programme.filter((one) => one.spl_dBA !== null);
+  const estimate = estimates.find((one) => one.spectrum === "iec-60268-1") ?? estimates[0] ?? null;
+  return {
+    musicDbA: estimate?.spl_dBA ?? null,
+    musicCrestDb: estimate?.crest_dB ?? 12,
+    atLeast: estimate?.at_least ?? false,
+    parts: toPartsOfSound(snapshot).map(({ name, reachedDb, atLeast, belowLowest }) => ({
+      name,
+      reachedDb,
+      atLeast,
+      belowLowest,
+    })),
+  };
+}
+
+const PLACES: Record<Environment, string> = {
+  anechoic: "in an anechoic room",
+  "ground-plane": "on the ground plane",
+  "flush-half-space": "flush in a large wall",
+  outdoors: "outdoors",
+  gated: "in a room, reflections gated out",
+  "in-room": "in a room",
+  "near-field": "close to the drive unit",
+};
+
+/** How the test went, in one paragraph. */
+export function toMeasuredWords(snapshot: Pick<Snapshot, "measured">): string {
+  const { sweep, levels_dB, long_term_levels_dB, distance_m, environment } = snapshot.measured;
+  const levels = formatList(levels_dB.map((level) => formatPlain(level)));
+  const longTerm =
+    long_term_levels_dB.length === 0
+      ? ""
+      : `, and at ${formatList(long_term_levels_dB.map(formatLevel))} again after conditioning noise`;
+  const feet = (distance_m / 0.3048).toFixed(1);
+  return `One loudspeaker played a ${formatPlain(Math.round(sweep.length_s))} second sine sweep, one tone at a time, at ${levels}${NBSP}dB${longTerm}. The microphone stood ${formatPlain(distance_m)}${NBSP}m (${feet}${NBSP}ft) away ${PLACES[environment]}; levels are stated for 1${NBSP}m.`;
+}
+
+/** "1 of 27 causes changed by the analyst". */
+export function toChangedWords(bands: Snapshot["bands"]): string {
+  const changed = bands.filter((band) => band.cause_changed).length;
+  return changed === 0
+    ? `all ${bands.length} causes confirmed by the analyst`
+    : `${changed} of ${bands.length} causes changed by the analyst`;
+}
