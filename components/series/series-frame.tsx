@@ -29,6 +29,7 @@ const TABS = [
   ["runs", "Runs"],
   ["output-limit", "Output limit"],
   ["distortion", "Distortion"],
+  ["summary", "Summary"],
   ["history", "History"],
 ] as const;
 

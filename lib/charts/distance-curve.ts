@@ -11,7 +11,7 @@ const FROM_M = 0.5;
 const TO_M = 20;
 const TICKS_M = [0.5, 1, 2, 4, 8, 16];
 const LEFT = 44;
-const RIGHT = 104;
+const RIGHT = 118;
 const TOP = 22;
 const FOOT = 44;
 

@@ -26,7 +26,12 @@ export function toReaderWall(
 ): Figure {
   const staffWidth = narrow ? NARROW_STAFF : STAFF;
   const names = narrow ? 0 : NAMES;
-  const columns = toPublishedColumns(snapshot);
+  const published = toPublishedColumns(snapshot);
+  // Readers are told of limits; the onset belongs to the lab's own wall.
+  const columns = {
+    ...published,
+    columns: published.columns.map((column) => ({ ...column, onsetDb: null })),
+  };
   const count = Math.max(1, columns.columns.length);
   const wall = toWall(columns, {
     pitch: Math.floor(((width - staffWidth - names - 2) / count) * 100) / 100,

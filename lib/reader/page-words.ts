@@ -99,7 +99,7 @@ export function toMeasuredWords(snapshot: Pick<Snapshot, "measured">): string {
       ? ""
       : `, and at ${formatList(long_term_levels_dB.map(formatLevel))} again after conditioning noise`;
   const feet = (distance_m / 0.3048).toFixed(1);
-  return `One loudspeaker played a ${formatPlain(Math.round(sweep.length_s))} second sine sweep, one tone at a time, at ${levels}${NBSP}dB${longTerm}. The microphone stood ${formatPlain(distance_m)}${NBSP}m (${feet}${NBSP}ft) away ${PLACES[environment]}; levels are stated for 1${NBSP}m.`;
+  return `One loudspeaker played a sine sweep of ${formatPlain(Math.round(sweep.length_s))} seconds, one tone at a time, at ${levels}${NBSP}dB${longTerm}. The microphone stood ${formatPlain(distance_m)}${NBSP}m (${feet}${NBSP}ft) away ${PLACES[environment]}; levels are stated for 1${NBSP}m.`;
 }
 
 /** "1 of 27 causes changed by the analyst". */

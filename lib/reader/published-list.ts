@@ -99,9 +99,9 @@ export function choosePublished(
 
 /** For the loudest level that stands in the list; null where none does. */
 export function toListNotice(tests: readonly PublishedTest[]): HearingNotice | null {
-  const levels = tests.flatMap((test) => [
-    ...test.bands.flatMap((band) => [band.reached_dB ?? [], band.spl_dB ?? []].flat()),
-  ]);
+  const levels = tests
+    .flatMap((test) => test.bands)
+    .flatMap((band) => [band.reached_dB ?? [], band.spl_dB ?? []].flat());
   return levels.length === 0
     ? null
     : toMaxLevelNotice({

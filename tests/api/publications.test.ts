@@ -102,9 +102,11 @@ describe("publishing", () => {
   });
 
   it("refuses an analysis whose result is not the one that was signed", async () => {
-    const { seriesId, analysisId } = await makeSeries();
-    await sql`update analysis_bands set payload = jsonb_set(payload::jsonb, '{limits,0,spl_dB}', '140')
-      where analysis_id = ${analysisId} and position = 0`.execute(bench.owner);
+    const { seriesId } = await makeSeries();
+    await inLab(bench.app, bench.all.scope, (trx) =>
+      sql`update sign_offs set result_digest = ${"0".repeat(64)}
+        where series_id = ${seriesId}`.execute(trx),
+    );
     const problem = await problemOf(call(bench, publish, { params: { seriesId }, body: SUPPLIED }));
     expect(problem.detail).toContain("not the one that was signed");
   });
