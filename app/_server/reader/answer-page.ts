@@ -1,12 +1,10 @@
-/** A page for readers as a response: packed once, named by its bytes, kept by shared caches for a minute. */
+/** A page for readers as a response: drawn once, named by its bytes, kept by shared caches for a minute. */
 import { createHash } from "node:crypto";
-import { gzipSync } from "node:zlib";
 
 /** A finished page, ready to be sent many times. */
 export interface PackedPage {
   status: number;
-  plain: Uint8Array<ArrayBuffer>;
-  gzip: Uint8Array<ArrayBuffer>;
+  bytes: Uint8Array<ArrayBuffer>;
   etag: string;
 }
 
@@ -23,13 +21,9 @@ const POLICY = [
 ].join("; ");
 
 export function packPage(status: number, text: string): PackedPage {
-  const plain = new Uint8Array(Buffer.from(text, "utf8"));
-  return {
-    status,
-    plain,
-    gzip: new Uint8Array(gzipSync(plain, { level: 9 })),
-    etag: createHash("sha256").update(plain).digest("base64url").slice(0, 27),
-  };
+  const bytes = new Uint8Array(Buffer.from(text, "utf8"));
+  const etag = `"${createHash("sha256").update(bytes).digest("base64url").slice(0, 27)}"`;
+  return { status, bytes, etag };
 }
 
 /** Held by shared caches for a minute; a browser asks again every time, mostly for nothing new. */
@@ -38,26 +32,22 @@ const NOT_KEPT = "private, no-store";
 
 /** @param shared false: for one reader alone, kept by nobody */
 export function answerPage(request: Request, page: PackedPage, shared = true): Response {
-  const zipped = /\bgzip\b/.test(request.headers.get("accept-encoding") ?? "");
-  const etag = `"${page.etag}${zipped ? "-gz" : ""}"`;
   const headers = {
     "cache-control": shared ? SHARED_FOR_A_MINUTE : NOT_KEPT,
     "content-security-policy": POLICY,
     "referrer-policy": shared ? "strict-origin-when-cross-origin" : "same-origin",
     "x-content-type-options": "nosniff",
     "x-frame-options": "DENY",
-    vary: "accept-encoding",
-    ...(shared ? { etag } : {}),
+    ...(shared ? { etag: page.etag } : {}),
   };
-  if (shared && page.status === 200 && matches(request.headers.get("if-none-match"), etag)) {
+  if (shared && page.status === 200 && matches(request.headers.get("if-none-match"), page.etag)) {
     return new Response(null, { status: 304, headers });
   }
-  return new Response(zipped ? page.gzip : page.plain, {
+  return new Response(page.bytes, {
     status: page.status,
     headers: {
       ...headers,
       "content-type": "text/html; charset=utf-8",
-      ...(zipped ? { "content-encoding": "gzip" } : {}),
     },
   });
 }
