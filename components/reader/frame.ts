@@ -50,6 +50,7 @@ export function toReaderPage(page: ReaderPage): string {
             <a href="/published" ${page.current === "published" && asHtml(' aria-current="page"')}
               >Published tests</a
             >
+            <a href="/how-we-measure">How we measure</a>
           </nav>
         </header>
         <main id="content">${page.body}</main>
