@@ -97,7 +97,7 @@ describe("publication", () => {
   it("answers the reader's own room once the script is there", async () => {
     const reader = await read(DESK, true);
     await reader.getByLabel("measured at your seat").fill("88");
-    await reader.getByText("working day, NIOSH").click();
+    await reader.getByRole("radio", { name: "working day, NIOSH" }).check();
     const result = reader.locator("#seat-result");
     expect(await result.innerText()).toContain("used up in 4\u00a0h");
     await reader.getByLabel("usual level at your seat").fill("110");
