@@ -30,13 +30,14 @@ export function verifyStages(): Stage[] {
   const present = [...ROOMS, ...TOP_FILES].filter((name) => existsSync(join(cloneDir, name)));
   return [
     commandStage("format", [packageFile("oxfmt/bin/oxfmt"), "--check", "."]),
+    // Lint and types both read the types of the routes.
+    commandStage("route types", [packageFile("next/dist/bin/next"), "typegen"]),
     commandStage("lint", [
       packageFile("oxlint/bin/oxlint"),
       "--type-aware",
       "--deny-warnings",
       ".",
     ]),
-    commandStage("route types", [packageFile("next/dist/bin/next"), "typegen"]),
     commandStage("types", [packageFile("typescript/bin/tsc"), "--noEmit"]),
     commandStage("unused code", [packageFile("knip/bin/knip.js"), "--no-config-hints"]),
     commandStage(
