@@ -94,6 +94,14 @@ describe("the wall by keyboard", () => {
     show(40);
     press("ArrowLeft");
     expect(seen).toEqual([40]);
+    expect(document.activeElement).toBe(stops()[0]);
+  });
+  it("follows no selection that comes from elsewhere, even after a press at its end", () => {
+    show(40);
+    press("Home");
+    act(() => void buttons()[5]?.dispatchEvent(new MouseEvent("click", { bubbles: true })));
+    expect(seen).toEqual([40, 125]);
+    expect(document.activeElement).toBe(buttons()[0]);
   });
   it("picks causes by 1 to 8, goes on by Enter and N", () => {
     const told: string[] = [];

@@ -77,7 +77,9 @@ export function Wall({
     const to = moveOf(event.key, at, columns.length);
     const column = to === null ? undefined : columns[to];
     if (column !== undefined) {
-      moved.current = true;
+      // At the end nothing moves, and a later move is not the wall's to follow.
+      moved.current = column.nominalHz !== selectedHz;
+      if (!moved.current) buttons.current.get(column.nominalHz)?.focus();
       (event.shiftKey && onExtend !== undefined ? onExtend : onSelect)(column.nominalHz);
     } else if (!pressed(event.key, keys)) return;
     event.preventDefault();

@@ -1,7 +1,7 @@
 "use client";
 
 import { parseAsFloat, parseAsString, useQueryStates } from "nuqs";
-import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { useLayoutEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import type { Review } from "@/lib/api/review";
 import type { SeriesView } from "@/lib/api/series";
 import { listCriterionParts, readCriterion, sayCriterion } from "@/lib/result/criteria";
@@ -80,7 +80,7 @@ export function Workspace({
 
   // What moves the selection from outside the wall takes the focus of the wall along.
   const [wallFocus, setWallFocus] = useState(0);
-  useEffect(() => {
+  useLayoutEffect(() => {
     if (wallFocus === 0) return;
     place.current
       ?.querySelector<SVGGElement>(`[role="button"][data-band="${selection.hz ?? ""}"]`)

@@ -1,6 +1,14 @@
 "use client";
 
-import { useEffect, useId, useRef, useState, type FormEvent, type KeyboardEvent } from "react";
+import {
+  useEffect,
+  useId,
+  useLayoutEffect,
+  useRef,
+  useState,
+  type FormEvent,
+  type KeyboardEvent,
+} from "react";
 import { formatFrequency } from "@/lib/charts/format";
 import { CAUSE_WORDS } from "@/lib/charts/marks";
 import type { Band, Result } from "@/lib/result/result-schema";
@@ -63,7 +71,8 @@ export function DecisionPanel({
   const cause = picked ?? standing?.cause ?? (single === undefined ? null : (computed[0] ?? null));
   const reasonNeeded = cause !== null && bands.some((band) => needsReason(band, cause));
 
-  useEffect(() => {
+  // Before the next key can come.
+  useLayoutEffect(() => {
     if (focusCount === 0) return;
     (reasonNeeded ? reasonRef.current : confirmRef.current)?.focus();
     // Only a new request moves the focus.
