@@ -8,6 +8,7 @@ const FOR_ALL = [
   { href: "/members", label: "Members" },
   { href: "/lab/tokens", label: "Tokens" },
   { href: "/lab", label: "Settings" },
+  { href: "/lab/engine", label: "Engine" },
 ] as const;
 const TRAIL = { href: "/lab/trail", label: "Trail" } as const;
 
