@@ -15,7 +15,7 @@ import {
   type Recorder,
 } from "../../../scripts/demo/virtual-loudspeaker";
 import { toPeak, type Device } from "./device";
-import { measureTruth, type SweepTruth } from "./sweep-truth";
+import { TruthMeter, type SweepTruth } from "./sweep-truth";
 
 export const LEVELS_DB = [76, 86, 96, 102] as const;
 const PA_AT_0_DB = Math.SQRT2 * 20e-6;
@@ -78,6 +78,7 @@ export async function recordDevice(
 
   const stimulus = synthesiseStimulus(shape);
   const fast = upsample(stimulus, oversampling);
+  const meter = new TruthMeter(stimulus, shape);
   const truth = new Map<number, SweepTruth>();
   for (const levelDb of LEVELS_DB) {
     const peak = toPeak(levelDb + (stepErrorDb[levelDb] ?? 0));
@@ -95,7 +96,7 @@ export async function recordDevice(
       delay: latencyS * rateHz,
       driftPpm,
     });
-    truth.set(levelDb, measureTruth(heard, stimulus, shape));
+    truth.set(levelDb, meter.measure(heard));
     write(`${levelDb}.wav`, toDigital(heard, rateHz, recorder, random));
   }
   return { series: toSeries(device, shape), source: toSource(files), truth };

@@ -3,9 +3,10 @@ import { toPeak, type Device } from "./device";
 
 const RATE_HZ = 192_000;
 const STEP_DB = 0.5;
-const FROM_DB = 60;
+/** Under every knee of the devices. */
+const FROM_DB = 72;
 const TO_DB = 102;
-const TONE_S = 0.25;
+const TONE_S = 0.2;
 const LEAD_IN_TONES = 4;
 
 export interface StaticLaw {
@@ -22,7 +23,7 @@ export async function measureStaticLaw(device: Device, frequencyHz: number): Pro
   );
   const length = Math.round(TONE_S * RATE_HZ);
   // A whole number of periods ends each tone; the look-ahead of a limiter is shorter than what is left out.
-  const periods = Math.max(1, Math.floor(0.15 * frequencyHz));
+  const periods = Math.max(1, Math.floor(0.1 * frequencyHz));
   const window = Math.round((periods * RATE_HZ) / frequencyHz);
   const omega = (2 * Math.PI * periods) / window;
   // The first tone is played several times: programs begin with their gain turned down.

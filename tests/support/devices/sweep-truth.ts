@@ -20,22 +20,43 @@ const HIGHEST_SHARE_OF_RATE = 0.45;
 const EDGE_S = 0.03;
 const AFTER_S = 0.3;
 
-/**
- * @param heard pressure, Pa, without noise. @param stimulus peak 1, both at shape.rateHz.
- */
-export function measureTruth(
-  heard: Float64Array,
-  stimulus: Float64Array,
-  shape: StimulusShape,
-): SweepTruth {
+/** Measures recordings of one stimulus: its spectrum and the tables of the transforms serve them all. */
+export class TruthMeter {
+  private readonly spectra = new Map<number, Spectrum>();
+  private readonly stimuli = new Map<number, number[]>();
+
+  /** @param stimulus peak 1, at shape.rateHz. */
+  constructor(
+    private readonly stimulus: Float64Array,
+    private readonly shape: StimulusShape,
+  ) {}
+
+  /** @param heard pressure, Pa, without noise, at shape.rateHz. */
+  measure(heard: Float64Array): SweepTruth {
+    const { rateHz } = this.shape;
+    const size = 2 ** Math.ceil(Math.log2(heard.length + rateHz));
+    const transform = this.transformOf(size);
+    const stimulus = this.stimuli.get(size) ?? transform.forward(this.stimulus);
+    this.stimuli.set(size, stimulus);
+    const response = deconvolve(heard, stimulus, transform, this.shape);
+    const window = this.transformOf(2 ** Math.ceil(Math.log2(rateHz * 2)));
+    return readTruth(response, window, this.shape);
+  }
+
+  private transformOf(size: number): Spectrum {
+    const transform = this.spectra.get(size) ?? new Spectrum(size);
+    this.spectra.set(size, transform);
+    return transform;
+  }
+}
+
+function readTruth(response: Float64Array, transform: Spectrum, shape: StimulusShape): SweepTruth {
   const { rateHz, stopHz } = shape;
-  const response = deconvolve(heard, stimulus, shape);
   const at = (n: number): number => response[(n + response.length) % response.length] ?? 0;
   let arrival = 0;
   for (let n = 0; n < rateHz * 2; n += 1) if (Math.abs(at(n)) > Math.abs(at(arrival))) arrival = n;
 
   const { rateConstantS } = toSweepTiming(shape);
-  const transform = new Spectrum(2 ** Math.ceil(Math.log2(rateHz * 2)));
   /** Power of one order over frequency. */
   const toPower = (order: number): ((hz: number) => number) => {
     const lead = Math.round(rateConstantS * Math.log(order) * rateHz);
@@ -78,14 +99,12 @@ export function measureTruth(
 /** Spectra divided between the sweep's ends; nothing outside. */
 function deconvolve(
   heard: Float64Array,
-  stimulus: Float64Array,
-  shape: StimulusShape,
+  x: readonly number[],
+  transform: Spectrum,
+  { rateHz, startHz, stopHz }: StimulusShape,
 ): Float64Array {
-  const { rateHz, startHz, stopHz } = shape;
-  const size = 2 ** Math.ceil(Math.log2(heard.length + rateHz));
-  const transform = new Spectrum(size);
+  const { size } = transform;
   const y = transform.forward(heard);
-  const x = transform.forward(stimulus);
   for (let k = 0; k < size; k += 1) {
     const hz = (Math.min(k, size - k) * rateHz) / size;
     const [a = 0, b = 0, c = 0, d = 0] = [y[2 * k], y[2 * k + 1], x[2 * k], x[2 * k + 1]];
@@ -99,7 +118,7 @@ function deconvolve(
 class Spectrum {
   private readonly fft: FFT;
 
-  constructor(private readonly size: number) {
+  constructor(readonly size: number) {
     this.fft = new FFT(size);
   }
 
