@@ -276,13 +276,13 @@ describe("scale and place", () => {
       120 + 20 * Math.log10(toAmplitude(90)),
     ],
   ])("%s", async (_, series, expected) => {
-    const measured = await measure(flat, { levels: [90], series });
+    const measured = await measure(flat, { levels: [90], lengthS: 3, series });
     expect(at1k(measured).splDb).toBeCloseTo(expected, 1);
     expect(measured.runs[0]!.measuredLevelDb).toBeCloseTo(expected, 1);
   });
 
   it.each(["in-room", "near-field"])("no SPL %s, but levels to compare", async (environment) => {
-    const measured = await measure(flat, { levels: [90], series: { environment } });
+    const measured = await measure(flat, { levels: [90], lengthS: 3, series: { environment } });
     expect(measured.splValid).toBe(false);
     expect(measured.runs[0]!.splDb.every((x) => Number.isNaN(x))).toBe(true);
     expect(at1k(measured).splDb).toBeNaN();
@@ -292,6 +292,7 @@ describe("scale and place", () => {
   it("a gate gives no SPL below its inverse and the direct level above", async () => {
     const measured = await measure(flat, {
       levels: [90],
+      lengthS: 3,
       series: { environment: "gated", gate_ms: 10 },
     });
     measured.gridHz.forEach((hz, c) => {
@@ -317,6 +318,7 @@ describe("scale and place", () => {
       const microphone = { frequencyHz: [20, 1000, 4000, 20_000], levelDb: [-26, -26, -23, -20] };
       const measured = await measure(flat, {
         levels: [90],
+        lengthS: 3,
         microphone,
         series: { microphone: { file: "mic.txt", kind } },
       });
