@@ -23,6 +23,8 @@ export default defineConfig({
           include: ["tests/checks/**/*.test.ts"],
           testTimeout: 180_000,
           hookTimeout: 180_000,
+          // Two cores would otherwise get one worker.
+          maxWorkers: 2,
           sequence: { groupOrder: 1 },
         },
       },
