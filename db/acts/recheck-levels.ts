@@ -36,7 +36,13 @@ export async function recheckLevels(
 }
 
 /** Checks that hold a recording against its neighbours. */
-const BETWEEN_RUNS: ReadonlySet<string> = new Set(["level-step", "closing-repeat", "polarity"]);
+const BETWEEN_RUNS: ReadonlySet<string> = new Set([
+  "level-step",
+  "closing-repeat",
+  "polarity",
+  "dropped-samples",
+  "stop-rule",
+]);
 
 /**
  * Runs that spoke up beside the takes that were there before `runId` came: a clipped neighbour that

@@ -26,6 +26,7 @@ export interface Supervised {
 
 const FIRST_PAUSE_MS = 500;
 const LONGEST_PAUSE_MS = 30_000;
+const LAST_WORDS_MS = 500;
 /** A child that lived this long starts again at once. */
 const SETTLED_MS = 30_000;
 
@@ -85,6 +86,11 @@ function startChild(plan: ChildPlan, write: (line: string) => void): ChildProces
 function waitForEnd(child: ChildProcess): Promise<string> {
   return new Promise((resolve) => {
     child.once("error", (error) => resolve(error.message));
-    child.once("exit", (code, signal) => resolve(signal ?? `code ${code ?? "unknown"}`));
+    child.once("exit", (code, signal) => {
+      const end = (): void => resolve(signal ?? `code ${code ?? "unknown"}`);
+      // Its last words are still on their way; a child of its own may hold the pipes for longer.
+      child.once("close", () => setImmediate(end));
+      setTimeout(end, LAST_WORDS_MS);
+    });
   });
 }

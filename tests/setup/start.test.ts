@@ -1,4 +1,4 @@
-import { readFileSync, rmSync, statSync } from "node:fs";
+import { existsSync, readFileSync, rmSync, statSync } from "node:fs";
 import { createServer, connect } from "node:net";
 import { join } from "node:path";
 import { setTimeout as sleep } from "node:timers/promises";
@@ -115,7 +115,11 @@ describe("npm start", () => {
     await start();
     const killed = postmasterPid();
     process.kill(killed, "SIGKILL");
-    await until(async () => postmasterPid() !== killed && (await isListening(clone.databasePort)));
+    // Between its end and its new start there is no file that names it.
+    await until(async () => {
+      if (!existsSync(join(clone.dataDir, "postgres/data/postmaster.pid"))) return false;
+      return postmasterPid() !== killed && (await isListening(clone.databasePort));
+    });
     expect(await listening()).toEqual([true, true]);
   });
 
