@@ -32,13 +32,27 @@ export default defineConfig({
         extends: true,
         test: {
           name: "rooms",
-          include: ["tests/{db,api,workers,e2e,setup}/**/*.test.ts"],
+          include: ["tests/{db,api,workers,setup}/**/*.test.ts"],
           globalSetup: ["tests/support/global-setup.ts"],
           testTimeout: 120_000,
           // The first suite that needs the product builds it, unless `npm test` did before.
           hookTimeout: 300_000,
           maxWorkers: 2,
           sequence: { groupOrder: 2 },
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: "browser",
+          include: ["tests/e2e/**/*.test.ts"],
+          globalSetup: ["tests/support/global-setup.ts"],
+          testTimeout: 120_000,
+          // The first suite that needs the product builds it, unless `npm test` did before.
+          hookTimeout: 300_000,
+          // One browser at a time: what a person sees must not wait for another suite.
+          maxWorkers: 1,
+          sequence: { groupOrder: 3 },
         },
       },
     ],

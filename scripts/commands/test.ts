@@ -19,6 +19,7 @@ export async function main(): Promise<number> {
     build,
     vitestStage("checks"),
     vitestStage("rooms"),
+    vitestStage("browser"),
   ]);
   console.log(`${passed} passed, ${failed} failed`);
   return failed === 0 && passed > 0 ? 0 : 1;
