@@ -20,6 +20,8 @@ const theirs = (nominal_Hz: number, version: number): Decision => ({
   by: { id: "5c1e7c52-0000-4000-8000-000000000001", name: "Maro Oduya" },
   at: "2026-05-11T09:14:00.000Z",
 });
+const toTaken = ({ nominal_Hz, seen_version }: WantedDecision): Decision =>
+  theirs(nominal_Hz, seen_version + 1);
 const problem = (status: number, code: string, details?: Record<string, unknown>): ApiProblem =>
   new ApiProblem({
     type: "about:blank",
@@ -37,11 +39,13 @@ const lost = problem(0, "connection.lost");
 function bench(...answers: (Error | "taken")[]) {
   const sent: WantedDecision[][] = [];
   const told = { taken: 0, stale: 0 };
-  const outbox = new DecisionOutbox<string>({
+  const outbox = new DecisionOutbox<{ decisions: Decision[] }>({
     send: (decisions) => {
       sent.push([...decisions]);
       const answer = answers.shift() ?? "taken";
-      return answer === "taken" ? Promise.resolve(answer) : Promise.reject(answer);
+      return answer === "taken"
+        ? Promise.resolve({ decisions: sent.flat().map((one) => toTaken(one)) })
+        : Promise.reject(answer);
     },
     onTaken: () => (told.taken += 1),
     onStale: () => (told.stale += 1),
@@ -51,7 +55,7 @@ function bench(...answers: (Error | "taken")[]) {
   running.push(outbox);
   return { outbox, sent, told };
 }
-const running: DecisionOutbox<string>[] = [];
+const running: DecisionOutbox<{ decisions: Decision[] }>[] = [];
 afterEach(() => running.splice(0).forEach((outbox) => outbox.stop()));
 const settled = (): Promise<void> => new Promise((resolve) => setTimeout(resolve, 5));
 
@@ -66,6 +70,18 @@ describe("DecisionOutbox", () => {
     expect(sent).toEqual([[want(63)], [want(80)]]);
     expect(told.taken).toBe(2);
     expect(outbox.getState()).toMatchObject({ acts: [], lostSinceMs: null });
+  });
+
+  it("hands an act over to the answer in one step, so that it is never out of sight", async () => {
+    const { outbox } = bench();
+    const seen: number[][] = [];
+    outbox.subscribe(() => {
+      const { acts, taken } = outbox.getState();
+      seen.push([acts.length, ...taken.map((one) => one.nominal_Hz)]);
+    });
+    outbox.add([want(63)]);
+    await settled();
+    expect(seen).toEqual([[1], [0, 63]]);
   });
 
   it("keeps what was decided while the connection is lost, and sends it in order", async () => {

@@ -25,6 +25,11 @@ interface Act {
 export interface OutboxState {
   /** Acts that wait, oldest first; the first may be on its way. */
   acts: readonly Act[];
+  /**
+   * What the server had after the newest act that it took. Changed in one step with `acts`, so
+   * that a decision never drops out of sight between being sent and being read back.
+   */
+  taken: readonly Decision[];
   /** When the connection was lost, ms. */
   lostSinceMs: number | null;
   conflict: Conflict | null;
@@ -32,7 +37,11 @@ export interface OutboxState {
   fault: string | null;
 }
 
-interface OutboxOptions<Answer> {
+interface Taken {
+  decisions: readonly Decision[];
+}
+
+interface OutboxOptions<Answer extends Taken> {
   send: (decisions: readonly WantedDecision[]) => Promise<Answer>;
   /** The server took an act; its answer is the new truth. */
   onTaken: (answer: Answer) => void;
@@ -43,9 +52,15 @@ interface OutboxOptions<Answer> {
 }
 
 const conflictsSchema = z.object({ conflicts: z.array(decisionSchema).min(1) });
-const EMPTY: OutboxState = { acts: [], lostSinceMs: null, conflict: null, fault: null };
+const EMPTY: OutboxState = {
+  acts: [],
+  taken: [],
+  lostSinceMs: null,
+  conflict: null,
+  fault: null,
+};
 
-export class DecisionOutbox<Answer> {
+export class DecisionOutbox<Answer extends Taken> {
   private state = EMPTY;
   private sending = false;
   private timer: ReturnType<typeof setTimeout> | null = null;
@@ -131,7 +146,8 @@ export class DecisionOutbox<Answer> {
     try {
       const answer = await this.options.send(act.decisions);
       this.options.onTaken(answer);
-      this.set({ acts: this.state.acts.slice(1), lostSinceMs: null });
+      const acts = this.state.acts.slice(1);
+      this.set({ acts, taken: answer.decisions, lostSinceMs: null });
       return true;
     } catch (error) {
       return this.refuse(act, error);

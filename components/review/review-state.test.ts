@@ -7,6 +7,7 @@ import {
   sayOpenBands,
   toBandDecisions,
   toComputedCause,
+  toNewest,
   toRange,
   toShownDecisions,
   toWanted,
@@ -54,6 +55,24 @@ describe("toShownDecisions", () => {
     const next = { nominal_Hz: 63, cause: "port", reason: null } as const;
     expect(toWanted(shown, [next])[0]?.seen_version).toBe(3);
     expect(toWanted(shown, [{ ...next, nominal_Hz: 100 }])[0]?.seen_version).toBe(0);
+  });
+});
+
+describe("toNewest", () => {
+  it("keeps the later version of each band, whichever reading brought it", () => {
+    const late = [decision(50, { version: 2, cause: null }), decision(63)];
+    const early = [decision(50), decision(63, { version: 3, cause: "port" }), decision(80)];
+    for (const readings of [
+      [late, early],
+      [early, late],
+    ] as const) {
+      const newest = toNewest(...readings).toSorted((a, b) => a.nominal_Hz - b.nominal_Hz);
+      expect(newest.map((one) => [one.nominal_Hz, one.version, one.cause])).toEqual([
+        [50, 2, null],
+        [63, 3, "port"],
+        [80, 1, "limiter"],
+      ]);
+    }
   });
 });
 

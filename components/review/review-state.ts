@@ -15,6 +15,21 @@ export interface ShownDecision extends Decision {
   waiting: boolean;
 }
 
+/**
+ * Two readings of the same bands as one. A reading may have been on its way for longer than an
+ * act that it does not know of: versions only grow, so the higher one is the later.
+ */
+export function toNewest(one: readonly Decision[], other: readonly Decision[]): Decision[] {
+  const newest = new Map<number, Decision>();
+  for (const decision of [...one, ...other]) {
+    const known = newest.get(decision.nominal_Hz);
+    if (known === undefined || known.version < decision.version) {
+      newest.set(decision.nominal_Hz, decision);
+    }
+  }
+  return [...newest.values()];
+}
+
 /** By nominal frequency; what waits counts as taken, in its order. */
 export function toShownDecisions(
   inForce: readonly Decision[],

@@ -9,7 +9,7 @@ import type { DecisionCause } from "@/lib/review/review-schema";
 import { useLabSession } from "../frame/lab-session";
 import { queryKeys } from "../queries/query-keys";
 import { DecisionOutbox, type OutboxState } from "./decision-outbox";
-import { toShownDecisions, toWanted, type ShownDecision } from "./review-state";
+import { toNewest, toShownDecisions, toWanted, type ShownDecision } from "./review-state";
 
 export interface BandChoice {
   nominal_Hz: number;
@@ -84,8 +84,8 @@ export function useDecisions({ seriesId, analysisId, review, bands }: DecisionsI
   }, [waits]);
 
   const shown = useMemo(
-    () => toShownDecisions(review.decisions, state.acts, bands, account),
-    [review.decisions, state.acts, bands, account],
+    () => toShownDecisions(toNewest(review.decisions, state.taken), state.acts, bands, account),
+    [review.decisions, state.taken, state.acts, bands, account],
   );
 
   const put = (choices: readonly BandChoice[]): void => outbox.add(toWanted(shown, choices));
