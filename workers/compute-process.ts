@@ -68,7 +68,8 @@ function createPathSource(paths: Record<string, string>): SeriesSource {
       );
       return recording;
     },
-    readTable: (file) => Promise.resolve(readTable(readFileSync(pathOf(paths, file)), file)),
+    readTable: (file, columns) =>
+      Promise.resolve(readTable(readFileSync(pathOf(paths, file)), file, columns)),
   };
 }
 

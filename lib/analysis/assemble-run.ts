@@ -71,6 +71,7 @@ export function assembleRun(
     kind: run.kind,
     variant: run.variant,
     conditioning: run.conditioning,
+    ...(raw.stated === undefined ? {} : { isTable: true }),
     measuredLevelDb: toDb(meanInBand(splSource, grid.edgeHz, context.referenceBandHz)),
     latencyS: raw.latencyS,
     driftPpm: raw.driftPpm,
@@ -172,7 +173,16 @@ function toCellThd(
       ? []
       : [{ order, clean: power[c]! - floor[c]!, floor: floor[c]! }];
   });
-  return toThd(parts, isAbove(clean[c]!, raw.orders[0]!.floor[c]!) ? clean[c]! : 0);
+  const ofOrders = toThd(parts, isAbove(clean[c]!, raw.orders[0]!.floor[c]!) ? clean[c]! : 0);
+  const stated = raw.stated?.thd?.[c];
+  return fundamentalValid[c] === true && stated !== undefined ? stateThd(stated) : ofOrders;
+}
+
+/** What a table states counts before the sum of the orders that it happens to hold. */
+function stateThd(power: number): ReturnType<typeof toThd> {
+  return Number.isFinite(power)
+    ? { percent: 100 * Math.sqrt(power), quality: "measured", orders: "" }
+    : { percent: Number.NaN, quality: null, orders: "" };
 }
 
 function toBandMeasure(
@@ -200,7 +210,12 @@ function toBandMeasure(
     const total = mean(raw.orders[order - 1]!.power);
     return Number.isNaN(total) ? [] : [{ order, clean: total - noise, floor: noise }];
   });
-  const thd = toThd(parts, fundamental);
+  const statedCells = raw.stated?.thd ?? null;
+  const stated =
+    statedCells === null || !present
+      ? Number.NaN
+      : mean(statedCells.map((ratio, c) => ratio * power[c]!)) / mean(power);
+  const thd = statedCells === null ? toThd(parts, fundamental) : stateThd(stated);
   const cellSpl = splDb.subarray(first, first + CELLS_PER_BAND);
   return {
     levelDb: present ? 10 * Math.log10(clean) + fullScaleDb : Number.NaN,
@@ -231,6 +246,7 @@ function toBandMeasure(
     thdPercent: thd.percent,
     thdQuality: thd.quality,
     thdOrders: thd.orders,
+    ...(Number.isFinite(stated) ? { statedThd: stated } : {}),
   };
 }
 

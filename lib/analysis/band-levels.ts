@@ -88,7 +88,8 @@ function toBandLevel(
     uncertainty_dB: Number.isFinite(referenceGainDb - band.levelDb)
       ? orNull(COVERAGE_FACTOR * sigmaDb)
       : null,
-    snr_dB: orNull(band.snrDb),
+    // The floor of a table is assumed, not known.
+    snr_dB: run.isTable === true ? null : orNull(band.snrDb),
     thd_percent: orNull(band.thdPercent),
     thd_quality: band.thdQuality,
     thd_orders: band.thdOrders,
@@ -96,7 +97,8 @@ function toBandLevel(
       order,
       percent: quality === null || quality === "noise" ? null : orNull(100 * Math.sqrt(ratio)),
       quality,
-      floor_percent: quality === null ? null : orNull(100 * Math.sqrt(floorRatio)),
+      floor_percent:
+        quality === null || run.isTable === true ? null : orNull(100 * Math.sqrt(floorRatio)),
     })),
   };
 }

@@ -66,7 +66,9 @@ export function weighDistortion(
     return {
       verdict: "no verdict",
       ...none,
-      reason: "the third harmonic lies above the measured range",
+      reason: top.runs.some(({ isTable }) => isTable === true)
+        ? "the table holds no third harmonic there"
+        : "the third harmonic lies above the measured range",
     };
 
   const lossDb = detection.lossDb[detection.top] ?? Number.NaN;

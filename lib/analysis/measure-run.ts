@@ -55,6 +55,11 @@ export interface RawRun {
   missing: number;
   /** Level of the loopback channel, dB re full scale, and whether latency and drift come from it. */
   loopbackDb: number | null;
+  /** What a table states in place of a recording. */
+  stated?: {
+    /** [cells] THD as a power ratio to the fundamental; null without such a column. */
+    thd: Float64Array | null;
+  };
 }
 
 export interface RunShape {

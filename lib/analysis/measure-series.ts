@@ -2,6 +2,7 @@
 import { AnalysisError } from "../errors/app-error";
 import type { Warning } from "../result/result-schema";
 import type { Run, Series } from "../series/series-schema";
+import { isTableName, type ColumnChoice } from "../series/table-columns";
 import { assembleRun, toLowResponse, type AssemblyContext } from "./assemble-run";
 import { thirdOctaves, twentyFourthOctaves, type Grid } from "./bands";
 import { Plans } from "./cell-power";
@@ -13,15 +14,18 @@ import { toLevelWarnings, toRunWarnings } from "./run-warnings";
 import { measureScale, type Scale } from "./scale";
 import { toPlayedStimulus } from "./stimulus-in-use";
 import { SweepFinder } from "./sweep-in-recording";
-import { isTableName, toTableRun, toTableWarning, type RunTable } from "./table-run";
+import { toTableRun, toTableWarning, type RunTable } from "./table-run";
 import type { MeasuredSeries, OnProgress, Recording } from "./types";
 
 /** Where recordings come from: a folder, a store, or memory. */
 export interface SeriesSource {
   /** @param channel from 1. */
   readRecording(file: string, channel: number, loopbackChannel?: number): Promise<Recording>;
-  /** A microphone file, or a run that was reduced elsewhere. */
-  readTable(file: string): Promise<RunTable>;
+  /**
+   * A microphone file, or a run that was reduced elsewhere.
+   * @param columns mapped by hand; without them the head of the table tells.
+   */
+  readTable(file: string, columns?: ColumnChoice): Promise<RunTable>;
 }
 
 export interface MeasureOptions {
@@ -90,7 +94,7 @@ async function readTableRun(
   { fullScaleDb }: Scale,
   warnings: Warning[],
 ): Promise<RawRun> {
-  const table = await source.readTable(run.file);
+  const table = await source.readTable(run.file, run.columns);
   warnings.push(toTableWarning(run.file, table));
   return toTableRun(table, run.file, edgeHz, fullScaleDb);
 }

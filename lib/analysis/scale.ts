@@ -2,11 +2,11 @@
 import { AnalysisError } from "../errors/app-error";
 import type { Warning } from "../result/result-schema";
 import type { Series } from "../series/series-schema";
+import { isTableName } from "../series/table-columns";
 import type { Environment } from "../series/vocabulary";
 import { toAirLossDbPerM } from "./air-absorption";
 import { measureTone, toFullScaleDb } from "./calibration";
 import type { Plans } from "./cell-power";
-import { isTableName } from "./table-run";
 import type { Recording } from "./types";
 
 /** Pressure doubles on the ground: ground-plane results are referred to the free field. */

@@ -2,6 +2,7 @@
 import { AnalysisError } from "../errors/app-error";
 import type { Warning } from "../result/result-schema";
 import type { OrderPower, RawRun } from "./measure-run";
+import { sayHz, sayNumber } from "./say";
 import { HARMONIC_ORDERS } from "./orders";
 
 /** What the engine takes of a table of frequency and level. */
@@ -18,15 +19,11 @@ export interface RunTable {
   }[];
 }
 
-export const TABLE_EXTENSIONS = [".csv", ".tsv", ".txt", ".frd"] as const;
 const STEPS_PER_CELL = 4;
 /** A table says no floor: its numbers are taken to hold down to this, re the fundamental. */
 const ASSUMED_FLOOR = 1e-8;
 /** Stands for the window that is not known: only the scatter of a level follows from it. */
 const ASSUMED_WINDOW_S = 1;
-
-export const isTableName = (file: string): boolean =>
-  TABLE_EXTENSIONS.some((extension) => file.toLowerCase().endsWith(extension));
 
 /**
  * @param edgeHz [cells + 1] edges of excitation frequency.
@@ -58,6 +55,13 @@ export function toTableRun(
     );
   }
   const floor = power.map((p) => p * ASSUMED_FLOOR);
+  const { thdPercent } = table;
+  const thd =
+    thdPercent === undefined
+      ? null
+      : toPower(
+          thdPercent.map((percent, i) => table.levelDb[i]! + 20 * Math.log10(percent / 100)),
+        ).map((p, c) => p / power[c]!);
   const toOrder = (order: number): OrderPower => {
     const found = table.harmonics.find((h) => h.order === order);
     return {
@@ -82,19 +86,40 @@ export function toTableRun(
     snrDb: unknown,
     missing: 0,
     loopbackDb: null,
+    stated: { thd },
   };
 }
 
-export function toTableWarning(file: string, { harmonics }: RunTable): Warning {
-  const none =
-    harmonics.length === 0
-      ? "It holds no harmonics, so distortion limits and causes that need them are not assessed."
-      : "Its harmonics are taken as measured.";
+export function toTableWarning(file: string, table: RunTable): Warning {
+  const none = sayDistortion(table);
+  const coarse = sayCoarse(table.frequencyHz);
   return {
     code: "run.table",
-    message: `${file} is a table: noise floor, clipping, latency and the true step are not known. ${none}`,
+    message: `${file} is a table: noise floor, clipping, latency and the true step are not known. ${none}${coarse === null ? "" : ` ${coarse}`}`,
     file,
   };
+}
+
+/** Three rows an octave: one per third octave. */
+const COARSE_OCTAVES = 1 / 3 + 0.01;
+
+/** Says where bands are read between rows that lie further apart than a band; null where they do not. */
+export function sayCoarse(frequencyHz: readonly number[]): string | null {
+  const gaps = frequencyHz.slice(1).map((hz, i) => Math.log2(hz / frequencyHz[i]!));
+  const widest = Math.max(...gaps);
+  const at = frequencyHz[gaps.indexOf(widest)];
+  return widest > COARSE_OCTAVES && at !== undefined
+    ? `Its rows lie up to ${sayNumber(widest, 1)} octaves apart (above ${sayHz(Number(at.toPrecision(3)))}): bands there are read from a straight line between two rows.`
+    : null;
+}
+
+function sayDistortion({ harmonics, thdPercent }: RunTable): string {
+  if (harmonics.length > 0 && thdPercent !== undefined)
+    return "Its harmonics and its THD are taken as measured.";
+  if (harmonics.length > 0) return "Its harmonics are taken as measured.";
+  return thdPercent === undefined
+    ? "It holds no harmonics, so distortion limits and causes that need them are not assessed."
+    : "Its THD is taken as measured; it holds no harmonics, so causes that need them are not assessed.";
 }
 
 function toLevels(

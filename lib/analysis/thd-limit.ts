@@ -12,6 +12,9 @@ export type ThdVerdict = "met" | "failed" | "unknown";
  * floor stay under it, failed if the measured ones alone exceed it.
  */
 export function judgeThd(group: LevelGroup, b: number, thdPercent: number): ThdVerdict {
+  const stated = statedThdOf(group, b);
+  if (stated !== null && Number.isFinite(group.gainDb[b]))
+    return stated > (thdPercent / 100) ** 2 ? "failed" : "met";
   const present = harmonicsOf(group, b).filter(({ quality }) => quality !== null);
   if (present.length === 0 || !Number.isFinite(group.gainDb[b])) return "unknown";
   let measured = 0;
@@ -25,8 +28,17 @@ export function judgeThd(group: LevelGroup, b: number, thdPercent: number): ThdV
   return most < limit ? "met" : "unknown";
 }
 
+/** THD that tables state, as a power ratio; null where a run of the group is a recording or states none. */
+function statedThdOf({ runs }: LevelGroup, b: number): number | null {
+  const stated = runs.flatMap((run) => run.bands[b]?.statedThd ?? []);
+  if (stated.length === 0 || stated.length < runs.length) return null;
+  return stated.reduce((sum, ratio) => sum + ratio, 0) / stated.length;
+}
+
 /** THD of a group in band `b`, ratio of amplitudes, and whether every component that counts is measured. */
 function thdOf(group: LevelGroup, b: number): { ratio: number; measured: boolean; sigma: number } {
+  const stated = statedThdOf(group, b);
+  if (stated !== null) return { ratio: Math.sqrt(stated), measured: true, sigma: LEAST_THD_SIGMA };
   const present = harmonicsOf(group, b).filter(
     ({ quality }) => quality === "measured" || quality === "uncertain",
   );
@@ -40,9 +52,12 @@ function thdOf(group: LevelGroup, b: number): { ratio: number; measured: boolean
     ratio: Math.sqrt(power),
     // What is uncertain may ride along as long as it cannot move the sum by more than a tenth.
     measured: power > 0 && sure >= 0.8 * power,
-    sigma: Math.max(0.0175, Math.sqrt(floor / Math.max(power, 1e-30)) / Math.SQRT2),
+    sigma: Math.max(LEAST_THD_SIGMA, Math.sqrt(floor / Math.max(power, 1e-30)) / Math.SQRT2),
   };
 }
+
+/** 0.15 dB, as a share: no THD is known better. */
+const LEAST_THD_SIGMA = 0.0175;
 
 /** Harmonics do not fit in bands whose upper edge passes half the highest usable frequency. */
 export function isThdOutOfReach(band: ThirdOctave, topHz: number): boolean {

@@ -51,8 +51,10 @@ export interface BandMeasure {
   }[];
   thdPercent: number;
   thdQuality: Quality | null;
-  /** "2-5". */
+  /** "2-5"; "" where a table states THD without its orders. */
   thdOrders: string;
+  /** THD that a table states, as a power ratio to the fundamental; absent for recordings. */
+  statedThd?: number;
 }
 
 /** A run after deconvolution: the end of the engine's front. */
@@ -64,6 +66,8 @@ export interface MeasuredRun {
   kind: RunKind;
   variant: string | undefined;
   conditioning: Conditioning | undefined;
+  /** Reduced elsewhere: noise floor, clipping and true step are not known. */
+  isTable?: boolean;
   measuredLevelDb: number;
   latencyS: number;
   driftPpm: number;

@@ -49,7 +49,12 @@ describe("readTable", () => {
 
   it("takes columns that were mapped by hand", () => {
     const bytes = new TextEncoder().encode("a b c\n1 80 20\n2 81 40\n");
-    const table = readTable(bytes, "run.txt", { frequency: 2, level: 1, harmonics: [] });
+    const table = readTable(bytes, "run.txt", {
+      frequency: 3,
+      level: 2,
+      harmonics: [],
+      kilohertz: false,
+    });
     expect([table.frequencyHz, table.levelDb]).toEqual([
       [20, 40],
       [80, 81],

@@ -1,9 +1,7 @@
 /** Tables of frequency and level: microphone files, and runs that were reduced elsewhere. */
 import { FileError } from "../errors/app-error";
+import { listColumns, type ColumnChoice, type HarmonicUnit } from "../series/table-columns";
 import { readTableRows } from "./table-rows";
-
-export const HARMONIC_UNITS = ["dB SPL", "dB re fundamental", "percent"] as const;
-export type HarmonicUnit = (typeof HARMONIC_UNITS)[number];
 
 /** Which column holds what, counted from 0. */
 export interface TableColumns {
@@ -35,7 +33,7 @@ export interface FrequencyTable {
  * @param byHand columns chosen by a person, in place of those that the head tells.
  * @throws FileError "table.not-readable", "table.column-missing", "table.too-large"
  */
-export function readTable(bytes: Uint8Array, file: string, byHand?: TableColumns): FrequencyTable {
+export function readTable(bytes: Uint8Array, file: string, byHand?: ColumnChoice): FrequencyTable {
   const { head, rows } = readTableRows(bytes, file);
   const width = Math.max(0, ...rows.map((row) => row.length));
   if (rows.length === 0 || width < 2) {
@@ -43,7 +41,8 @@ export function readTable(bytes: Uint8Array, file: string, byHand?: TableColumns
       file,
     });
   }
-  const columns = byHand ?? recogniseColumns(head, width, file);
+  const columns =
+    byHand === undefined ? recogniseColumns(head, width, file) : takeChoice(byHand, width, file);
   const points = rows
     .filter((row) => row[columns.frequency]! > 0 && Number.isFinite(row[columns.level]))
     .sort((a, b) => a[columns.frequency]! - b[columns.frequency]!);
@@ -62,6 +61,27 @@ export function readTable(bytes: Uint8Array, file: string, byHand?: TableColumns
     })),
     head,
     columns,
+  };
+}
+
+/** From 1, as people count, to 0. */
+function takeChoice(choice: ColumnChoice, width: number, file: string): TableColumns {
+  const beyond = listColumns(choice).find((column) => column > width);
+  if (beyond !== undefined) {
+    throw new FileError(
+      "table.column-missing",
+      `${file} has ${width} columns; column ${beyond} was asked for. Map the columns again.`,
+      { file, details: { columns: width, column: beyond } },
+    );
+  }
+  const { frequency, level, phase, thd, harmonics, kilohertz } = choice;
+  return {
+    frequency: frequency - 1,
+    level: level - 1,
+    ...(phase === undefined ? {} : { phase: phase - 1 }),
+    ...(thd === undefined ? {} : { thd: thd - 1 }),
+    harmonics: harmonics.map(({ column, ...rest }) => ({ ...rest, column: column - 1 })),
+    kilohertz,
   };
 }
 
@@ -129,7 +149,8 @@ function recogniseColumns(head: readonly string[], width: number, file: string):
 function toKind(name: string): "frequency" | "level" | "phase" | "thd" | number | null {
   const order = ORDER.exec(name);
   if (order !== null) return Number(order[1] ?? order[2] ?? order[3]);
-  if (THD.test(name)) return "thd";
+  // THD in decibels is left to a person: the column is read as percent.
+  if (THD.test(name)) return /\bdb/.test(name) ? null : "thd";
   if (PHASE.test(name)) return "phase";
   if (FREQUENCY.test(name)) return "frequency";
   return LEVEL.test(name) ? "level" : null;

@@ -8,7 +8,7 @@ export interface TableRows {
   rows: number[][];
 }
 
-const LARGEST_BYTES = 16 * 2 ** 20;
+export const LARGEST_TABLE_BYTES = 16 * 2 ** 20;
 const COMMENT = /^\s*(?:[*;#!%]|\/\/)+\s?/;
 const NUMBER = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:e[+-]?\d+)?$/i;
 
@@ -24,13 +24,7 @@ interface Dialect {
  * @throws FileError "table.too-large", "table.not-readable"
  */
 export function readTableRows(bytes: Uint8Array, file: string): TableRows {
-  if (bytes.length > LARGEST_BYTES) {
-    throw new FileError(
-      "table.too-large",
-      `${file} holds ${bytes.length} bytes; tables up to ${LARGEST_BYTES} are read.`,
-      { file },
-    );
-  }
+  if (bytes.length > LARGEST_TABLE_BYTES) throw toTooLarge(bytes.length, file);
   const text = decode(bytes);
   if (text.includes("\0"))
     throw new FileError("table.not-readable", `${file} is no text: it holds zero bytes.`, { file });
@@ -46,6 +40,13 @@ export function readTableRows(bytes: Uint8Array, file: string): TableRows {
   const columns = Math.max(0, ...rows.slice(0, 50).map((row) => row.length));
   return { head: head.length === columns ? head : [], rows };
 }
+
+export const toTooLarge = (bytes: number, file: string): FileError =>
+  new FileError(
+    "table.too-large",
+    `${file} holds ${bytes} bytes; tables up to ${LARGEST_TABLE_BYTES} are read.`,
+    { file },
+  );
 
 function decode(bytes: Uint8Array): string {
   if (bytes[0] === 0xff && bytes[1] === 0xfe) return new TextDecoder("utf-16le").decode(bytes);

@@ -44,11 +44,12 @@ function toResultRun(run: MeasuredRun, splValid: boolean): ResultRun {
     clipped: run.clipped,
     snr_dB: run.snrDb,
     spl_dB: [...run.splDb],
-    floor_dB: [...run.floorDb],
+    // The floor of a table is assumed, not known.
+    floor_dB: toFloor(run, run.floorDb),
     harmonics: run.harmonics.map(({ order, splDb, floorDb, quality }) => ({
       order,
       spl_dB: [...splDb],
-      floor_dB: [...floorDb],
+      floor_dB: toFloor(run, floorDb),
       quality,
     })),
     thd_percent: [...run.thdPercent],
@@ -56,6 +57,9 @@ function toResultRun(run: MeasuredRun, splValid: boolean): ResultRun {
     thd_orders: run.thdOrders,
   };
 }
+
+const toFloor = ({ isTable }: MeasuredRun, floorDb: Float64Array): number[] =>
+  isTable === true ? Array.from(floorDb, () => Number.NaN) : [...floorDb];
 
 /** What a person stated stands as stated. */
 const AS_STATED = new Set([

@@ -17,7 +17,8 @@ export function createFolderSource(folder: string): SeriesSource {
       );
       return recording;
     },
-    readTable: (file) => Promise.resolve(readTable(readFileSync(locate(folder, file)), file)),
+    readTable: (file, columns) =>
+      Promise.resolve(readTable(readFileSync(locate(folder, file)), file, columns)),
   };
 }
 

@@ -3,6 +3,7 @@
  * Strict everywhere: an unknown key is refused by name (docs/contract.md).
  */
 import { z } from "zod";
+import { columnChoiceSchema, isTableName } from "./table-columns";
 import { ENVIRONMENTS, RUN_KINDS } from "./vocabulary";
 
 const finite = z.number().finite();
@@ -101,6 +102,12 @@ export const runSchema = z
     /** A train: this many sweeps, period_s apart. */
     sweeps: z.number().int().min(1).max(1000).optional(),
     period_s: positive.max(3600).optional(),
+    /** Of a table: which column holds what, where its head does not tell. */
+    columns: columnChoiceSchema.optional(),
+  })
+  .refine((r) => r.columns === undefined || isTableName(r.file), {
+    error: "are of tables only: .csv, .tsv, .txt or .frd",
+    path: ["columns"],
   })
   .refine((r) => (r.sweeps ?? 1) === 1 || r.period_s !== undefined, {
     error: "is needed with sweeps: a train is told by both",

@@ -1,5 +1,6 @@
 /** Recordings of every shape that a bench brings give the level that is in them. */
 import { describe, expect, it } from "vitest";
+import { analyseSeries } from "../../lib/analysis/analyse-series";
 import { measureSeries } from "../../lib/analysis/measure-series";
 import { synthesiseStimulus, toStimulusLayout, toSweepTiming } from "../../lib/analysis/sweep";
 import type { MeasuredRun, MeasuredSeries, Recording } from "../../lib/analysis/types";
@@ -378,5 +379,45 @@ describe("tables in place of recordings", () => {
       ["run.table", "76.csv"],
       ["run.table", "86.frd"],
     ]);
+  });
+
+  it("state THD without its orders: it decides its criterion, and no floor is claimed", async () => {
+    const series = seriesSchema.parse({
+      loudspeaker: "Reduced",
+      environment: "anechoic",
+      distance_m: 1,
+      stimulus: { start_Hz: 20, stop_Hz: 20_000, length_s: 2.5, rate_Hz: RATE_HZ },
+      runs: [76, 86, 96].map((level) => ({ file: `${level}.csv`, level_dB: level })),
+    });
+    const stated = (percent: number) => [20, 100, 1000, 20_000].map(() => percent);
+    const thd: Record<string, number> = { "76.csv": 0.5, "86.csv": 1, "96.csv": 4 };
+    const result = await analyseSeries(series, {
+      readRecording: () => Promise.reject(new Error("no recording")),
+      readTable: (file) =>
+        Promise.resolve({
+          ...table(file === "96.csv" ? 95.5 : Number(file.slice(0, 2))),
+          thdPercent: stated(thd[file] ?? Number.NaN),
+        }),
+    });
+    const band = result.bands.find((b) => b.nominal_Hz === 1000);
+    expect(band?.levels.map((l) => [l.thd_percent, l.thd_quality, l.thd_orders])).toEqual([
+      [0.5, "measured", ""],
+      [1, "measured", ""],
+      [4, "measured", ""],
+    ]);
+    expect(band?.levels.map((l) => [l.compression_dB, l.snr_dB])).toEqual([
+      [0, null],
+      [0, null],
+      [0.5, null],
+    ]);
+    const limit = (percent: number) =>
+      band?.limits.find((l) => l.criterion.thd_percent === percent);
+    expect(limit(3)).toMatchObject({ status: "found", nominal_dB: 86, low_dB: 86, high_dB: 96 });
+    expect(limit(10)).toMatchObject({ status: "not reached", nominal_dB: 96 });
+    expect(band?.cause_reason).toContain("the table holds no third harmonic");
+    expect(result.runs.every((r) => r.floor_dB.every((x) => x === null))).toBe(true);
+    expect(result.warnings.find((w) => w.file === "76.csv")?.message).toContain(
+      "Its THD is taken as measured; it holds no harmonics",
+    );
   });
 });
