@@ -92,6 +92,7 @@ function toRequest(
       file: run.file_name,
       digest: run.digest,
       channel: run.channel,
+      columns: run.columns ?? undefined,
       place: placeOf(run.slot),
     },
     plan: series.plan,

@@ -1,6 +1,7 @@
 /** A finished upload becomes a run: row, place, trail and wake-up call in one transaction. */
 import type { FollowUp } from "../../lib/jobs/follow-up";
 import { isLive } from "../../lib/runs/ladder";
+import type { ColumnChoice } from "../../lib/series/table-columns";
 import { placeRun } from "../../lib/runs/place-run";
 import type { Trx } from "../client";
 import type { LabScope } from "../in-lab";
@@ -16,6 +17,8 @@ export interface ArrivedFile {
   /** What the tester chose; null: the name decides. */
   slot: string | null;
   channel: number;
+  /** Of a table: which column holds what, where a person said so. */
+  columns: ColumnChoice | null;
   fileName: string;
   /** SHA-256 of bytes that lie in the store already. */
   digest: string;
@@ -43,6 +46,7 @@ export async function acceptRun(
       isLive(run.state) &&
       run.digest === file.digest &&
       run.channel === file.channel &&
+      JSON.stringify(run.columns) === JSON.stringify(file.columns) &&
       run.slot === placement.slot &&
       run.wanted_slot === placement.wantedSlot,
   );
@@ -60,6 +64,7 @@ export async function acceptRun(
     fileName: file.fileName,
     digest: file.digest,
     channel: file.channel,
+    columns: file.columns,
     uploadedBy: by.accountId,
     uploadedByToken: by.tokenId ?? null,
   });

@@ -60,6 +60,7 @@ export function toSeriesSource({ series, loudspeaker, planned, runs }: Capture):
           file: toStoredName(place, run.file_name),
           digest: run.digest,
           channel: run.channel,
+          columns: run.columns,
         },
       ];
     }),

@@ -12,6 +12,7 @@ import * as publications from "./20261201t1101-publications";
 import * as mail from "./20261201t1102-mail";
 import * as publicLookups from "./20261201t1103-public-lookups";
 import * as labLookup from "./20261201t1104-lab-lookup";
+import * as tableColumns from "./20261201t1310-table-columns";
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0900-people": people,
@@ -26,4 +27,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t1102-mail": mail,
   "20261201t1103-public-lookups": publicLookups,
   "20261201t1104-lab-lookup": labLookup,
+  "20261201t1310-table-columns": tableColumns,
 };

@@ -3,6 +3,7 @@ import { sql, type Selectable } from "kysely";
 import { AppError } from "../../lib/errors/app-error";
 import type { ArrivalReport, RunState } from "../../lib/runs/arrival-schema";
 import type { RecordingRole } from "../../lib/series/planned-runs";
+import type { ColumnChoice } from "../../lib/series/table-columns";
 import type { Db, Trx } from "../client";
 import type { RunsTable } from "../schema/runs";
 import type { SlotExcusesTable } from "../schema/slot-excuses";
@@ -41,6 +42,7 @@ export interface NewRun {
   fileName: string;
   digest: string;
   channel: number;
+  columns?: ColumnChoice | null;
   uploadedBy: string;
   uploadedByToken: string | null;
 }
@@ -61,6 +63,7 @@ export async function createRun(trx: Trx, labId: string, run: NewRun): Promise<s
       file_name: run.fileName,
       digest: run.digest,
       channel: run.channel,
+      columns: run.columns == null ? null : JSON.stringify(run.columns),
       uploaded_by: run.uploadedBy,
       uploaded_by_token: run.uploadedByToken,
     })

@@ -1,5 +1,6 @@
 /** Uploads under way. */
 import { sql, type Selectable } from "kysely";
+import type { ColumnChoice } from "../../lib/series/table-columns";
 import type { Db, Trx } from "../client";
 import type { UploadsTable } from "../schema/uploads";
 
@@ -13,6 +14,7 @@ export async function createUpload(
     seriesId: string;
     slot: string | null;
     channel: number;
+    columns?: ColumnChoice | null;
     fileName: string;
     bytes: number;
     accountId: string;
@@ -28,6 +30,7 @@ export async function createUpload(
       series_id: upload.seriesId,
       slot: upload.slot,
       channel: upload.channel,
+      columns: upload.columns == null ? null : JSON.stringify(upload.columns),
       file_name: upload.fileName,
       bytes: upload.bytes,
       account_id: upload.accountId,

@@ -1,6 +1,7 @@
 import type { ColumnType, Generated } from "kysely";
 import type { ArrivalReport, RunState } from "../../lib/runs/arrival-schema";
 import type { RecordingRole } from "../../lib/series/planned-runs";
+import type { ColumnChoice } from "../../lib/series/table-columns";
 import type { Id, MaybeJson, MaybeMoment, MaybeNumber, MaybeText, Moment } from "./columns";
 
 export interface RunsTable {
@@ -20,6 +21,8 @@ export interface RunsTable {
   digest: string;
   /** Microphone channel, from 1. */
   channel: Generated<number>;
+  /** Of a table: which column holds what, where a person said so. */
+  columns: MaybeJson<ColumnChoice>;
   state: Generated<RunState>;
   report: MaybeJson<ArrivalReport>;
   reason: MaybeText;

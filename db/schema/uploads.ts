@@ -1,5 +1,6 @@
 import type { Generated } from "kysely";
-import type { MaybeMoment, MaybeText, Moment } from "./columns";
+import type { ColumnChoice } from "../../lib/series/table-columns";
+import type { MaybeJson, MaybeMoment, MaybeText, Moment } from "./columns";
 
 /** An upload under way; not yet a run. */
 export interface UploadsTable {
@@ -9,6 +10,8 @@ export interface UploadsTable {
   slot: MaybeText;
   /** Microphone channel, from 1. */
   channel: Generated<number>;
+  /** Of a table: which column holds what, where a person said so. */
+  columns: MaybeJson<ColumnChoice>;
   file_name: string;
   bytes: number;
   received: Generated<number>;

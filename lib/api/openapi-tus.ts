@@ -42,6 +42,9 @@ const FILE: readonly ErrorCode[] = [
   "audio.format-unsupported",
   "audio.channel-missing",
   "audio.too-large",
+  "table.not-readable",
+  "table.column-missing",
+  "table.too-large",
   "storage.full",
   "upload.too-large",
   "upload.offset",
@@ -57,11 +60,14 @@ export function toTusPaths(toProblems: ToProblems): Record<string, JsonObject> {
         operationId: "createUpload",
         summary: "Begin a resumable upload of a recording (tus 1.0)",
         description:
-          "Upload-Metadata holds seriesId and fileName, and optionally slot and channel, each base64.",
+          "Upload-Metadata holds seriesId and fileName, and optionally slot, channel and, for a table (.csv, .tsv, .txt, .frd) whose head does not tell, columns as JSON, each base64.",
         parameters: [
           RESUMABLE,
           header("Upload-Length", "Bytes of the whole file."),
-          header("Upload-Metadata", "seriesId, fileName, slot, channel; values in base64."),
+          header(
+            "Upload-Metadata",
+            "seriesId, fileName, slot, channel, columns; values in base64.",
+          ),
         ],
         responses: {
           201: {

@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { arrivalReportSchema, RUN_STATES } from "../runs/arrival-schema";
+import { columnChoiceSchema } from "../series/table-columns";
 import { RECORDING_ROLES } from "../series/planned-runs";
 import { idSchema, personSchema, reasonSchema, timeSchema } from "./common";
 import { defineOperation } from "./operation";
@@ -154,6 +155,20 @@ export const uploadMetadataSchema = z.strictObject({
   fileName: z.string().trim().min(1).max(200),
   slot: z.string().max(60).optional(),
   channel: z.coerce.number().int().min(1).max(64).optional(),
+  /** Of a table, as JSON: which column holds what, where its head does not tell. */
+  columns: z
+    .string()
+    .max(2000)
+    .transform((text, context) => {
+      try {
+        return JSON.parse(text) as unknown;
+      } catch {
+        context.addIssue({ code: "custom", message: "must be JSON" });
+        return z.NEVER;
+      }
+    })
+    .pipe(columnChoiceSchema)
+    .optional(),
 });
 export type UploadMetadata = z.infer<typeof uploadMetadataSchema>;
 export const UPLOADS_PATH = "/api/v1/uploads";

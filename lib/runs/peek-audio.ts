@@ -3,6 +3,7 @@ import { toByteSource } from "../audio/byte-source";
 import { isFlac } from "../audio/read-flac";
 import { parseWavHeader } from "../audio/wav-header";
 import { FileError } from "../errors/app-error";
+import { isTableName } from "../series/table-columns";
 
 /** As many bytes tell one kind of file from another. */
 export const PEEK_BYTES = 12;
@@ -13,6 +14,8 @@ export const PEEK_BYTES = 12;
  *   is whole is seen when it is.
  */
 export function peekAudio(head: Uint8Array, fileName: string): void {
+  // Any text may be a table: it is read as soon as it is whole.
+  if (isTableName(fileName)) return;
   if (isFlac(toByteSource(head))) return;
   try {
     parseWavHeader(toByteSource(head), fileName);

@@ -86,6 +86,29 @@ describe("toSeriesJson", () => {
     expect(series.ambient).toBeUndefined();
   });
 
+  it("needs no calibration where all runs are tables, and keeps how their columns were mapped", () => {
+    const columns = { frequency: 2, level: 1, harmonics: [], kilohertz: false };
+    const runs = without("calibrator-before", "calibrator-after", "ambient").map((run) => ({
+      ...run,
+      file: run.file.replace(".wav", ".csv"),
+      columns: run.levelDb === 86 ? columns : null,
+    }));
+    const { series } = toSeriesJson({ loudspeaker, plan, runs });
+    expect(series.calibration).toBeUndefined();
+    expect(series.runs.map((run) => run.columns)).toEqual([
+      undefined,
+      columns,
+      undefined,
+      undefined,
+      undefined,
+      undefined,
+    ]);
+    const mixed = runs.map((run, at) => (at === 0 ? { ...run, file: "76.wav" } : run));
+    expect(() => toSeriesJson({ loudspeaker, plan, runs: mixed })).toThrow(
+      expect.objectContaining({ code: "calibration.missing" }) as Error,
+    );
+  });
+
   it("names the microphone file with its own digest", () => {
     const microphone = { file_name: "capsule 4.txt", digest: "a".repeat(64), kind: "correction" };
     const withFile = planSchema.parse({ ...plan, microphone });

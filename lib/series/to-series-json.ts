@@ -6,6 +6,7 @@ import { AnalysisError } from "../errors/app-error";
 import type { Plan } from "./plan-schema";
 import type { RecordingRole } from "./planned-runs";
 import { seriesSchema, type Run, type Series } from "./series-schema";
+import { isTableName, type ColumnChoice } from "./table-columns";
 
 /** A recording that may enter an analysis. */
 export interface UsableRun {
@@ -17,6 +18,8 @@ export interface UsableRun {
   file: string;
   digest: string;
   channel: number;
+  /** Of a table: which column holds what, where a person said so. */
+  columns?: ColumnChoice | null;
 }
 
 export interface SeriesSource {
@@ -67,7 +70,7 @@ export function toSeriesJson({ loudspeaker, plan, runs }: SeriesSource): SeriesF
     ...(loudspeaker.tuningHz === null ? {} : { tuning_Hz: loudspeaker.tuningHz }),
     reference_band_Hz: plan.reference_band_Hz,
     stimulus: { ...plan.sweep },
-    calibration: toCalibration(plan, withRole("calibrator-before"), withRole("calibrator-after")),
+    ...toCalibration(plan, runs),
     ...(microphone === null
       ? {}
       : { microphone: { file: MICROPHONE_FILE, kind: microphone.kind } }),
@@ -89,24 +92,29 @@ const MICROPHONE_FILE = "microphone.txt";
 
 function toCalibration(
   plan: Plan,
-  before: UsableRun | undefined,
-  after: UsableRun | undefined,
-): Record<string, unknown> {
+  runs: readonly UsableRun[],
+): { calibration?: Record<string, unknown> } {
   const { by, level_dB, frequency_Hz, full_scale_dB } = plan.calibration;
-  if (by === "sensitivity" && full_scale_dB !== null) return { full_scale_dB };
+  if (by === "sensitivity" && full_scale_dB !== null) return { calibration: { full_scale_dB } };
+  const before = runs.find((run) => run.role === "calibrator-before");
+  const after = runs.find((run) => run.role === "calibrator-after");
   // One calibrator recording out of two still calibrates.
   const first = before ?? after;
   if (first === undefined) {
+    // Tables state their levels themselves.
+    if (runs.every((run) => run.levelDb === null || isTableName(run.file))) return {};
     throw new AnalysisError(
       "calibration.missing",
       "No calibrator recording is usable, so levels cannot be told. Record the calibrator at the same input gain, or keep the take with a reason.",
     );
   }
   return {
-    file: first.file,
-    level_dB,
-    frequency_Hz,
-    ...(before !== undefined && after !== undefined ? { after_file: after.file } : {}),
+    calibration: {
+      file: first.file,
+      level_dB,
+      frequency_Hz,
+      ...(before !== undefined && after !== undefined ? { after_file: after.file } : {}),
+    },
   };
 }
 
@@ -119,6 +127,7 @@ function toRun(run: UsableRun, plan: Plan): Partial<Run>[] {
       level_dB: run.levelDb,
       kind,
       channel: run.channel,
+      ...(run.columns == null ? {} : { columns: run.columns }),
       ...(run.role === "long-term" ? { conditioning: plan.conditioning } : {}),
       ...(run.variant === null ? {} : { variant: run.variant }),
     },

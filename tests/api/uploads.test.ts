@@ -7,7 +7,8 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { z } from "zod";
 import { inLab } from "../../db/in-lab";
 import { problemSchema } from "../../lib/api/common";
-import { getRun, listRuns } from "../../lib/api/runs";
+import { getResult } from "../../lib/api/analyses";
+import { actOnRun, excuseSlot, getRun, listRuns } from "../../lib/api/runs";
 import { stagingFolder, storeFolder } from "../../lib/storage/folders";
 import { makeTestLab, makeTestMember, type TestMember } from "../support/lab-bench";
 import { makeMalformedFiles } from "../support/malformed-wav";
@@ -15,7 +16,15 @@ import { endLife } from "../support/processes";
 import { seededRandom } from "../support/seeded-random";
 import { getTestSeries, type TestFile } from "../support/test-series";
 import { createTus, headTus, patchAndCut, patchTus, uploadWhole } from "../support/tus";
-import { call, openApiBench, planTestSeries, target, until, type ApiBench } from "./support";
+import {
+  call,
+  openApiBench,
+  planTestSeries,
+  seriesInState,
+  target,
+  until,
+  type ApiBench,
+} from "./support";
 
 let bench: ApiBench;
 let seriesId = "";
@@ -248,6 +257,88 @@ describe("a file that is no recording", () => {
     const location = created.headers.get("location") ?? "";
     const problem = await problemIn(await patchTus(target(bench), location, 0, one.bytes));
     expect(problem.code).toBe("audio.channel-missing");
+  });
+});
+
+describe("a table in place of a recording", () => {
+  const send = async (name: string, text: string, columns?: unknown) => {
+    const bytes = new TextEncoder().encode(text);
+    const created = await createTus(target(bench), bytes.length, {
+      seriesId: tables,
+      fileName: name,
+      ...(columns === undefined ? {} : { columns: JSON.stringify(columns) }),
+    });
+    if (created.status !== 201) return problemIn(created);
+    const location = created.headers.get("location") ?? "";
+    const sent = await patchTus(target(bench), location, 0, bytes);
+    return sent.ok ? sent.headers.get("tidemark-run-id") : problemIn(sent);
+  };
+  const frequencies = Array.from({ length: 241 }, (_, i) => 20 * 10 ** (i / 80));
+  let tables = "";
+
+  it("is refused while nobody can tell its columns, and taken with them", async () => {
+    tables = (await planTestSeries(bench)).id;
+    const mute = ["a;b;c", ...frequencies.map((hz) => `0,5;76,0;${hz.toFixed(3)}`)].join("\n");
+    expect(await send("76.csv", mute)).toMatchObject({ code: "table.column-missing" });
+    expect(
+      await send("76.csv", mute, { frequency: 4, level: 2 }),
+      "a column that is not there",
+    ).toMatchObject({ code: "table.column-missing" });
+    expect(await send("76.csv", mute, { frequency: 3, level: 3 })).toMatchObject({
+      code: "request.invalid",
+    });
+    expect(await send("notes.txt", "Hello, this is prose.")).toMatchObject({
+      code: "table.not-readable",
+    });
+    const runId = await send("76_short.csv", mute, { frequency: 3, level: 2, thd: 1 });
+    if (typeof runId !== "string") throw new Error(JSON.stringify(runId));
+    const run = await until(
+      bench,
+      () => call(bench, getRun, { params: { runId } }),
+      ({ state }) => state !== "checking",
+    );
+    expect(run).toMatchObject({ state: "passed", slot: "short-76" });
+    expect(run.report?.measured_level_dB).toBeCloseTo(76, 2);
+    expect(run.report?.checks[0]?.finding).toContain(
+      "frequency in column 3, level in column 2, THD in column 1",
+    );
+  });
+
+  it("is no calibrator; a series of tables alone is analysed as far as tables go", async () => {
+    const head = "Freq (Hz)\tSPL (dB)\tTHD (%)";
+    const rows = frequencies.map((hz) => `${hz.toFixed(3)}\t85.0\t2.0`);
+    const text = [head, ...rows].join("\n");
+    const calibrator = await send("calibrator.tsv", text);
+    if (typeof calibrator !== "string") throw new Error(JSON.stringify(calibrator));
+    const refused = await until(
+      bench,
+      () => call(bench, getRun, { params: { runId: calibrator } }),
+      ({ state }) => state !== "checking",
+    );
+    expect(refused.report?.checks.find((c) => c.verdict === "fail")?.title).toBe(
+      "a table is no recording",
+    );
+    await call(bench, actOnRun, {
+      params: { runId: calibrator },
+      body: { act: "exclude", reason: "tables state their levels" },
+    });
+    expect(typeof (await send("86_short.tsv", text))).toBe("string");
+    const { slots } = await call(bench, listRuns, { params: { seriesId: tables } });
+    for (const { slot } of slots.filter((s) => !s.slot.startsWith("short-"))) {
+      await call(bench, excuseSlot, {
+        params: { seriesId: tables, slot },
+        body: { reason: "tables state their levels" },
+      });
+    }
+    const series = await seriesInState(bench, tables, "in review", "analysis failed");
+    const analysisId = series.latest_done_analysis?.id ?? "";
+    const result = await call(bench, getResult, { params: { analysisId } });
+    const band = result.bands.find((b) => b.nominal_Hz === 1000);
+    expect(band?.levels.map((l) => [l.spl_dB, l.compression_dB, l.thd_percent])).toEqual([
+      [76, 0, 0.5],
+      [85, 1, 2],
+    ]);
+    expect(result.warnings.filter((w) => w.code === "run.table")).toHaveLength(2);
   });
 });
 

@@ -63,6 +63,7 @@ export async function createUpload(
     seriesId: metadata.seriesId,
     slot: metadata.slot ?? null,
     channel: metadata.channel ?? 1,
+    columns: metadata.columns ?? null,
     fileName: metadata.fileName,
     bytes,
     accountId: caller.accountId,

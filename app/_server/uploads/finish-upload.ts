@@ -15,7 +15,7 @@ import { inLab } from "../../../db/in-lab";
 import { acceptRun } from "../../../db/acts/accept-run";
 import { deleteUpload, finishUpload as endUpload, lockUpload } from "../../../db/queries/uploads";
 import type { UploadRow } from "../../../db/queries/uploads";
-import { readAudioHead } from "../../../lib/audio/read-audio-head";
+import { readFileHead } from "../../../lib/audio/read-file-head";
 import { withFileSource } from "../../../lib/audio/byte-source";
 import { AppError, FileError } from "../../../lib/errors/app-error";
 import type { FollowUp } from "../../../lib/jobs/follow-up";
@@ -33,7 +33,7 @@ export interface FinishTools {
 
 /**
  * @returns the run it became, also where somebody else finished it just now.
- * @throws FileError "audio.*": then nothing of the file stays; AppError "upload.offset",
+ * @throws FileError "audio.*", "table.*": then nothing of the file stays; AppError "upload.offset",
  *   "upload.not-found", "storage.full"
  */
 export async function finishUpload(
@@ -46,7 +46,7 @@ export async function finishUpload(
   await requireWhole(path, upload);
   try {
     const media = await withFileSource(path, (source) =>
-      readAudioHead(source, upload.file_name, upload.channel),
+      readFileHead(source, upload.file_name, upload.channel, upload.columns ?? undefined),
     );
     const digest = await digestFile(path);
     await store.put(path, digest);
@@ -60,6 +60,7 @@ export async function finishUpload(
         seriesId: row.series_id,
         slot: row.slot,
         channel: row.channel,
+        columns: row.columns,
         fileName: row.file_name,
         digest,
         bytes: row.bytes,

@@ -2,6 +2,7 @@
 import type { ByteSource } from "../../audio/byte-source";
 import type { LabSettings } from "../../labs/settings-schema";
 import type { Plan } from "../../series/plan-schema";
+import type { ColumnChoice } from "../../series/table-columns";
 import type { PlannedRun } from "../../series/planned-runs";
 import type { ArrivalReport, RunState } from "../arrival-schema";
 
@@ -12,6 +13,8 @@ export interface ArrivalRequest {
     digest: string;
     /** From 1. */
     channel: number;
+    /** Of a table: which column holds what, where a person said so. */
+    columns?: ColumnChoice | undefined;
     /** Its place in the plan; null while the file fits none: then only the file itself is checked. */
     place: PlannedRun | null;
   };

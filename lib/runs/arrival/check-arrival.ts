@@ -3,10 +3,12 @@ import { Plans } from "../../analysis/cell-power";
 import type { Recording } from "../../analysis/types";
 import { readRecording } from "../../audio/read-recording";
 import { FileError, type AppError } from "../../errors/app-error";
+import { isTableName } from "../../series/table-columns";
 import type { ArrivalCheck, ArrivalReport } from "../arrival-schema";
 import type { ArrivalRequest } from "./arrival-request";
 import { checkCalibrator } from "./calibrator-checks";
 import { plainCheck, speaking } from "./check";
+import { checkTable } from "./check-table";
 import { checkSweep, type SweepFindings } from "./check-sweep";
 import { checkClipping, checkFile } from "./file-checks";
 import { drawEnvelope, measureFile, round, toDbfs, type FileFacts } from "./file-facts";
@@ -30,6 +32,7 @@ export async function checkArrival(
   plans: Plans = new Plans(),
 ): Promise<ArrivalReport> {
   const { run } = request;
+  if (isTableName(run.file)) return checkTable(request);
   try {
     const { recording, audio } = await readRecording(request.open(run.digest), {
       file: run.file,

@@ -138,7 +138,9 @@ function toPeer(request: ArrivalRequest): SweepSibling | undefined {
   if (place === null || place.role === "variant") return undefined;
   const { levelDb } = place;
   const away = (s: SweepSibling): number => Math.abs(s.levelDb - (levelDb ?? 0));
-  return listShortSiblings(request).sort((a, b) => away(a) - away(b))[0];
+  // A table has neither phase nor arrivals.
+  const recorded = listShortSiblings(request).filter((s) => s.summary.phase_rad.length > 0);
+  return recorded.sort((a, b) => away(a) - away(b))[0];
 }
 
 function checkLevels(

@@ -158,7 +158,7 @@ function checkSilence({ run }: ArrivalRequest, facts: FileFacts): ArrivalCheck {
   };
 }
 
-function checkDuplicate({ run, siblings }: ArrivalRequest): ArrivalCheck {
+export function checkDuplicate({ run, siblings }: ArrivalRequest): ArrivalCheck {
   const twin = siblings.find((sibling) => sibling.digest === run.digest);
   if (twin === undefined || twin.channel !== run.channel) {
     return {

@@ -10,6 +10,9 @@ import { round } from "./file-facts";
 import type { SweepFacts } from "./measure-sweep";
 import { listShortSiblings, toGroup, type SweepSibling } from "./siblings";
 
+/** What the checks of levels look at: of a sweep, or of a table. */
+export type LevelFacts = Pick<SweepFacts, "bands" | "held" | "run" | "thdPercent" | "summary">;
+
 const CLOSING_LIMIT_DB = 0.2;
 const LOWEST_THD_LIMIT_PERCENT = 10;
 const STOP_THD_PERCENT = 30;
@@ -70,7 +73,7 @@ export function checkLevelPlan(request: ArrivalRequest, measuredDb: number): Arr
 }
 
 /** Short runs only: a variant or a hot loudspeaker may differ. */
-export function checkLevelStep(request: ArrivalRequest, facts: SweepFacts): ArrivalCheck | null {
+export function checkLevelStep(request: ArrivalRequest, facts: LevelFacts): ArrivalCheck | null {
   const { place } = request.run;
   if (place?.role !== "short-term" || place.levelDb === null) return null;
   const siblings = listShortSiblings(request);
@@ -155,7 +158,7 @@ function toNeighbour(siblings: readonly SweepSibling[], levelDb: number): SweepS
   );
 }
 
-export function checkClosing(request: ArrivalRequest, facts: SweepFacts): ArrivalCheck | null {
+export function checkClosing(request: ArrivalRequest, facts: LevelFacts): ArrivalCheck | null {
   const { place } = request.run;
   if (place?.role !== "closing") return null;
   const first = listShortSiblings(request).find(({ levelDb }) => levelDb === place.levelDb);
@@ -179,7 +182,7 @@ export function checkClosing(request: ArrivalRequest, facts: SweepFacts): Arriva
 
 export function checkLowestDistortion(
   request: ArrivalRequest,
-  { thdPercent }: SweepFacts,
+  { thdPercent }: LevelFacts,
 ): ArrivalCheck | null {
   const { place } = request.run;
   if (place?.role !== "short-term" || place.levelDb !== toLowest(request)) return null;
@@ -209,7 +212,7 @@ export function checkLowestDistortion(
 /** A warning about the next level, not about this take. */
 export function checkStopRule(
   request: ArrivalRequest,
-  { bands, held, run, summary }: SweepFacts,
+  { bands, held, run, summary }: LevelFacts,
 ): ArrivalCheck | null {
   const { place } = request.run;
   if (place?.levelDb == null) return null;

@@ -147,8 +147,8 @@ export function measureSweep(
 
 const orNull = (value: number): number | null => (Number.isFinite(value) ? round(value, 4) : null);
 
-function toThdPercent(
-  { orders }: RawRun,
+export function toThdPercent(
+  { orders }: Pick<RawRun, "orders">,
   edgeHz: Float64Array,
   band: readonly [number, number],
   topHz: number,
