@@ -1,7 +1,7 @@
 /** `npm test`: set-up for the tests, then everything there is to check. */
-import { runStages, type Stage, vitestStage } from "../setup/stages";
+import { runLanes, type Stage, vitestStage } from "../setup/stages";
 import { ensureSystemPackages, POSTGRESQL, program } from "../setup/system-packages";
-import { verifyStages } from "../setup/verify-stages";
+import { importStages, routeTypes, typedStages } from "../setup/verify-stages";
 import { ensureBuild } from "../setup/web-build";
 
 const build: Stage = {
@@ -12,15 +12,20 @@ const build: Stage = {
   },
 };
 
+/** A browser and a server wait for each other most of the time; what only computes takes what they leave. */
+const IN_THE_BACKGROUND = 15;
+
 export async function main(): Promise<number> {
   await ensureSystemPackages([POSTGRESQL, program("chromium"), program("sox"), program("ffmpeg")]);
-  const { passed, failed } = await runStages([
-    ...verifyStages(),
-    build,
-    vitestStage("checks"),
-    vitestStage("rooms"),
-    vitestStage("browser"),
-  ]);
+  const { passed, failed } = await runLanes(
+    // The build writes the types of the routes anew, so that nobody may read them meanwhile.
+    [routeTypes(), ...typedStages(), build, vitestStage("rooms"), vitestStage("browser")],
+    [
+      ...importStages(),
+      vitestStage("unit", IN_THE_BACKGROUND),
+      vitestStage("checks", IN_THE_BACKGROUND),
+    ],
+  );
   console.log(`${passed} passed, ${failed} failed`);
   return failed === 0 && passed > 0 ? 0 : 1;
 }

@@ -1,4 +1,4 @@
-/** Stages of a check, run one after the other; a failed one does not hide the rest. */
+/** Stages of a check, in lanes beside each other; a failed one does not hide the rest. */
 import { mkdtempSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
@@ -41,8 +41,12 @@ export function commandStage(
   };
 }
 
-/** One run of Vitest over a project; a run without tests is a failure. */
-export function vitestStage(project: string): Stage {
+/**
+ * One run of Vitest over a project; a run without tests is a failure.
+ *
+ * @param niceness how far it steps back for what else wants a core, as `nice` has it; 0 to 19
+ */
+export function vitestStage(project: string, niceness = 0): Stage {
   return {
     name: `${project} tests`,
     run: async (show, signal) => {
@@ -50,8 +54,11 @@ export function vitestStage(project: string): Stage {
       const report = join(folder, "report.json");
       try {
         const { code, output } = await runCommand(
-          process.execPath,
+          "nice",
           [
+            "-n",
+            String(niceness),
+            process.execPath,
             packageFile("vitest/vitest.mjs"),
             "run",
             `--project=${project}`,
@@ -71,23 +78,40 @@ export function vitestStage(project: string): Stage {
   };
 }
 
-/** @returns the sum over all stages; an interrupted run has failed */
-export async function runStages(stages: readonly Stage[]): Promise<TestCounts> {
-  const total = { ...NONE };
-  const stop = listenForStop();
-  for (const { name, run } of stages) {
-    if (stop.signal.aborted) return { ...total, failed: total.failed + 1 };
-    const startedAt = Date.now();
-    const show = (text: string): void => console.log(`\n--- ${name} ---\n${text.trimEnd()}\n`);
-    const counts = await run(show, stop.signal).catch((error: unknown) => {
-      show(error instanceof Error ? (error.stack ?? error.message) : String(error));
-      return { passed: 0, failed: 1 };
-    });
-    total.passed += counts.passed;
-    total.failed += counts.failed;
-    const tests = counts.passed > 0 ? `, ${counts.passed} tests` : "";
-    const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
-    console.log(`${counts.failed === 0 ? "ok    " : "FAILED"}  ${name} (${seconds} s${tests})`);
+/**
+ * Runs each lane's stages one after the other, and the lanes beside each other.
+ *
+ * @returns the sum over all stages; an interrupted run has failed
+ */
+export async function runLanes(...lanes: readonly (readonly Stage[])[]): Promise<TestCounts> {
+  const { signal } = listenForStop();
+  const counts = await Promise.all(lanes.map((stages) => runStages(stages, signal)));
+  return counts.reduce(add, NONE);
+}
+
+async function runStages(stages: readonly Stage[], signal: AbortSignal): Promise<TestCounts> {
+  let total = NONE;
+  for (const stage of stages) {
+    if (signal.aborted) return add(total, { passed: 0, failed: 1 });
+    total = add(total, await runStage(stage, signal));
   }
   return total;
 }
+
+async function runStage({ name, run }: Stage, signal: AbortSignal): Promise<TestCounts> {
+  const startedAt = Date.now();
+  const show = (text: string): void => console.log(`\n--- ${name} ---\n${text.trimEnd()}\n`);
+  const counts = await run(show, signal).catch((error: unknown) => {
+    show(error instanceof Error ? (error.stack ?? error.message) : String(error));
+    return { passed: 0, failed: 1 };
+  });
+  const tests = counts.passed > 0 ? `, ${counts.passed} tests` : "";
+  const seconds = ((Date.now() - startedAt) / 1000).toFixed(1);
+  console.log(`${counts.failed === 0 ? "ok    " : "FAILED"}  ${name} (${seconds} s${tests})`);
+  return counts;
+}
+
+const add = (a: TestCounts, b: TestCounts): TestCounts => ({
+  passed: a.passed + b.passed,
+  failed: a.failed + b.failed,
+});

@@ -1,10 +1,10 @@
-/** Format, lint, types, unused code, import direction and the tests of plain functions. */
+/** Format, lint, types, unused code and import direction. */
 import { existsSync } from "node:fs";
 import { join } from "node:path";
 import { z } from "zod";
 import { cloneDir } from "./bootstrap.mjs";
 import { packageFile } from "./package-file";
-import { commandStage, type Stage, vitestStage } from "./stages";
+import { commandStage, type Stage } from "./stages";
 
 const ROOMS = ["app", "components", "lib", "db", "workers", "scripts", "tests"];
 const TOP_FILES = ["proxy.ts", "instrumentation.ts", "next.config.mjs", "vitest.config.ts"];
@@ -26,19 +26,21 @@ const cruiseSchema = z.object({
   }),
 });
 
-export function verifyStages(): Stage[] {
+/** What the other stages build on: lint and types both read the types of the routes. */
+export const routeTypes = (): Stage =>
+  commandStage("route types", [packageFile("next/dist/bin/next"), "typegen"]);
+
+/** How the code is written, and that its types hold. They read the types of the routes. */
+export const typedStages = (): Stage[] => [
+  commandStage("format", [packageFile("oxfmt/bin/oxfmt"), "--check", "."]),
+  commandStage("lint", [packageFile("oxlint/bin/oxlint"), "--type-aware", "--deny-warnings", "."]),
+  commandStage("types", [packageFile("typescript/bin/tsc"), "--noEmit"]),
+];
+
+/** Unused code, and which way imports point. */
+export function importStages(): Stage[] {
   const present = [...ROOMS, ...TOP_FILES].filter((name) => existsSync(join(cloneDir, name)));
   return [
-    commandStage("format", [packageFile("oxfmt/bin/oxfmt"), "--check", "."]),
-    // Lint and types both read the types of the routes.
-    commandStage("route types", [packageFile("next/dist/bin/next"), "typegen"]),
-    commandStage("lint", [
-      packageFile("oxlint/bin/oxlint"),
-      "--type-aware",
-      "--deny-warnings",
-      ".",
-    ]),
-    commandStage("types", [packageFile("typescript/bin/tsc"), "--noEmit"]),
     commandStage("unused code", [packageFile("knip/bin/knip.js"), "--no-config-hints"]),
     commandStage(
       "import direction",
@@ -52,7 +54,6 @@ export function verifyStages(): Stage[] {
       ],
       judgeCruise,
     ),
-    vitestStage("unit"),
   ];
 }
 

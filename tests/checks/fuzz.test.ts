@@ -24,9 +24,15 @@ const LONGEST_MS = 5000;
 const MOST_KIB = 2 ** 20;
 const SEED = 20_260_731;
 
+/** Of this process: a busy machine is no failure. */
+const computedMs = (): number => {
+  const { user, system } = process.cpuUsage();
+  return (user + system) / 1000;
+};
+
 /** Runs to a value or a typed error, in time; anything else fails with what was thrown. */
 async function settle<T>(work: () => T | Promise<T>): Promise<T | null> {
-  const startedAt = performance.now();
+  const startedAt = computedMs();
   try {
     return await work();
   } catch (error) {
@@ -34,7 +40,7 @@ async function settle<T>(work: () => T | Promise<T>): Promise<T | null> {
     expect(error.message.length).toBeGreaterThan(15);
     return null;
   } finally {
-    expect(performance.now() - startedAt).toBeLessThan(LONGEST_MS);
+    expect(computedMs() - startedAt).toBeLessThan(LONGEST_MS);
   }
 }
 
