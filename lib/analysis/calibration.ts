@@ -78,7 +78,7 @@ function findTone(
   const window = plans.hann(length);
   for (let n = 0; n < length; n += 1) fft.data[n] = samples[from + n]! * window[n]!;
   fft.data.fill(0, length);
-  const power = plans.power(fft);
+  const power = fft.power();
   const binHz = rateHz / fft.size;
   const toBin = (hz: number): number =>
     Math.max(1, Math.min(power.length - 2, Math.round(hz / binHz)));

@@ -13,7 +13,6 @@ export class Plans {
   readonly logs = new LogTable();
   readonly #fft = new Map<number, RealFft>();
   readonly #complex = new Map<number, ComplexFft>();
-  readonly #power = new Map<number, Float64Array>();
   readonly #hann = new Map<number, Float64Array>();
   readonly #onset = new Map<string, OnsetPlan>();
 
@@ -58,13 +57,6 @@ export class Plans {
     if (this.#onset.size > MOST_ONSET_PLANS && oldest !== undefined) this.#onset.delete(oldest);
     return plan;
   }
-
-  /** Power spectrum of what lies in the plan's data; valid until the next call of this size. */
-  power(plan: RealFft): Float64Array {
-    const into = this.#power.get(plan.size) ?? new Float64Array(plan.size / 2 + 1);
-    this.#power.set(plan.size, into);
-    return plan.power(into);
-  }
 }
 
 /** |H|^2 is sampled without folding at twice the window, and in the narrow cells of the bass not coarser than this times the order. */
@@ -100,6 +92,6 @@ export function measureCellPower(
   }
   data.fill(0, weights.length);
   const cells = new Float64Array(edgeHz.length - 1);
-  meanUniformInLog(plans.power(fft), rateHz / fft.size, edgeHz, order, plans.logs, cells);
+  meanUniformInLog(fft.power(), rateHz / fft.size, edgeHz, order, plans.logs, cells);
   return cells;
 }

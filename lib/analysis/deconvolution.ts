@@ -172,8 +172,6 @@ interface Zoom {
   fft: ComplexFft;
   /** [bins] a raised cosine keeps the flanks short. */
   weights: Float64Array;
-  /** [2 size] scratch. */
-  data: Float64Array;
 }
 
 interface Zooms {
@@ -184,8 +182,7 @@ interface Zooms {
 function toZoom(bins: number, plans: Plans): Zoom {
   const weights = new Float64Array(bins);
   for (let k = 0; k < bins; k += 1) weights[k] = 1 - Math.cos((2 * Math.PI * (k + 0.5)) / bins);
-  const fft = plans.complex(toFftSize(2 * bins));
-  return { fft, weights, data: new Float64Array(2 * fft.size) };
+  return { fft: plans.complex(toFftSize(2 * bins)), weights };
 }
 
 function toEnvelope(kept: Float64Array, { whole, part }: Zooms, size: number): ArrivalEnvelope {
@@ -201,14 +198,15 @@ function toEnvelope(kept: Float64Array, { whole, part }: Zooms, size: number): A
 }
 
 /** |analytic response|^2 over lag, of the bins from one on. */
-function toLagPower(kept: Float64Array, from: number, { fft, weights, data }: Zoom): Float64Array {
+function toLagPower(kept: Float64Array, from: number, { fft, weights }: Zoom): Float64Array {
+  const { data } = fft;
   for (let k = 0; k < weights.length; k += 1) {
     // Conjugated, so that the forward transform goes back to lag.
     data[2 * k] = weights[k]! * kept[2 * (from + k)]!;
     data[2 * k + 1] = -weights[k]! * kept[2 * (from + k) + 1]!;
   }
   data.fill(0, 2 * weights.length);
-  const lag = fft.transform(data);
+  const lag = fft.transform();
   const power = new Float64Array(fft.size);
   for (let m = 0; m < power.length; m += 1) {
     power[m] = lag[2 * m]! * lag[2 * m]! + lag[2 * m + 1]! * lag[2 * m + 1]!;

@@ -42,7 +42,7 @@ export function measureNoise(
   const hop = Math.max(size / 2, Math.floor((samples.length - size) / MOST_BLOCKS));
   for (let from = 0; from + size <= samples.length; from += hop, blocks += 1) {
     for (let n = 0; n < size; n += 1) data[n] = window[n]! * samples[from + n]!;
-    const power = plans.power(fft);
+    const power = fft.power();
     for (let k = 0; k < power.length; k += 1) byFrequency[k]! += power[k]!;
   }
   const binHz = rateHz / size;

@@ -41,7 +41,7 @@ class TimedPlans extends Plans {
       forward: timed((into?: Float64Array) => plan.forward(into)),
       forwardPacked: timed(() => plan.forwardPacked()),
       filter: timed((...args: Parameters<RealFft["filter"]>) => plan.filter(...args)),
-      power: timed((into?: Float64Array) => plan.power(into)),
+      power: timed(() => plan.power()),
     };
   }
 }

@@ -38,9 +38,9 @@ const SIZES = [
 describe("planComplexFft", () => {
   it.each(SIZES)("%i points agree with the direct sum", (size) => {
     const data = noise(2 * size);
-    expect(worst(planComplexFft(size).transform(data.slice()), directDft(data))).toBeLessThan(
-      1e-12 * size,
-    );
+    const plan = planComplexFft(size);
+    plan.data.set(data);
+    expect(worst(plan.transform(), directDft(data))).toBeLessThan(1e-12 * size);
   });
 
   it("2^15 points agree with another implementation", () => {
@@ -49,7 +49,9 @@ describe("planComplexFft", () => {
     const other = new FFT(size);
     const out = other.createComplexArray();
     other.transform(out, Array.from(data));
-    expect(worst(planComplexFft(size).transform(data), out)).toBeLessThan(1e-11);
+    const plan = planComplexFft(size);
+    plan.data.set(data);
+    expect(worst(plan.transform(), out)).toBeLessThan(1e-11);
   });
 
   it.each([0, 7, 11, 22, 2.5])("refuses %d points", (size) => {

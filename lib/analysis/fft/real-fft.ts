@@ -1,5 +1,6 @@
 /** FFT of real data as a complex one of half the size. */
-import { planComplexFft, toTwiddles } from "./complex-fft";
+import { fillTwiddles, planComplexFft, toComplexDoubles } from "./complex-fft";
+import { createWorkspace } from "./kernel";
 
 const ODD_PARTS = [1, 3, 5, 9, 15];
 
@@ -31,27 +32,37 @@ export interface RealFft {
    * @returns [2 (size/2 + 1)] re, im interleaved; a new array unless one is given.
    */
   forward(into?: Float64Array): Float64Array;
-  /** |X_k|^2, [size/2 + 1], of the samples in data; a new array unless one is given. */
-  power(into?: Float64Array): Float64Array;
+  /** |X_k|^2, [size/2 + 1], of the samples in data. Valid until the next call. */
+  power(): Float64Array;
   /**
    * Multiplies the packed spectrum by a one-sided transfer function and returns to samples.
    * @param packed from forwardPacked; used as scratch.
-   * @param transfer [2 (size/2 + 1)] re, im interleaved.
+   * @param transfer [2 (size/2 + 1)] re, im interleaved. The plan takes it over once: it must not change between calls.
    * @param kept receives the product in bins first to last, re and im interleaved, where given.
    * @returns [size] samples, scaled as the inverse of forward. Valid until the next call.
    */
   filter(packed: Float64Array, transfer: Float64Array, kept?: KeptBins): Float64Array;
 }
 
-/** @param size even, half of it 2^a * {1, 3, 5, 9, 15}. */
+/**
+ * @param size even, half of it 2^a * {1, 3, 5, 9, 15}.
+ * @throws AnalysisError "analysis.argument" for another size, "audio.too-large"
+ */
 export function planRealFft(size: number): RealFft {
   const half = size / 2;
-  const complex = planComplexFft(half);
-  const data = new Float64Array(size);
+  const pairs = Math.floor(half / 2) + 1;
+  const workspace = createWorkspace(toComplexDoubles(half) + 2 * pairs + 3 * (half + 2));
+  const { kernel, take } = workspace;
+  const complex = planComplexFft(half, workspace);
+  const { data } = complex;
   // e^(-2 pi i k / size) for k up to half / 2: the pair (k, half - k) shares one.
-  const twiddles = toTwiddles(size, Math.floor(half / 2) + 1);
+  const twiddles = take(2 * pairs);
+  fillTwiddles(twiddles, size);
+  const powers = take(half + 1);
+  const multiplier = take(size + 2);
+  let taken: Float64Array | null = null;
 
-  const forwardPacked = (): Float64Array => complex.transform(data);
+  const forwardPacked = (): Float64Array => complex.transform();
 
   const forward = (into = new Float64Array(size + 2)): Float64Array => {
     const z = forwardPacked();
@@ -80,25 +91,12 @@ export function planRealFft(size: number): RealFft {
     return into;
   };
 
-  const power = (into = new Float64Array(half + 1)): Float64Array => {
+  const power = (): Float64Array => {
     const z = forwardPacked();
-    for (let k = 1; 2 * k <= half; k += 1) {
-      const a = 2 * k;
-      const b = 2 * (half - k);
-      const wr = twiddles[a]!;
-      const wi = twiddles[a + 1]!;
-      const evenR = (z[a]! + z[b]!) / 2;
-      const evenI = (z[a + 1]! - z[b + 1]!) / 2;
-      const oddR = (z[a + 1]! + z[b + 1]!) / 2;
-      const oddI = (z[b]! - z[a]!) / 2;
-      const tr = oddR * wr - oddI * wi;
-      const ti = oddR * wi + oddI * wr;
-      into[k] = (evenR + tr) ** 2 + (evenI + ti) ** 2;
-      into[half - k] = (evenR - tr) ** 2 + (evenI - ti) ** 2;
-    }
-    into[0] = (z[0]! + z[1]!) ** 2;
-    into[half] = (z[0]! - z[1]!) ** 2;
-    return into;
+    kernel.power(z.byteOffset, twiddles.byteOffset, powers.byteOffset, half);
+    powers[0] = (z[0]! + z[1]!) ** 2;
+    powers[half] = (z[0]! - z[1]!) ** 2;
+    return powers;
   };
 
   /** The product in some bins, before the walk over all of them overwrites the packed spectrum. */
@@ -124,44 +122,22 @@ export function planRealFft(size: number): RealFft {
 
   const filter = (z: Float64Array, transfer: Float64Array, kept?: KeptBins): Float64Array => {
     if (kept !== undefined) keep(z, transfer, kept);
-    // One walk over the pairs (k, half - k): unpack, multiply, pack conjugated for the inverse.
+    if (taken !== transfer) multiplier.set(transfer);
+    taken = transfer;
     const scale = 1 / size;
     const dcR = (z[0]! + z[1]!) * transfer[0]!;
     const topR = (z[0]! - z[1]!) * transfer[size]!;
-    for (let k = 1; 2 * k <= half; k += 1) {
-      const a = 2 * k;
-      const b = 2 * (half - k);
-      const wr = twiddles[a]!;
-      const wi = twiddles[a + 1]!;
-      const evenR = (z[a]! + z[b]!) / 2;
-      const evenI = (z[a + 1]! - z[b + 1]!) / 2;
-      const oddR = (z[a + 1]! + z[b + 1]!) / 2;
-      const oddI = (z[b]! - z[a]!) / 2;
-      const tr = oddR * wr - oddI * wi;
-      const ti = oddR * wi + oddI * wr;
-      const xar = evenR + tr;
-      const xai = evenI + ti;
-      const xbr = evenR - tr;
-      const xbi = ti - evenI;
-      const har = xar * transfer[a]! - xai * transfer[a + 1]!;
-      const hai = xar * transfer[a + 1]! + xai * transfer[a]!;
-      const hbr = xbr * transfer[b]! - xbi * transfer[b + 1]!;
-      const hbi = xbr * transfer[b + 1]! + xbi * transfer[b]!;
-      const er = (har + hbr) * scale;
-      const ei = (hai - hbi) * scale;
-      const dr = (har - hbr) * scale;
-      const di = (hai + hbi) * scale;
-      // odd = (a - conj b) e^(+2 pi i k / size)
-      const or = dr * wr + di * wi;
-      const oi = di * wr - dr * wi;
-      data[a] = er - oi;
-      data[a + 1] = -(ei + or);
-      data[b] = er + oi;
-      data[b + 1] = ei - or;
-    }
+    kernel.filter(
+      z.byteOffset,
+      twiddles.byteOffset,
+      multiplier.byteOffset,
+      data.byteOffset,
+      half,
+      scale,
+    );
     data[0] = (dcR + topR) * scale;
     data[1] = -(dcR - topR) * scale;
-    const samples = complex.transform(data);
+    const samples = complex.transform();
     for (let n = 1; n < size; n += 2) samples[n] = -samples[n]!;
     return samples;
   };

@@ -68,14 +68,13 @@ function toPeakS(spectrum: Float64Array, low: number, high: number, size: number
   const count = Math.floor(high) - first + 1;
   if (count < 8 || first + count > size / 2) return null;
   const zoom = planComplexFft(toFftSize(2 * count));
-  const bins = new Float64Array(2 * zoom.size);
   for (let k = 0; k < count; k += 1) {
     // Conjugated, so that the forward transform goes back to lag.
     const weight = 1 - Math.cos((2 * Math.PI * (k + 0.5)) / count);
-    bins[2 * k] = weight * (spectrum[2 * (first + k)] ?? 0);
-    bins[2 * k + 1] = -weight * (spectrum[2 * (first + k) + 1] ?? 0);
+    zoom.data[2 * k] = weight * (spectrum[2 * (first + k)] ?? 0);
+    zoom.data[2 * k + 1] = -weight * (spectrum[2 * (first + k) + 1] ?? 0);
   }
-  const lag = zoom.transform(bins);
+  const lag = zoom.transform();
   const power = Float64Array.from(
     { length: zoom.size },
     (_, m) => (lag[2 * m] ?? 0) ** 2 + (lag[2 * m + 1] ?? 0) ** 2,
