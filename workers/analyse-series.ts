@@ -28,7 +28,7 @@ export async function analyseSeriesJob(tools: JobTools, data: unknown): Promise<
     }
     const result = await compute(tools, payload, work);
     await inLab(tools.db, workerScope(payload.labId), (trx) =>
-      endAsDone(trx, workerScope(payload.labId), work, result),
+      endAsDone(trx, workerScope(payload.labId), work, result, tools.sourceCommit),
     );
   } catch (error) {
     await handleFault(tools, payload, work, error);

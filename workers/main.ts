@@ -6,6 +6,7 @@ import type { Job } from "bullmq";
 import type { Logger } from "pino";
 import { createDatabase } from "../db/client";
 import { getEnvironment, toConnectionString } from "../lib/config/environment";
+import { readSourceCommit } from "../lib/config/source-commit";
 import { ANALYSE_SERIES } from "../lib/jobs/analyse-series";
 import { CHECK_ARRIVAL } from "../lib/jobs/check-arrival";
 import { openQueues, WorkerOnPostgres } from "../lib/jobs/queues";
@@ -46,7 +47,8 @@ async function main(): Promise<void> {
     log.warn({ err: error }, "a connection of the queue broke"),
   );
   const store = createFileStore(storeFolder(environment.dataDir));
-  const shared = { db, queues, store, log };
+  const sourceCommit = readSourceCommit(process.cwd());
+  const shared = { db, queues, store, log, sourceCommit };
 
   const start = (name: string, processor: Processor, giveUp: GiveUp) => {
     const tools: JobTools = { ...shared, child: createComputingChild() };

@@ -13,6 +13,8 @@ export interface JobTools {
   store: RecordingStore;
   child: ComputingChild;
   log: Logger;
+  /** Of this program, for what it computes. */
+  sourceCommit: string | null;
 }
 
 /** A worker acts for nobody: the trail names no person. */

@@ -14,16 +14,22 @@ import type { AnalysisWork } from "./analysis-work";
 import { loadCapture } from "./capture";
 import { deriveState } from "./settle-series";
 
-/** Writes everything at once; does nothing where it was cancelled or saved meanwhile. */
+/**
+ * Writes everything at once; does nothing where it was cancelled or saved meanwhile.
+ *
+ * @param sourceCommit of the program that computed; null where it is not known.
+ */
 export async function endAsDone(
   trx: Trx,
   by: LabScope,
   work: AnalysisWork,
   result: Result,
+  sourceCommit: string | null,
 ): Promise<void> {
   const { analysisId, seriesId, version } = work;
   const series = await lockSeries(trx, by.labId, seriesId);
-  if (!(await saveResult(trx, by.labId, analysisId, result, work.runIdByFile))) return;
+  const { runIdByFile } = work;
+  if (!(await saveResult(trx, by.labId, analysisId, result, runIdByFile, sourceCommit))) return;
   const counts = await findCurrentAnalysis(trx, by.labId, seriesId, "done");
   // The list goes on showing what was signed off, until the series is reopened.
   if (counts?.id === analysisId && series.state !== "signed off") {

@@ -13,6 +13,7 @@ import * as mail from "./20261201t1102-mail";
 import * as publicLookups from "./20261201t1103-public-lookups";
 import * as labLookup from "./20261201t1104-lab-lookup";
 import * as tableColumns from "./20261201t1310-table-columns";
+import * as keeping from "./20261201t1320-keeping";
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0900-people": people,
@@ -28,4 +29,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t1103-public-lookups": publicLookups,
   "20261201t1104-lab-lookup": labLookup,
   "20261201t1310-table-columns": tableColumns,
+  "20261201t1320-keeping": keeping,
 };

@@ -231,6 +231,7 @@ function analysesOf(trx: Trx, labId: string) {
       "n.inputs_digest",
       "n.settings",
       "n.engine_version",
+      "n.source_commit",
       "n.progress",
       "n.error",
       "n.requested_by",

@@ -5,7 +5,7 @@ import type { RecordingsTable } from "../schema/recordings";
 
 export type RecordingRow = Selectable<RecordingsTable>;
 
-/** The same bytes twice are one recording. */
+/** The same bytes twice are one recording; bytes that come again after their removal are there again. */
 export async function keepRecording(
   trx: Trx,
   labId: string,
@@ -19,7 +19,9 @@ export async function keepRecording(
       bytes: recording.bytes,
       media: recording.media,
     })
-    .onConflict((conflict) => conflict.columns(["lab_id", "digest"]).doNothing())
+    .onConflict((conflict) =>
+      conflict.columns(["lab_id", "digest"]).doUpdateSet({ removed_at: null }),
+    )
     .execute();
 }
 
@@ -35,6 +37,21 @@ export async function findRecording(
     .where("digest", "=", digest)
     .executeTakeFirst();
   return row ?? null;
+}
+
+/** Those of the digests that the lab knows, removed ones too. */
+export async function listRecordings(
+  trx: Trx,
+  labId: string,
+  digests: readonly string[],
+): Promise<RecordingRow[]> {
+  if (digests.length === 0) return [];
+  return trx
+    .selectFrom("recordings")
+    .selectAll()
+    .where("lab_id", "=", labId)
+    .where("digest", "in", digests)
+    .execute();
 }
 
 /** Fails by its foreign keys where a run or a photo still shows it. */

@@ -17,6 +17,7 @@ export async function saveResult(
   analysisId: string,
   result: Result,
   runIds: ReadonlyMap<string, string>,
+  sourceCommit: string | null = null,
 ): Promise<boolean> {
   const { head, runs, bands } = toResultParts(result);
   const row = await trx
@@ -24,6 +25,7 @@ export async function saveResult(
     .set({
       state: "done",
       head: JSON.stringify(head),
+      source_commit: sourceCommit,
       error: null,
       progress: null,
       finished_at: new Date(),

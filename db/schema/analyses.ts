@@ -26,6 +26,8 @@ export interface AnalysesTable {
   inputs_digest: string;
   settings: Json<Settings>;
   engine_version: string;
+  /** Commit of the source that computed it; null where that was not known. */
+  source_commit: MaybeText;
   progress: MaybeJson<Progress>;
   head: MaybeJson<ResultHead>;
   error: MaybeJson<Failure>;

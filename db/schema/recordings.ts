@@ -1,4 +1,4 @@
-import type { Moment } from "./columns";
+import type { MaybeMoment, Moment } from "./columns";
 
 /** What lies in storage for a lab. */
 export interface RecordingsTable {
@@ -8,4 +8,6 @@ export interface RecordingsTable {
   bytes: number;
   media: string;
   created_at: Moment;
+  /** When its bytes were removed for good; the row stays, since runs and trail name the digest. */
+  removed_at: MaybeMoment;
 }

@@ -63,6 +63,7 @@ export const ERROR_TABLE = {
   "plan.invalid": final(422, "The plan cannot be carried out"),
   "plan.locked": final(409, "The plan is fixed once a recording is in"),
   "run.locked": final(409, "This level is not open yet"),
+  "recording.removed": final(410, "The recording was removed"),
   "run.reason-missing": final(422, "A reason is needed"),
   "upload.not-found": final(404, "There is no such upload"),
   "upload.expired": final(410, "The upload expired"),

@@ -4,10 +4,11 @@ import { existsSync, mkdirSync, readdirSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { setTimeout as sleep } from "node:timers/promises";
 import { readText } from "../../lib/config/secrets";
+import { type Source, sourcePath } from "../../lib/config/source-commit";
 import { cloneDir } from "./bootstrap.mjs";
 import { buildDir, ensureBundle, hashFile, listBundles } from "./bundles.mjs";
 import { takeLock } from "./lock";
-import { mustRun } from "./run-command";
+import { mustRun, runCommand } from "./run-command";
 import { SetUpError } from "./set-up-error";
 
 const SOURCE_FOLDERS = ["app", "components", "lib", "db", "public"];
@@ -29,6 +30,7 @@ const SOURCE_FILES = [
  */
 export function ensureBuild(signal?: AbortSignal): Promise<void> {
   return withLock(signal, async () => {
+    await noteSource();
     await bundleAll();
     await ensureWebBuild(signal);
   });
@@ -36,6 +38,19 @@ export function ensureBuild(signal?: AbortSignal): Promise<void> {
 
 /** The bundled programs alone, as ensureBuild makes them. */
 export const ensureBundles = (): Promise<void> => withLock(undefined, bundleAll);
+
+/** What the programs were built from, for the evidence that they leave. */
+async function noteSource(): Promise<void> {
+  const git = (...args: string[]) =>
+    runCommand("git", ["-C", cloneDir, ...args]).catch(() => ({ code: 1, stdout: "" }));
+  const head = await git("rev-parse", "HEAD");
+  const status = head.code === 0 ? await git("status", "--porcelain") : head;
+  const source: Source =
+    head.code === 0 && status.code === 0
+      ? { commit: head.stdout.trim(), changed: status.stdout.trim() !== "" }
+      : { commit: null, changed: false };
+  writeFileSync(sourcePath(cloneDir), JSON.stringify(source));
+}
 
 async function bundleAll(): Promise<void> {
   for (const bundle of listBundles()) {

@@ -126,6 +126,7 @@ describe("security-definer functions", () => {
       "find_forgotten_analyses: TABLE(lab_id uuid, analysis_id uuid)",
       "find_forgotten_checks: TABLE(lab_id uuid, run_id uuid)",
       "find_invitation: TABLE(invitation_id uuid, lab_id uuid)",
+      "find_labs_with_retention: TABLE(lab_id uuid)",
       "find_preview: TABLE(lab_id uuid, preview_id uuid)",
       "find_publication: TABLE(lab_id uuid, publication_id uuid)",
       "find_session: TABLE(account_id uuid, lab_id uuid)",
