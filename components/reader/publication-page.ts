@@ -18,6 +18,7 @@ import {
 import { toPartsOfSound, toReachedWords, type PartOfSound } from "@/lib/reader/parts-of-sound";
 import { USUAL_SEAT } from "@/lib/reader/seat";
 import { toLongDay } from "@/lib/time/time-words";
+import { toEvidenceSection } from "./evidence-section";
 import { toNotice } from "./frame";
 import { toEnoughForm, toEnoughResult, toSeatForm, toSeatResult } from "./seat-section";
 
@@ -43,11 +44,14 @@ export function toPublicationBody(parts: PublicationParts): Html {
     <div class="hero">
       <p class="eyebrow"><b>${model}</b> by ${maker}${kind !== "" && ` · ${kind}`}</p>
       <h1>${first}${rest.map((sentence) => html` <span>${sentence}</span>`)}</h1>
-      <p class="method">${toMethodWords(snapshot)}</p>
+      <p class="method">
+        ${toMethodWords(snapshot)}
+        ${snapshot.evidence_public && html`<a href="#check">Check this yourself.</a>`}
+      </p>
       ${notice !== null && toNotice(notice, "slim")}
     </div>
     ${toFigure(snapshot)} ${toKey(snapshot)} ${toWords(snapshot)} ${toSeat(snapshot)}
-    ${toParts(snapshot)} ${toMeasured(parts)} ${parts.after}`;
+    ${toParts(snapshot)} ${toEvidenceSection(snapshot)} ${toMeasured(parts)} ${parts.after}`;
 }
 
 function toFigure(snapshot: Snapshot): Html {

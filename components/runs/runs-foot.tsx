@@ -2,8 +2,10 @@
 
 import Link from "next/link";
 import { useState } from "react";
+import { toApiPath } from "@/lib/api/client";
+import { getSeriesFolder } from "@/lib/api/keeping";
 import type { SeriesView } from "@/lib/api/series";
-import { Button } from "../parts/button";
+import { Button, LinkButton } from "../parts/button";
 import { useStartAnalysis } from "../queries/series";
 
 interface RunsFootProps {
@@ -51,6 +53,15 @@ export function RunsFoot({ series, captured, planned, mayAnalyse }: RunsFootProp
           </output>
         )}
       </p>
+      {series.latest_done_analysis !== null && (
+        <LinkButton
+          tone="quiet"
+          href={toApiPath(getSeriesFolder, { seriesId: series.id })}
+          download
+        >
+          Download as a folder, ZIP
+        </LinkButton>
+      )}
       {mayAnalyse && captured > 0 && !going && (
         <Button
           busy={start.isPending}

@@ -18,7 +18,9 @@ describe("readPublishForm", () => {
       answer_to_maker: null,
       embargo_until: null,
       change_note: null,
+      evidence_public: false,
     });
+    expect(read({ evidence: "on" })).toMatchObject({ evidence_public: true });
   });
 
   it("prints an answer only beside a statement", () => {

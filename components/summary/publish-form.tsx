@@ -105,6 +105,9 @@ export function PublishForm({ seriesId, latest, comments }: PublishFormProps) {
           )}
         </Field>
       </fieldset>
+      <Checkbox name="evidence" defaultChecked={latest?.evidence_public ?? false}>
+        Give readers the recordings and decisions, so that they can check the result themselves
+      </Checkbox>
       <Checkbox name="check" required>
         I have read the answer beside as readers will see it
       </Checkbox>
@@ -146,5 +149,6 @@ export function readPublishForm(form: FormData): PublishBody | string {
     ...(slug === "" ? {} : { slug }),
     embargo_until: embargo === "" ? null : new Date(embargo).toISOString(),
     change_note: note === "" ? null : note,
+    evidence_public: text(form, "evidence") !== "",
   };
 }

@@ -1,6 +1,8 @@
 "use client";
 
 import { useState } from "react";
+import { toApiPath } from "@/lib/api/client";
+import { getEvidence } from "@/lib/api/keeping";
 import type { PublicationView } from "@/lib/api/publications";
 import { Moment } from "../frame/moment";
 import { Button } from "../parts/button";
@@ -47,6 +49,14 @@ export function RevisionList({ seriesId, revisions, mayPublish }: RevisionListPr
                 {one.path} · {one.digest.slice(0, 12)}
               </span>
             </p>
+            <a
+              className="text-small"
+              href={toApiPath(getEvidence, { publicationId: one.id })}
+              download
+              aria-label={`Evidence of revision ${one.revision}, ZIP`}
+            >
+              Evidence, ZIP{one.evidence_public ? "" : " (not given to readers)"}
+            </a>
             {mayPublish && one.state === "live" && (
               <Button size="small" onClick={() => setWithdrawing(one)}>
                 Withdraw

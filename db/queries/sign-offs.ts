@@ -1,4 +1,5 @@
 /** Sign-offs of a series; at most one stands. */
+import { AppError } from "../../lib/errors/app-error";
 import type { SignedDecision, SignOff } from "../../lib/review/review-schema";
 import { toDecisionsText } from "../../lib/review/digest-decisions";
 import type { Criterion } from "../../lib/series/series-schema";
@@ -48,6 +49,22 @@ export async function findStandingSignOff(
   seriesId: string,
 ): Promise<SignOff | null> {
   return (await listSignOffs(trx, labId, seriesId)).find((one) => one.reopened === null) ?? null;
+}
+
+/** What a sign-off bound, standing or reopened since. @throws AppError "not-found" */
+export async function getSignedParts(
+  trx: Trx,
+  labId: string,
+  signOffId: string,
+): Promise<{ analysisId: string; decisions: SignedDecision[] }> {
+  const row = await trx
+    .selectFrom("sign_offs")
+    .select(["analysis_id", "decisions"])
+    .where("lab_id", "=", labId)
+    .where("id", "=", signOffId)
+    .executeTakeFirst();
+  if (row === undefined) throw new AppError("not-found", "There is no such sign-off.");
+  return { analysisId: row.analysis_id, decisions: row.decisions };
 }
 
 /** Whether the series is signed off: what its state is derived from. */

@@ -2,6 +2,7 @@
 import { accountOperations } from "./account";
 import { analysisOperations } from "./analyses";
 import { getHealth } from "./health";
+import { evidenceOperations, seriesFolderOperations } from "./keeping";
 import { labOperations } from "./labs";
 import { loudspeakerOperations } from "./loudspeakers";
 import { memberOperations } from "./members";
@@ -16,11 +17,11 @@ import { tokenOperations } from "./tokens";
 
 export const OPERATION_GROUPS: Readonly<Record<string, readonly Operation[]>> = {
   Loudspeakers: loudspeakerOperations,
-  Series: [...seriesOperations, ...microphoneOperations],
+  Series: [...seriesOperations, ...microphoneOperations, ...seriesFolderOperations],
   Recordings: runOperations,
   Analyses: analysisOperations,
   Review: reviewOperations,
-  Publications: publicationOperations,
+  Publications: [...publicationOperations, ...evidenceOperations],
   Account: [...sessionOperations, ...accountOperations],
   Members: memberOperations,
   Tokens: tokenOperations,

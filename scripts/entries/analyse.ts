@@ -2,18 +2,31 @@
  * The analysis command: folder in, JSON out (docs/contract.md). Exit 0: analysed; 2: the input is at
  * fault, said in one line of JSON; 1: our fault.
  */
-import { accessSync, constants, realpathSync, renameSync, statSync, writeFileSync } from "node:fs";
+import {
+  accessSync,
+  constants,
+  readFileSync,
+  realpathSync,
+  renameSync,
+  statSync,
+  writeFileSync,
+} from "node:fs";
 import { basename, dirname, join, resolve } from "node:path";
 import { parseArgs } from "node:util";
 import { analyseSeries } from "../../lib/analysis/analyse-series";
+import { ENGINE_VERSION } from "../../lib/analysis/engine-version";
 import type { OnProgress } from "../../lib/analysis/types";
+import { checkInputs, checkResult, parseEvidence } from "../../lib/evidence/check-evidence";
+import { EVIDENCE_FILE, type Evidence } from "../../lib/evidence/evidence-schema";
 import { AppError } from "../../lib/errors/app-error";
 import { toResultText } from "../../lib/result/result-text";
-import type { Result } from "../../lib/result/result-schema";
+import { digestText } from "../../lib/review/digest-decisions";
+import type { Warning } from "../../lib/result/result-schema";
 import { createFolderSource, readSeriesText } from "../../lib/series/folder-source";
 import { listSeriesFiles } from "../../lib/series/list-series-files";
 import { parseSeries } from "../../lib/series/parse-series";
-import type { Series } from "../../lib/series/series-schema";
+import { relativeFileSchema, type Series } from "../../lib/series/series-schema";
+import { digestFile } from "../../lib/storage/digest-file";
 
 const USAGE = "analyse <folder> [--out result.json]";
 const INPUT_AT_FAULT = 2;
@@ -25,11 +38,34 @@ async function main(): Promise<void> {
   }
   const series = parseSeries(readSeriesText(folder));
   if (out !== undefined) checkOut(out, folder, series);
+  const evidence = await readEvidence(folder);
+  sayWarnings(evidence.warnings);
   const progress = process.stderr.isTTY ? { onProgress: showProgress } : {};
   const result = await analyseSeries(series, createFolderSource(folder), progress);
   if (process.stderr.isTTY) process.stderr.write("\r\u001B[K");
-  sayWarnings(result);
-  write(toResultText(result), out);
+  sayWarnings(result.warnings);
+  const text = toResultText(result);
+  if (evidence.evidence !== null) {
+    sayWarnings(checkResult(evidence.evidence, digestText(text), evidence.warnings));
+  }
+  write(text, out);
+}
+
+/** A folder with evidence.json says what was published; what differs is a warning, never a refusal. */
+async function readEvidence(
+  folder: string,
+): Promise<{ evidence: Evidence | null; warnings: Warning[] }> {
+  const path = join(folder, EVIDENCE_FILE);
+  if (!statSync(path, { throwIfNoEntry: false })?.isFile()) return { evidence: null, warnings: [] };
+  const { evidence, warnings } = parseEvidence(readFileSync(path, "utf8"));
+  if (evidence === null) return { evidence, warnings };
+  const digests = new Map<string, string>();
+  for (const { file } of evidence.inputs) {
+    const isName = relativeFileSchema.safeParse(file).success;
+    if (!isName || !statSync(join(folder, file), { throwIfNoEntry: false })?.isFile()) continue;
+    digests.set(file, await digestFile(join(folder, file)));
+  }
+  return { evidence, warnings: checkInputs(evidence, ENGINE_VERSION, digests) };
 }
 
 function readArguments(): { folder: string; out: string | undefined } {
@@ -57,7 +93,7 @@ const showProgress: OnProgress = ({ file, stage }) => {
   process.stderr.write(`\r\u001B[K${file === null ? "" : `${file}: `}${stage}`);
 };
 
-function sayWarnings({ warnings }: Result): void {
+function sayWarnings(warnings: readonly Warning[]): void {
   for (const { code, message } of warnings) process.stderr.write(`warning ${code}: ${message}\n`);
 }
 

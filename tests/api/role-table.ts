@@ -46,6 +46,7 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("getSeries", EVERYONE, "not there"),
   row("getStimulus", EVERYONE, "not there"),
   row("getStimulusZip", EVERYONE, "not there"),
+  row("getSeriesFolder", EVERYONE, "not there"),
   row("getSeriesHistory", EVERYONE, "not there"),
   row("listRuns", EVERYONE, "not there"),
   row("getRun", EVERYONE, "not there"),
@@ -87,6 +88,7 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("reopenSeries", ANALYST, "not there"),
   // Publish, correct, withdraw, preview links: reviewer.
   row("listPublications", EVERYONE, "not there"),
+  row("getEvidence", EVERYONE, "not there"),
   row("draftPublication", EVERYONE, "not there"),
   row("listPreviews", EVERYONE, "not there"),
   row("publish", REVIEWER, "not there"),

@@ -1,49 +1,28 @@
-/** The built analysis command, run by node alone as an outsider would. */
-import { execFile } from "node:child_process";
+/** What the built analysis command prints, refuses and leaves. */
 import { existsSync, mkdtempSync, readFileSync, rmSync, symlinkSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { resultSchema } from "../../lib/result/result-schema";
-import { bundlePath, ensureBundle, listBundles } from "../../scripts/setup/bundles.mjs";
+import { ensureBundle, listBundles } from "../../scripts/setup/bundles.mjs";
+import { runAnalyse, type CommandOutcome } from "../support/analyse-command";
 import { writeSeriesFolder } from "../support/series-folder";
 
 const root = mkdtempSync(join(tmpdir(), "analyse-"));
 const folder = join(root, "series");
 let series: Record<string, unknown>;
 
-interface Outcome {
-  code: number;
-  stdout: string;
-  stderr: string;
-}
-
-function run(...args: string[]): Promise<Outcome> {
-  return new Promise((done) => {
-    execFile(
-      process.execPath,
-      [bundlePath("analyse"), ...args],
-      { cwd: root, maxBuffer: 2 ** 27 },
-      (error, stdout, stderr) => {
-        done({
-          code: typeof error?.code === "number" ? error.code : error === null ? 0 : -1,
-          stdout,
-          stderr,
-        });
-      },
-    );
-  });
-}
+const run = (...args: string[]): Promise<CommandOutcome> => runAnalyse(root, ...args);
 
 /** The last line of standard error. */
-const toFault = ({ stderr }: Outcome): { code: string; message: string; file?: string } =>
+const toFault = ({ stderr }: CommandOutcome): { code: string; message: string; file?: string } =>
   JSON.parse(stderr.trimEnd().split("\n").at(-1) ?? "") as {
     code: string;
     message: string;
     file?: string;
   };
 
-async function runWith(text: string): Promise<Outcome> {
+async function runWith(text: string): Promise<CommandOutcome> {
   writeFileSync(join(folder, "series.json"), text);
   try {
     return await run(folder);
