@@ -33,6 +33,20 @@ export async function getSeries(
   return row;
 }
 
+export async function findSeries(
+  trx: Trx,
+  labId: string,
+  seriesId: string,
+): Promise<SeriesRow | null> {
+  const row = await trx
+    .selectFrom("series")
+    .selectAll()
+    .where("lab_id", "=", labId)
+    .where("id", "=", seriesId)
+    .executeTakeFirst();
+  return row ?? null;
+}
+
 /** Ids, oldest first; archived ones too. */
 export async function listSeriesOfLoudspeaker(
   trx: Trx,

@@ -12,9 +12,9 @@ const RANGE_DROP_DB = 3;
 const FEWEST_BANDS = 6;
 
 export interface HeadlineBand {
-  band: ThirdOctave;
+  band: Pick<ThirdOctave, "nominalHz">;
   /** Short-term limit of the band under the criterion. */
-  limit: BandLimit;
+  limit: Pick<BandLimit, "status" | "splDb" | "nominalDb">;
   /** More drive gives no more output there. */
   ceiling: boolean;
 }

@@ -1,6 +1,7 @@
 /** Every operation of the API, in the order of the document. */
 import { accountOperations } from "./account";
 import { analysisOperations } from "./analyses";
+import { compareOperations } from "./compare";
 import { getHealth } from "./health";
 import { evidenceOperations, seriesFolderOperations } from "./keeping";
 import { labOperations } from "./labs";
@@ -21,6 +22,7 @@ export const OPERATION_GROUPS: Readonly<Record<string, readonly Operation[]>> = 
   Recordings: runOperations,
   Analyses: analysisOperations,
   Review: reviewOperations,
+  Compare: compareOperations,
   Publications: [...publicationOperations, ...evidenceOperations],
   Account: [...sessionOperations, ...accountOperations],
   Members: memberOperations,

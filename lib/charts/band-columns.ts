@@ -137,7 +137,7 @@ export function toColumn(
 export const computedCause = (
   band: Pick<Band, "cause">,
   limit: Pick<Limit, "bound_by" | "status">,
-): CauseName =>
+): Band["cause"] | "distortion only" =>
   band.cause === "none" &&
   limit.bound_by === "thd" &&
   (limit.status === "found" || limit.status === "below lowest")

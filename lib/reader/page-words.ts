@@ -6,11 +6,11 @@ import {
   formatPlain,
   NBSP,
 } from "../charts/format";
+import { PLACE_WORDS } from "../compare/space";
 import { toMaxLevelNotice, type HearingNotice } from "../exposure/notices";
 import type { Snapshot } from "../publication/snapshot-schema";
 import { toHeadlineSentences } from "../result/headline-words";
 import type { Criterion } from "../series/series-schema";
-import type { Environment } from "../series/vocabulary";
 import type { SeatSource } from "./seat";
 import { toPartsOfSound } from "./parts-of-sound";
 
@@ -80,16 +80,6 @@ export function toSeatSource(
   };
 }
 
-const PLACES: Record<Environment, string> = {
-  anechoic: "in an anechoic room",
-  "ground-plane": "on the ground plane",
-  "flush-half-space": "flush in a large wall",
-  outdoors: "outdoors",
-  gated: "in a room, reflections gated out",
-  "in-room": "in a room",
-  "near-field": "close to the drive unit",
-};
-
 /** How the test went, in one paragraph. */
 export function toMeasuredWords(snapshot: Pick<Snapshot, "measured">): string {
   const { sweep, levels_dB, long_term_levels_dB, distance_m, environment } = snapshot.measured;
@@ -99,7 +89,7 @@ export function toMeasuredWords(snapshot: Pick<Snapshot, "measured">): string {
       ? ""
       : `, and at ${formatList(long_term_levels_dB.map(formatLevel))} again after conditioning noise`;
   const feet = (distance_m / 0.3048).toFixed(1);
-  return `One loudspeaker played a sine sweep of ${formatPlain(Math.round(sweep.length_s))} seconds, one tone at a time, at ${levels}${NBSP}dB${longTerm}. The microphone stood ${formatPlain(distance_m)}${NBSP}m (${feet}${NBSP}ft) away ${PLACES[environment]}; levels are stated for 1${NBSP}m.`;
+  return `One loudspeaker played a sine sweep of ${formatPlain(Math.round(sweep.length_s))} seconds, one tone at a time, at ${levels}${NBSP}dB${longTerm}. The microphone stood ${formatPlain(distance_m)}${NBSP}m (${feet}${NBSP}ft) away ${PLACE_WORDS[environment]}; levels are stated for 1${NBSP}m.`;
 }
 
 /** "1 of 27 causes changed by the analyst". */

@@ -5,6 +5,7 @@ import { inLab } from "../../db/in-lab";
 import { claimAnalysis, createAnalysis } from "../../db/queries/analyses";
 import { findPublication, getSnapshotText } from "../../db/queries/publications";
 import { saveResult } from "../../db/queries/results";
+import { compareSeries } from "../../lib/api/compare";
 import {
   answerMakerComment,
   createPreview,
@@ -247,3 +248,37 @@ async function leave(link: string, form: Record<string, string>): Promise<number
   });
   return response.status;
 }
+
+describe("comparing", () => {
+  it("puts series side by side under a criterion, the first as the reference", async () => {
+    const [a, b] = [await makeSeries(false), await makeSeries(false)];
+    const { id: planned } = await planTestSeries(bench);
+    const gone = "00000000-0000-4000-8000-000000000000";
+    const query = { series: [a.seriesId, b.seriesId, planned, gone].join(","), thd: "off" };
+    const answer = await call(bench, compareSeries, { query });
+    expect(answer.criterion).toEqual({ compression_dB: 3 });
+    expect(answer.tests.map((test) => test.id)).toEqual([a.seriesId, b.seriesId]);
+    expect(answer.left_out.map(({ id, why }) => [id, why])).toEqual([
+      [planned, "It has no analysis yet."],
+      [gone, "It is no longer there."],
+    ]);
+    expect(answer.asked.map((one) => one.id)).toEqual([a.seriesId, b.seriesId, planned]);
+    expect(answer.offered.runs).toEqual(["short-term", "long-term"]);
+    // The same loudspeaker twice: no difference where both were reached, nothing known elsewhere.
+    const shown = answer.tests[1]?.differences.map((one) => one.shown) ?? [];
+    expect(shown).toHaveLength(answer.bands_Hz.length);
+    expect(new Set(shown)).toEqual(new Set(["none", "unknown"]));
+    expect(shown[answer.bands_Hz.indexOf(50)]).toBe("none");
+    expect(shown[answer.bands_Hz.indexOf(1000)]).toBe("unknown");
+  });
+
+  it("refuses five, and what is no id", async () => {
+    const id = "00000000-0000-4000-8000-000000000000";
+    for (const series of [Array.from({ length: 5 }, () => id).join(","), "osier-8a", ""]) {
+      const problem = await problemOf(call(bench, compareSeries, { query: { series } }));
+      expect(problem.code).toBe("request.invalid");
+    }
+    const problem = await problemOf(call(bench, compareSeries, { query: { series: id } }));
+    expect(problem.code).toBe("not-found");
+  });
+});

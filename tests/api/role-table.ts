@@ -56,6 +56,7 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("getResult", EVERYONE, "not there"),
   row("getReview", EVERYONE, "not there"),
   row("compareAnalyses", EVERYONE, "not there"),
+  row("compareSeries", EVERYONE, "not there"),
   row("listEngineChanges", EVERYONE, "yes"),
   row("followAnalysis", EVERYONE, "not there"),
   row("followSeries", EVERYONE, "not there"),

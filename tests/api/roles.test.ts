@@ -56,6 +56,7 @@ const INPUTS: Readonly<Record<string, (things: Things) => { body?: unknown; quer
   }),
   keepDecisions: ({ analysisId }) => ({ body: { from: analysisId } }),
   compareAnalyses: ({ analysisId }) => ({ query: { against: analysisId } }),
+  compareSeries: ({ seriesId }) => ({ query: { series: seriesId } }),
   writeComment: () => ({ body: { nominal_Hz: null, words: "steep" } }),
   requestRun: () => ({ body: { level_dB: 80, reason: "a reason" } }),
   signOff: () => ({
