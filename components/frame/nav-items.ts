@@ -6,6 +6,7 @@ export function toNavItems(roles: readonly Role[]): NavItem[] {
   if (!may(roles, "see")) return [];
   return [
     { href: "/series", label: "Series" },
+    { href: "/compare", label: "Compare" },
     { href: "/published", label: "Published" },
     { href: "/loudspeakers", label: "Loudspeakers" },
     { href: "/members", label: "Lab", also: ["/lab"] },

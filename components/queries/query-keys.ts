@@ -1,5 +1,6 @@
 /** Every key of the browser's cache, once: what a fetch is stored under and what an act makes stale. */
 import type { z } from "zod";
+import type { compareQuerySchema } from "@/lib/api/compare";
 import type { seriesQuerySchema } from "@/lib/api/series";
 import type { TrailAbout } from "@/lib/labs/trail-about";
 
@@ -9,6 +10,7 @@ export const queryKeys = {
   /** Every page of the list; an act on a series makes them all stale. */
   seriesLists: ["series-list"],
   seriesList: (query: SeriesListQuery) => ["series-list", query],
+  comparison: (query: z.input<typeof compareQuerySchema>) => ["series-list", "comparison", query],
   series: (seriesId: string) => ["series", seriesId],
   runs: (seriesId: string) => ["series", seriesId, "runs"],
   history: (seriesId: string) => ["series", seriesId, "history"],

@@ -1,6 +1,7 @@
 /** The state of the list as it stands in the address: a view can be sent to somebody and comes back. */
 import {
   createLoader,
+  parseAsArrayOf,
   parseAsInteger,
   parseAsString,
   parseAsStringLiteral,
@@ -20,6 +21,8 @@ export const listAddress = {
   direction: parseAsStringLiteral(["up", "down"]).withDefault("down"),
   page: parseAsInteger.withDefault(1),
   criterion: parseAsString.withDefault(toCriterionKey(DEFAULT_CRITERION)),
+  /** Ids in the compare tray; the first is the reference. */
+  compare: parseAsArrayOf(parseAsString).withDefault([]),
 };
 export type ListView = inferParserType<typeof listAddress>;
 

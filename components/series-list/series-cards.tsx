@@ -1,5 +1,6 @@
 "use client";
 
+import { ChooseBox } from "../compare/choose-box";
 import { Moment } from "../frame/moment";
 import { StateSquares } from "../parts/state-boxes";
 import { findLimits } from "./list-words";
@@ -8,7 +9,7 @@ import { SeriesName, type RowsProps } from "./series-table";
 import { SmallWall } from "./small-wall";
 
 /** The same rows on a phone: one under the other. */
-export function SeriesCards({ rows, criterionKey }: RowsProps) {
+export function SeriesCards({ rows, criterionKey, chosen, onChoose }: RowsProps) {
   return (
     <ul aria-label="Series" className="border-y border-rule bg-sheet md:hidden">
       {rows.map((row) => {
@@ -25,8 +26,9 @@ export function SeriesCards({ rows, criterionKey }: RowsProps) {
                 <Moment at={row.changed_at} />
               </p>
             </div>
-            <div className="mt-2">
+            <div className="mt-2 flex flex-wrap items-center justify-between gap-x-4">
               <StateSquares state={row.state} note={row.state_detail} />
+              <ChooseBox row={row} chosen={chosen} onChoose={onChoose} worded />
             </div>
             {limits !== null && (
               <>

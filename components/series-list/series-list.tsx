@@ -7,6 +7,8 @@ import { ApiProblem } from "@/lib/api/client";
 import type { SeriesRow } from "@/lib/api/series";
 import { formatCount } from "@/lib/charts/format";
 import { toMaxLevelNotice } from "@/lib/exposure/notices";
+import { toChosenIds, toggleChosen } from "../compare/compare-address";
+import { CompareTray } from "../compare/compare-tray";
 import { PageHead } from "../frame/page-head";
 import { Button, LinkButton } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
@@ -46,6 +48,8 @@ export function SeriesList({ mayCapture }: { mayCapture: boolean }) {
   const rows = list.data?.series ?? NO_ROWS;
   const criteria = listCriteria(rows);
   const criterion = criteria.find((c) => toCriterionKey(c) === view.criterion) ?? DEFAULT_CRITERION;
+  const chosen = toChosenIds(view.compare);
+  const onChoose = (id: string): void => change({ compare: toggleChosen(chosen, id) });
   const nothingYet = list.data !== undefined && list.data.total === 0 && view.archived === "no";
 
   return (
@@ -91,11 +95,18 @@ export function SeriesList({ mayCapture }: { mayCapture: boolean }) {
                   <SeriesTable
                     rows={rows}
                     criterionKey={toCriterionKey(criterion)}
+                    chosen={chosen}
+                    onChoose={onChoose}
                     view={view}
                     onSort={(sort) => change(toSort(view, sort))}
                     stale={list.isPlaceholderData}
                   />
-                  <SeriesCards rows={rows} criterionKey={toCriterionKey(criterion)} />
+                  <SeriesCards
+                    rows={rows}
+                    criterionKey={toCriterionKey(criterion)}
+                    chosen={chosen}
+                    onChoose={onChoose}
+                  />
                 </>
               )}
               {list.isPending && (
@@ -122,6 +133,14 @@ export function SeriesList({ mayCapture }: { mayCapture: boolean }) {
             </>
           )}
         </>
+      )}
+      {chosen.length > 0 && (
+        <CompareTray
+          chosen={chosen}
+          rows={rows}
+          onRemove={onChoose}
+          onClear={() => change({ compare: [] })}
+        />
       )}
     </>
   );

@@ -6,6 +6,7 @@ import { Moment } from "../frame/moment";
 import { SortTh, NoValue, Table, TableFrame, Td, Th, Tr } from "../parts/table";
 import { StateSquares } from "../parts/state-boxes";
 import { toInitialName } from "../runs/verdict-words";
+import { ChooseBox } from "../compare/choose-box";
 import { LevelSteps } from "./level-steps";
 import type { ListView } from "./list-address";
 import { findLimits } from "./list-words";
@@ -16,6 +17,9 @@ import { SmallWall } from "./small-wall";
 export interface RowsProps {
   rows: readonly SeriesRow[];
   criterionKey: string;
+  /** Ids in the compare tray. */
+  chosen: readonly string[];
+  onChoose: (id: string) => void;
 }
 
 interface SeriesTableProps extends RowsProps {
@@ -25,7 +29,8 @@ interface SeriesTableProps extends RowsProps {
   stale: boolean;
 }
 
-export function SeriesTable({ rows, criterionKey, view, onSort, stale }: SeriesTableProps) {
+export function SeriesTable(props: SeriesTableProps) {
+  const { rows, criterionKey, chosen, onChoose, view, onSort, stale } = props;
   const sortBy = (sort: ListView["sort"]) =>
     ({
       sorted: view.sort === sort ? (view.direction === "up" ? "ascending" : "descending") : null,
@@ -37,7 +42,10 @@ export function SeriesTable({ rows, criterionKey, view, onSort, stale }: SeriesT
         <caption className="sr-only">Series of the lab</caption>
         <thead>
           <tr>
-            <SortTh {...sortBy("name")} className="pl-gutter!">
+            <Th className="w-[17px] pr-0! pl-gutter!">
+              <span className="sr-only">Compare</span>
+            </Th>
+            <SortTh {...sortBy("name")} className="pl-3.5!">
               Loudspeaker
             </SortTh>
             <SortTh {...sortBy("number")}>Series</SortTh>
@@ -56,8 +64,11 @@ export function SeriesTable({ rows, criterionKey, view, onSort, stale }: SeriesT
           {rows.map((row) => {
             const limits = findLimits(row, criterionKey);
             return (
-              <Tr key={row.id} height="list">
-                <Td className="pl-gutter!">
+              <Tr key={row.id} height="list" selected={chosen.includes(row.id)}>
+                <Td className="pr-0! pl-gutter!">
+                  <ChooseBox row={row} chosen={chosen} onChoose={onChoose} />
+                </Td>
+                <Td className="pl-3.5!">
                   <SeriesName row={row} />
                 </Td>
                 <Td figures>{row.number}</Td>

@@ -141,6 +141,20 @@ export function toUncertaintyWords(comparison: Comparison): string {
   return low === high ? `under ${low}${NBSP}dB` : `under ${low} to ${high}${NBSP}dB, band by band`;
 }
 
+/** The finding of the figure in a sentence or two, for who does not see it. */
+export function sayComparison({ tests }: Comparison): string {
+  return tests
+    .map((test, at) => {
+      const { atLeast, words, note } = toReachedLines(test);
+      const level = test.reached === null ? words : `${atLeast ? "at least " : ""}${words} dB`;
+      const first = toFirstLines(test);
+      return `${letterOf(at)}, ${test.model}: ${level}${note === null ? "" : `, ${note}`}; ${
+        test.first === null ? "" : "gives out first: "
+      }${first.words}.`;
+    })
+    .join(" ");
+}
+
 /** What stands under table and file. */
 export function toMethodNotes(comparison: Comparison): string {
   const assumed = comparison.tests.some((test) => test.uncertainty_assumed);
