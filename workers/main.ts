@@ -16,6 +16,7 @@ import { analyseSeriesJob, giveUpAnalysis } from "./analyse-series";
 import { checkArrivalJob, giveUpCheck } from "./check-arrival";
 import { createComputingChild } from "./compute/computing-child";
 import { createLog } from "./log";
+import { openPost } from "./post";
 import { repeat } from "./repeat";
 import { sweepFiles, sweepJobs, sweepUploads } from "./sweep";
 import type { JobTools } from "./tools";
@@ -79,6 +80,7 @@ async function main(): Promise<void> {
     ),
   ];
   await Promise.all(slots.map(({ worker }) => worker.waitUntilReady()));
+  const post = await openPost(environment, db, log);
 
   const sweepTools = { ...shared, stagingFolder: stagingFolder(environment.dataDir) };
   const sweeps = [
@@ -91,9 +93,10 @@ async function main(): Promise<void> {
   await untilAskedToEnd();
   log.info("worker ends");
   sweeps.forEach((stop) => stop());
+  post?.stop();
   await closeWithin(
     CLOSE_WITHIN_MS,
-    slots.map(({ worker }) => worker),
+    [...slots.map(({ worker }) => worker), ...(post === null ? [] : [post])],
     log,
   );
   slots.forEach(({ child }) => child.close());

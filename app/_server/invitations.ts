@@ -13,7 +13,8 @@ import {
   useInvitation as markUsed,
 } from "../../db/queries/invitations";
 import { getLab } from "../../db/queries/labs";
-import { addMember, findMemberByEmail } from "../../db/queries/members";
+import { enqueueMail } from "../../db/queries/mails";
+import { addMember, findMemberByEmail, listNames } from "../../db/queries/members";
 import { hashPassword } from "../../lib/account/passwords";
 import { createSecret, digestSecret } from "../../lib/account/secrets";
 import type { OpenInvitation } from "../../lib/api/members";
@@ -23,6 +24,8 @@ import type { Attempts } from "./attempts";
 import { checkPasswordOf } from "./sign-in";
 
 /**
+ * Mails the link, too.
+ *
  * @returns the row and the link's secret, which is nowhere else.
  * @throws AppError "conflict.exists" for a member
  */
@@ -46,6 +49,23 @@ export async function invite(
     subjectType: "invitation",
     subjectId: row.id,
     details: { email: row.email, roles: row.roles },
+  });
+  const lab = await getLab(trx, by.labId);
+  const names = await listNames(trx, [by.accountId]);
+  await enqueueMail(trx, {
+    labId: by.labId,
+    accountId: null,
+    to: row.email,
+    content: {
+      kind: "invitation",
+      lab: lab.name,
+      time_zone: lab.time_zone,
+      name: row.name,
+      invited_by: names.get(by.accountId ?? "") ?? null,
+      roles: row.roles,
+      expires_at: row.expires_at.toISOString(),
+      secret,
+    },
   });
   return { row, secret };
 }

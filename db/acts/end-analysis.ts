@@ -9,9 +9,10 @@ import { recordEvent } from "../queries/audit";
 import { notifyChange } from "../queries/changes";
 import { findCurrentAnalysis } from "../queries/current-analysis";
 import { saveResult } from "../queries/results";
-import { lockSeries, updateSeries } from "../queries/series";
+import { getSeries, lockSeries, updateSeries } from "../queries/series";
 import type { AnalysisWork } from "./analysis-work";
 import { loadCapture } from "./capture";
+import { noticeAnalysisFailed, noticeReadyForReview } from "./notices";
 import { deriveState } from "./settle-series";
 
 /**
@@ -40,6 +41,9 @@ export async function endAsDone(
     });
   }
   await finish(trx, by, work, "analysis.done", {});
+  if (counts?.id !== analysisId) return;
+  const { state } = await getSeries(trx, by.labId, seriesId);
+  if (state === "in review") await noticeReadyForReview(trx, by, seriesId, version);
 }
 
 /** @param error of the engine or of ours; the row keeps it in the tester's words. */
@@ -58,6 +62,7 @@ export async function endAsFailed(
     message: failure.message,
     report: failure.report,
   });
+  await noticeAnalysisFailed(trx, by, work.seriesId, work.version, failure);
 }
 
 async function finish(

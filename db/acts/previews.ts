@@ -16,6 +16,7 @@ import {
   revokePreview as revokeRow,
 } from "../queries/previews";
 import { lockSeries } from "../queries/series";
+import { noticeMakerComment } from "./notices";
 import { draftSnapshot } from "./publish";
 
 const DAY_MS = 86_400_000;
@@ -82,17 +83,15 @@ export async function commentAsMaker(
 ): Promise<void> {
   const { series_id: seriesId } = await getPreview(trx, labId, previewId);
   const id = await addMakerComment(trx, labId, { seriesId, previewId, ...comment });
-  await recordEvent(
-    trx,
-    { labId, accountId: null },
-    {
-      act: "maker.commented",
-      subjectType: "maker-comment",
-      subjectId: id,
-      seriesId,
-      details: { name: comment.name },
-    },
-  );
+  const by = { labId, accountId: null };
+  await recordEvent(trx, by, {
+    act: "maker.commented",
+    subjectType: "maker-comment",
+    subjectId: id,
+    seriesId,
+    details: { name: comment.name },
+  });
+  await noticeMakerComment(trx, by, seriesId, { from: comment.name, words: comment.words });
   await notifyChange(trx, { labId, seriesId });
 }
 

@@ -25,6 +25,7 @@ import {
 import { getResult } from "../queries/results";
 import { listRuns } from "../queries/runs";
 import { getSeries, lockSeries, toSeriesNumber } from "../queries/series";
+import { noticePublished } from "./notices";
 
 export interface Publishing {
   words: PublicationWords;
@@ -89,6 +90,12 @@ export async function publishSeries(
       ...(embargoUntil === null ? {} : { embargo_until: embargoUntil.toISOString() }),
       ...(publishing.changeNote === null ? {} : { reason: publishing.changeNote }),
     },
+  });
+  await noticePublished(trx, by, seriesId, {
+    slug,
+    revision: drafted.snapshot.revision,
+    changeNote: publishing.changeNote,
+    embargoUntil,
   });
   await notifyChange(trx, { labId: by.labId, seriesId });
   return id;

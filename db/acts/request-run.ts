@@ -12,6 +12,7 @@ import { lockSeries } from "../queries/series";
 import { isLive } from "../../lib/runs/ladder";
 import { requireOpen } from "./act-on-run";
 import { loadCapture } from "./capture";
+import { noticeRunAsked } from "./notices";
 import { settleSeries } from "./settle-series";
 
 type By = LabScope & { accountId: string };
@@ -51,6 +52,8 @@ export async function requestRun(
     seriesId: wanted.seriesId,
     details: { slot, label, level_dB: wanted.levelDb, reason: wanted.reason },
   });
+  const { levelDb, reason } = wanted;
+  await noticeRunAsked(trx, by, wanted.seriesId, { label, levelDb, reason });
   const followUp = await settleSeries(trx, by, wanted.seriesId);
   return { request: await toAnswer(trx, by, id), followUp };
 }

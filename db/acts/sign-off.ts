@@ -26,6 +26,7 @@ import {
   reopenSignOff,
 } from "../queries/sign-offs";
 import { loadCapture } from "./capture";
+import { noticeReopened, noticeSignedOff } from "./notices";
 import { deriveState } from "./settle-series";
 
 type By = LabScope & { accountId: string };
@@ -138,6 +139,10 @@ export async function signOffAnalysis(
       one_person: onePerson,
     },
   });
+  await noticeSignedOff(trx, by, series.id, {
+    version: analysis.version,
+    criterion: sayCriterion(wanted.criterion),
+  });
   await deriveState(trx, by, await loadCapture(trx, labId, series.id));
   await notifyChange(trx, { labId, seriesId: series.id, analysisId });
   const made = (await listSignOffs(trx, labId, series.id)).find((one) => one.id === id);
@@ -178,6 +183,7 @@ export async function reopenSeries(
     seriesId,
     details: { version: signOff.analysis_version, reason },
   });
+  await noticeReopened(trx, by, seriesId, { version: signOff.analysis_version, reason });
   await deriveState(trx, by, await loadCapture(trx, labId, seriesId));
   await notifyChange(trx, { labId, seriesId });
 }

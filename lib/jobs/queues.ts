@@ -1,14 +1,23 @@
-/** The queues on PostgreSQL: one for arrival checks, one for analyses, so that checks run ahead. */
+/**
+ * The queues on PostgreSQL: one for arrival checks, one for analyses, so that checks run ahead, and
+ * one for mails, which the worker alone fills: the outbox says what is due.
+ */
 import { createPostgresBackend, withBackend } from "bullmq";
 import { AppError } from "../errors/app-error";
 import type { AnalyseSeriesPayload } from "./analyse-series";
 import { ANALYSE_SERIES } from "./analyse-series";
 import type { CheckArrivalPayload } from "./check-arrival";
 import { CHECK_ARRIVAL } from "./check-arrival";
+import { SEND_MAIL, type SendMailPayload } from "./send-mail";
 
 const backend = withBackend(createPostgresBackend);
 const QueueOnPostgres = backend.Queue;
 export const WorkerOnPostgres = backend.Worker;
+
+export interface MailQueue {
+  mails: InstanceType<typeof QueueOnPostgres<SendMailPayload>>;
+  close: () => Promise<void>;
+}
 
 export interface Queues {
   checks: InstanceType<typeof QueueOnPostgres<CheckArrivalPayload>>;
@@ -41,12 +50,39 @@ export async function openQueues(
   };
   const checks = new QueueOnPostgres<CheckArrivalPayload>(CHECK_ARRIVAL, options);
   const analyses = new QueueOnPostgres<AnalyseSeriesPayload>(ANALYSE_SERIES, options);
+  const close = await becomeReady([checks, analyses], onError);
+  return { checks, analyses, close };
+}
+
+/** Connects as tidemark_queue. A mail is tried again by its row, not by the queue. @throws as openQueues */
+export async function openMailQueue(
+  connectionString: string,
+  onError: (error: Error) => void,
+): Promise<MailQueue> {
+  const mails = new QueueOnPostgres<SendMailPayload>(SEND_MAIL, {
+    connection: { connectionString, max: 1 },
+    defaultJobOptions: { ...JOB_OPTIONS, attempts: 1 },
+  });
+  return { mails, close: await becomeReady([mails], onError) };
+}
+
+interface Opening {
+  on: (event: "error", listener: (error: Error) => void) => unknown;
+  waitUntilReady: () => Promise<unknown>;
+  close: () => Promise<void>;
+}
+
+/** @returns closes them. @throws AppError "queue.unavailable" */
+async function becomeReady(
+  queues: readonly Opening[],
+  onError: (error: Error) => void,
+): Promise<() => Promise<void>> {
   const close = async (): Promise<void> => {
-    await Promise.allSettled([checks.close(), analyses.close()]);
+    await Promise.allSettled(queues.map((queue) => queue.close()));
   };
-  for (const queue of [checks, analyses]) queue.on("error", onError);
+  for (const queue of queues) queue.on("error", onError);
   try {
-    await Promise.all([checks.waitUntilReady(), analyses.waitUntilReady()]);
+    await Promise.all(queues.map((queue) => queue.waitUntilReady()));
   } catch (error) {
     await close();
     throw new AppError(
@@ -55,5 +91,5 @@ export async function openQueues(
       { cause: error },
     );
   }
-  return { checks, analyses, close };
+  return close;
 }
