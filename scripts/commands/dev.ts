@@ -35,6 +35,7 @@ export function main(): Promise<number> {
             graceMs: GRACE_MS,
           }
         : null,
+    mailbox: ["--import", "tsx", "scripts/entries/mailbox.ts"],
     seed: hasEntry("scripts/entries/seed.ts")
       ? ["--import", "tsx", "scripts/entries/seed.ts"]
       : null,

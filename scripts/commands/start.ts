@@ -41,6 +41,7 @@ export function main(): Promise<number> {
             graceMs: WORKER_GRACE_MS,
           }
         : null,
+    mailbox: [bundlePath("mailbox")],
     seed: hasEntry("scripts/entries/seed.ts") ? [bundlePath("seed")] : null,
     env: toProcessEnv,
   });

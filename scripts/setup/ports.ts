@@ -25,6 +25,9 @@ export async function assertPortFree(port: number, host: string, variable: strin
   );
 }
 
+export const isPortFree = async (port: number, host: string): Promise<boolean> =>
+  (await tryToListen(port, host)) === null;
+
 /** A port on loopback that nobody uses at this moment. */
 export async function findFreePort(): Promise<number> {
   const server = createServer();

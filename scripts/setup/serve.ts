@@ -4,6 +4,7 @@ import { type Environment, toLocalUrl } from "../../lib/config/environment";
 import { cloneDir } from "./bootstrap.mjs";
 import { type Cluster } from "./cluster";
 import { describeSignIns } from "./demo-sign-ins";
+import { planMailbox, type MailboxPlan } from "./local-mailbox";
 import { holdInstallation, openDatabase, openInstallation } from "./installation";
 import { assertPortFree } from "./ports";
 import { runCommand } from "./run-command";
@@ -16,6 +17,8 @@ export interface ServePlan {
   web: (environment: Environment) => ChildPlan;
   /** Null while the product has no worker. */
   worker: (environment: Environment) => ChildPlan | null;
+  /** Arguments to Node that run the local mailbox; its own follow. */
+  mailbox: readonly string[];
   /** Arguments to Node that fill an empty database; null where there is no demo. */
   seed: readonly string[] | null;
   env: (environment: Environment) => NodeJS.ProcessEnv;
@@ -34,7 +37,9 @@ export async function serve(plan: ServePlan): Promise<number> {
   try {
     await assertPortFree(environment.webPort, environment.webHost, "TIDEMARK_WEB_PORT");
     await plan.prepare(stop.signal);
-    await serveWithDatabase(plan, environment, stop);
+    const mailbox = environment.smtpUrl === null ? await planMailbox(environment) : null;
+    const served = mailbox === null ? environment : { ...environment, smtpUrl: mailbox.smtpUrl };
+    await serveWithDatabase(plan, served, mailbox, stop);
     return 0;
   } catch (error) {
     if (stop.signal.aborted) return 0;
@@ -47,6 +52,7 @@ export async function serve(plan: ServePlan): Promise<number> {
 async function serveWithDatabase(
   plan: ServePlan,
   environment: Environment,
+  mailbox: MailboxPlan | null,
   stop: StopRequest,
 ): Promise<void> {
   stop.signal.throwIfAborted();
@@ -56,9 +62,12 @@ async function serveWithDatabase(
     sayPlaces(environment, cluster);
     stop.signal.throwIfAborted();
     const worker = plan.worker(environment);
+    if (mailbox !== null) {
+      children.push(supervise(mailbox.toChild(plan.mailbox, plan.env(environment)), say));
+    }
     children.push(supervise(plan.web(environment), say));
     if (worker !== null) children.push(supervise(worker, say));
-    await becomeReady(plan, environment, stop);
+    await becomeReady(plan, environment, mailbox, stop);
     while (!stop.signal.aborted) {
       await Promise.race([sleep(DATABASE_LOOK_MS, undefined, { ref: false }), stop.requested]);
       if (!stop.signal.aborted && !cluster.isRunning()) {
@@ -77,6 +86,7 @@ async function serveWithDatabase(
 async function becomeReady(
   plan: ServePlan,
   environment: Environment,
+  mailbox: MailboxPlan | null,
   stop: StopRequest,
 ): Promise<void> {
   await waitForWeb(toLocalUrl(environment), stop.signal);
@@ -91,6 +101,11 @@ async function becomeReady(
     if (code !== 0) say(`The demo lab could not be filled: ${output.trim().split("\n").at(-1)}`);
   }
   say(`\nTidemark is ready: ${environment.publicUrl}   (Ctrl-C ends it)`);
+  if (mailbox !== null) {
+    say(
+      `Mail: ${mailbox.pageUrl}   (read here: none leaves this machine without TIDEMARK_SMTP_URL)`,
+    );
+  }
   for (const line of describeSignIns(environment.dataDir)) say(line);
 }
 

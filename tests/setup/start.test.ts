@@ -73,8 +73,12 @@ describe("npm start", () => {
       expect(await listening()).toEqual([true, true]);
       const answer = await fetch(`http://127.0.0.1:${clone.webPort}/`, { redirect: "manual" });
       expect(answer.status).toBeLessThan(500);
+      const mailbox = /Mail: http:\/\/127\.0\.0\.1:(\d+)/.exec(running.output())?.[1] ?? "";
+      const mails = await fetch(`http://127.0.0.1:${mailbox}/`);
+      expect(await mails.text()).toContain("No mail yet");
       expect(await running.stop(signal)).toBe(0);
       expect(await listening()).toEqual([false, false]);
+      expect(await isListening(Number(mailbox))).toBe(false);
       expect(running.output()).toContain("Stopped.");
     },
   );
