@@ -4,6 +4,7 @@ import { sql } from "kysely";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { invite, toInvitationLink } from "../../app/_server/invitations";
 import type { AnalysisWork } from "../../db/acts/analysis-work";
+import { decideBands } from "../../db/acts/decide-bands";
 import { endAsDone, endAsFailed } from "../../db/acts/end-analysis";
 import { commentAsMaker, createPreview } from "../../db/acts/previews";
 import { publishSeries } from "../../db/acts/publish";
@@ -11,16 +12,17 @@ import { requestRun } from "../../db/acts/request-run";
 import { reopenSeries, signOffAnalysis } from "../../db/acts/sign-off";
 import { inLab } from "../../db/in-lab";
 import { claimAnalysis, createAnalysis } from "../../db/queries/analyses";
+import { listDecisions } from "../../db/queries/decisions";
 import { removeMember } from "../../db/queries/members";
 import { chooseNotice } from "../../db/queries/notice-choices";
 import { readEnvironment } from "../../lib/config/environment";
 import { AnalysisError } from "../../lib/errors/app-error";
+import { digestDecisions, toSignedDecisions } from "../../lib/review/digest-decisions";
 import { openPost, type Post } from "../../workers/post";
 import { createTestDatabase } from "../support/database";
 import { type LabBench, makeTestLab, makeTestMember, openLabBench } from "../support/lab-bench";
 import { type MailCatcher, openMailCatcher } from "../support/mail-catcher";
 import { makeReviewableSeries, type ReviewableSeries } from "../support/reviewable";
-import { signTestSeries } from "../support/signed-series";
 
 const PUBLIC_URL = "https://bench.example";
 const CRITERION = { compression_dB: 3 } as const;
@@ -246,10 +248,11 @@ describe("a notice", () => {
   it("of a finished one goes to analysts", async () => {
     const done = await work(series.seriesId, "b");
     const by = { labId, accountId: null };
-    await inLab(bench.app, by, (trx) => endAsDone(trx, by, done, series.result));
+    await inLab(bench.app, by, (trx) => endAsDone(trx, by, done, series.result, null));
     expect(await readers("ready-for-review")).toEqual(["analyst", "both", "quiet"]);
-    const mail = await catcher.waitFor(people.analyst.email);
-    expect(mail.subject).toBe("S-0001 Withy Lane Osier 8A is ready for review");
+    const subject = "S-0001 Withy Lane Osier 8A is ready for review";
+    const mail = await catcher.waitFor(people.analyst.email, subject);
+    expect(mail.text).toContain(`${PUBLIC_URL}/series/${series.seriesId}/output-limit`);
   });
 
   it("of a run that is asked for goes to testers, with the reason", async () => {
@@ -282,11 +285,11 @@ describe("a notice", () => {
           decisionsDigest: "0".repeat(64),
         }),
       ),
-    ).rejects.toThrow(/decided|open/);
+    ).rejects.toThrow("was replaced by version");
     expect(await rows("signed-off")).toEqual([]);
   });
 
-  it("of publication, comment and reopening goes to whose work it is, but not to who acts", async () => {
+  it("of sign-off, publication, comment and reopening goes to whose work it is, but not to who acts", async () => {
     const signed = await makeReviewableSeries(bench, people.tester.scope);
     const { seriesId, analysisId } = signed;
     const words = {
@@ -296,9 +299,29 @@ describe("a notice", () => {
       answer_to_maker: null,
       evidence_public: false,
     };
-    await act(people.both, (trx) =>
-      signTestSeries(trx, people.both.scope, { seriesId, analysisId, criterion: CRITERION }),
-    );
+    await act(people.both, async (trx) => {
+      const { scope } = people.both;
+      const bands = signed.result.bands;
+      await decideBands(
+        trx,
+        scope,
+        analysisId,
+        bands.map(({ nominal_Hz, cause }) => ({
+          nominal_Hz,
+          cause,
+          reason: null,
+          seen_version: 0,
+        })),
+      );
+      const decisions = toSignedDecisions(
+        await listDecisions(trx, labId, analysisId),
+        bands.map((band) => band.nominal_Hz),
+      );
+      await signOffAnalysis(trx, scope, analysisId, {
+        criterion: CRITERION,
+        decisionsDigest: digestDecisions(decisions ?? []),
+      });
+    });
     await act(people.both, async (trx) => {
       await publishSeries(trx, people.both.scope, seriesId, {
         words,
@@ -318,6 +341,7 @@ describe("a notice", () => {
       });
       await reopenSeries(trx, people.both.scope, seriesId, "Wrong port tuning.");
     });
+    expect(await readers("signed-off")).toEqual(["reviewer"]);
     expect(await readers("published")).toEqual(["analyst", "reviewer", "tester"]);
     expect(await readers("maker-comment")).toEqual(["both", "quiet", "reviewer"]);
     expect(await readers("reopened")).toEqual(["quiet", "reviewer"]);
