@@ -17,7 +17,7 @@ for name in ("OMP_NUM_THREADS", "OPENBLAS_NUM_THREADS", "MKL_NUM_THREADS"):
     os.environ[name] = "1"
 
 import numpy as np
-from scipy import fft, signal
+from scipy import fft
 
 THIRD_DB = 1 / 3
 ORDERS = range(1, 10)
@@ -37,7 +37,17 @@ def read(path):
     triples = np.frombuffer(data, np.uint8, size // 3 * 3, at + 8).reshape(-1, 3)
     words = np.zeros((len(triples), 4), np.uint8)
     words[:, 1:] = triples
-    return (words.view("<i4")[:, 0] * np.float32(2.0**-31)).astype(np.float32), rate
+    samples = words.view("<i4")[:, 0].astype(np.float32)
+    samples *= np.float32(2.0**-31)
+    return samples, rate
+
+
+def hann(size):
+    return 0.5 - 0.5 * np.cos(2 * np.pi / size * np.arange(size))
+
+
+def power_of(spectrum):
+    return spectrum.real**2 + spectrum.imag**2
 
 
 def grid(start, stop):
@@ -59,9 +69,10 @@ class Analysis:
     def log_means(self, spectrum, step, edges):
         """Means uniform in lg f by the running integral over ln f."""
         ln = self.once(("ln", len(spectrum)), lambda: np.log(np.maximum(np.arange(len(spectrum)), 0.5)))
+        widths = self.once(("widths", len(spectrum)), lambda: 0.5 * np.diff(ln))
         integral = np.empty(len(spectrum))
         integral[0] = 0
-        np.cumsum((spectrum[1:] + spectrum[:-1]) * 0.5 * (ln[1:] - ln[:-1]), out=integral[1:])
+        np.cumsum((spectrum[1:] + spectrum[:-1]) * widths, out=integral[1:])
         position = np.log(np.maximum(edges / step, 0.5))
         at = np.interp(position, ln, integral)
         means = np.diff(at) / np.diff(position)
@@ -74,8 +85,8 @@ class Analysis:
             return None
         hop = max(size // 2, (len(samples) - size) // 32)
         blocks = np.lib.stride_tricks.sliding_window_view(samples, size)[::hop]
-        window = self.once(("hann", size), lambda: signal.windows.hann(size, False))
-        power = (np.abs(fft.rfft(blocks * window, axis=1)) ** 2).mean(axis=0)
+        window = self.once(("hann", size), lambda: hann(size))
+        power = power_of(fft.rfft(blocks * window, axis=1)).mean(axis=0)
         frequencies = np.arange(len(power)) * rate / size
         return power * frequencies * 2 / (rate * 0.375 * size), rate / size
 
@@ -85,10 +96,11 @@ class Analysis:
         tone, rate = load(series["calibration"]["file"])
         block = int(0.2 * rate)
         cut = tone[: len(tone) // block * block].reshape(-1, block)
-        probe = np.abs(fft.rfft(tone[: 2**16] * self.once("hann16", lambda: signal.windows.hann(2**16))))
+        probe = power_of(fft.rfft(tone[: 2**16] * self.once("hann16", lambda: hann(2**16))))
         hertz = np.argmax(probe) * rate / 2**16
-        carrier = signal.windows.hann(block, False) * np.exp(-2j * np.pi * hertz / rate * np.arange(block))
-        amplitude = np.median(np.abs(cut @ carrier)) * 2 / (block / 2)
+        carrier = hann(block) * np.exp(-2j * np.pi * hertz / rate * np.arange(block))
+        parts = np.ascontiguousarray(np.stack((carrier.real, carrier.imag), axis=1), np.float32)
+        amplitude = np.median(np.hypot(*(cut @ parts).T)) * 2 / (block / 2)
         scale = series["calibration"]["level_dB"] - 20 * np.log10(amplitude)
         stimulus, _ = load(series["stimulus"]["file"])
         room = self.noise(load(series["ambient"]["file"])[0], rate)
@@ -100,10 +112,12 @@ class Analysis:
         step = rate / size
         low, high = int(0.9 * start / step), int(stop / step)
         inverse = np.zeros_like(spectrum)
-        power = np.abs(spectrum[low:high]) ** 2
+        power = power_of(spectrum[low:high])
         inverse[low:high] = np.conj(spectrum[low:high]) / np.maximum(power, 1e-3 * np.median(power))
         edges = self.once(("edges", start, stop), lambda: grid(start, stop))
-        levels, harmonics, runs = [], [], []
+        # The room is the same under every run.
+        rooms = [self.log_means(*room, n * edges) for n in ORDERS] if room is not None else []
+        levels, runs = [], []
         for run in series["runs"]:
             samples, _ = load(run["file"])
             peak = float(np.abs(samples).max())
@@ -128,9 +142,11 @@ class Analysis:
                 piece = np.take(response, np.arange(at, at + before + after), mode="wrap") * window
                 points = fft.next_fast_len(max(2 * len(piece), int(rate / 1.5 / n)), real=True)
                 transform = fft.rfft(piece, points)
-                cells = self.log_means(transform.real**2 + transform.imag**2, rate / points, n * edges)
+                cells = self.log_means(power_of(transform), rate / points, n * edges)
                 gain = 2 * (window**2).sum() / rate / constant
-                parts = [self.log_means(*noise, n * edges) for noise in (room, silence) if noise is not None]
+                parts = rooms[n - 1 : n]
+                if silence is not None:
+                    parts = [*parts, self.log_means(*silence, n * edges)]
                 floor = gain * np.fmax.reduce(parts) if parts else np.zeros(len(cells))
                 orders.append(cells)
                 floors.append(floor)
@@ -145,7 +161,6 @@ class Analysis:
             by_band = orders[:, : 8 * bands].reshape(9, bands, 8).mean(axis=2)
             floor_by_band = floors[:, : 8 * bands].reshape(9, bands, 8).mean(axis=2)
             levels.append((by_band[0] - floor_by_band[0], floor_by_band[0]))
-            harmonics.append(by_band)
             runs.append(
                 {
                     "file": run["file"],
@@ -198,8 +213,8 @@ class Analysis:
             gain = np.where(valid, gains[:, b] - gains[valid, b][0], 0)
             # As the engine, only where the runs allow the onset.
             last = int(np.argmax(losses[:, b] > THIRD_DB)) if (losses[:, b] > THIRD_DB).any() else len(drives) - 1
-            near = (onsets > drives[max(0, last - 1)] - 0.5) & (onsets < drives[last] + 0.5)
-            rest = table[:, near, :] + gain
+            near = slice(*np.searchsorted(onsets, (drives[max(0, last - 1)] - 0.5, drives[last] + 0.5)))
+            rest = table[:, near] + gain
             mean = (rest @ weight) / weight.sum()
             chi = (rest**2) @ weight - weight.sum() * mean**2
             mass = np.exp(-0.5 * (chi - chi.min()))
