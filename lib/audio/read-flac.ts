@@ -1,5 +1,4 @@
 /** Samples of a FLAC file, one channel or two, decoded piece by piece. */
-import { FLACDecoder } from "@wasm-audio-decoders/flac";
 import { FileError } from "../errors/app-error";
 import type { ByteSource } from "./byte-source";
 import { requireChannels, requireLength, toFullScale, type DecodedAudio } from "./read-wav";
@@ -87,6 +86,8 @@ async function decodeInto(
   bits: number,
 ): Promise<number> {
   const full = 2 ** (bits - 1);
+  // Most recordings are WAV: the decoder starts with the first one that is not.
+  const { FLACDecoder } = await import("@wasm-audio-decoders/flac");
   const decoder = new FLACDecoder();
   let done = 0;
   const keep = (channelData: readonly Float32Array[], count: number): void => {

@@ -3,7 +3,7 @@
  * Numbers stand in the units of their names; null is "no value", never zero. More keys may come,
  * none is renamed (docs/contract.md).
  */
-import { z } from "zod";
+import * as z from "zod";
 import { criterionSchema, settingsSchema, conditioningSchema } from "../series/series-schema";
 import {
   LIMIT_STATUSES,

@@ -2,7 +2,7 @@
  * A result as text, and as the parts that it is kept in. Whoever prints a result goes through
  * here, so that the command and the API give the same bytes.
  */
-import { z } from "zod";
+import * as z from "zod";
 import {
   QUALITIES,
   harmonicSchema,

@@ -2,7 +2,7 @@
  * series.json: what a folder given to the analysis command says of its recordings.
  * Strict everywhere: an unknown key is refused by name (docs/contract.md).
  */
-import { z } from "zod";
+import * as z from "zod";
 import { columnChoiceSchema, isTableName } from "./table-columns";
 import { ENVIRONMENTS, RUN_KINDS } from "./vocabulary";
 

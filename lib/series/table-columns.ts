@@ -1,5 +1,5 @@
 /** Runs that come as tables: which files are tables, and which column holds what where a person says so. */
-import { z } from "zod";
+import * as z from "zod";
 
 export const TABLE_EXTENSIONS = [".csv", ".tsv", ".txt", ".frd"] as const;
 

@@ -58,8 +58,10 @@ export async function ensureBundle(bundle) {
     target: "node20",
     format: "esm",
     packages: bundle.selfContained ? "bundle" : "external",
-    sourcemap: "inline",
-    sourcesContent: false,
+    // What Node alone runs is read anew each time: it is kept short, names of functions stay.
+    ...(bundle.selfContained
+      ? { minifySyntax: true, minifyWhitespace: true }
+      : { sourcemap: "inline", sourcesContent: false }),
     banner: {
       js: 'import { createRequire as __createRequire } from "node:module"; const require = __createRequire(import.meta.url);',
     },
