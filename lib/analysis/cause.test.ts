@@ -179,6 +179,13 @@ describe("causes that need more than one band", () => {
     expect(bands[7]?.cause_inferred).toBe(true);
   });
 
+  it("lends no limiter whose ceiling one run alone cannot show", () => {
+    // A compressor whose threshold climbs from band to band: the loss shrinks as it does beside a crossover.
+    const { bands } = assess((b) => gainRider(97 + 0.2 * b, 2, 0.5));
+    expect(bands.filter(({ cause_inferred: lent }) => lent)).toEqual([]);
+    expect(bands.slice(5).map(({ cause }) => cause)).not.toContain("limiter");
+  });
+
   it("calls distortion without compression an overload only where it grows like one", () => {
     const thirdOf =
       (power: number): Device["harmonic"] =>

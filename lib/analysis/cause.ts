@@ -157,7 +157,8 @@ function ofLimitedWay(
         !(near.slope < (own[i - side]?.slope ?? -Infinity))
       )
         break;
-      if (near.cause !== "limiter") continue;
+      // A chord over the one run that loses is no slope: only a ceiling seen there can be lent.
+      if (near.cause !== "limiter" || !(near.slope <= CEILING_SLOPE)) continue;
       const hz = sayHz(series.bands[i]?.nominalHz ?? Number.NaN);
       return {
         ...cause,
