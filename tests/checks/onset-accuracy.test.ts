@@ -162,6 +162,36 @@ describe.each([
   });
 });
 
+describe("a ceiling with a hard knee that one run alone shows", () => {
+  it.each([
+    { levels: [80, 98], thetaDb: [84, 97] },
+    { levels: [76, 86, 100], thetaDb: [87, 99] },
+    { levels: LEVELS_DB, thetaDb: [97, 101] },
+  ])("lies in the interval of every band, runs at $levels dB", ({ levels, thetaDb }) => {
+    const [fromDb = 0, toDb = 0] = thetaDb;
+    const outside: string[] = [];
+    for (let seed = 1; seed <= 10; seed++) {
+      const random = seededRandom(seed);
+      const thresholds = Array.from({ length: 27 }, () => random.uniform(fromDb, toDb));
+      const lossDb = (b: number, drive: number) => Math.max(0, drive - (thresholds[b] ?? 0));
+      const series = measuredSeries({
+        device: { lossDb, harmonic: () => 0 },
+        runs: plainRuns(...levels),
+        random,
+        noiseDb: 0.01,
+      });
+      assessSeries(series, settings).bands.forEach(({ onset, nominal_Hz }, b) => {
+        const truthDb = (thresholds[b] ?? Number.NaN) + ONSET_LOSS_DB;
+        const [low, high] = [onset.low_dB ?? Number.NaN, onset.high_dB ?? Number.NaN];
+        if (!(low <= truthDb && truthDb <= high + 0.02))
+          outside.push(`seed ${seed}, ${nominal_Hz} Hz: ${truthDb.toFixed(2)}, ${low} to ${high}`);
+      });
+    }
+    // 90 % of 270 is what the interval says of itself.
+    expect(outside.length).toBeLessThanOrEqual(27);
+  });
+});
+
 describe("a linear loudspeaker", () => {
   it("shows no onset in any band of 300 series", () => {
     const invented: string[] = [];

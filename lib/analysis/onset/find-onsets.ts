@@ -68,10 +68,35 @@ export function findOnsets(
     const likelihood = likelihoods[b];
     if (!likelihood) return;
     const prior = priorOf(tables, draft.overload, pooled[b] ?? null);
-    draft.posterior = computePosterior(likelihood, prior);
+    draft.posterior = coverCeiling(computePosterior(likelihood, prior), tables, draft);
     draft.detection = draft.detection && countFromFit(draft.detection, draft.posterior);
   });
   return drafts.map((draft) => conclude(draft, groups));
+}
+
+/**
+ * One run that loses shows neither slope nor knee: what the laws expect of them would rule out the
+ * commonest device of all, a ceiling with a hard knee, by the width of the prior alone. There the
+ * interval reaches up to the one bound that needs no law: the output never falls.
+ */
+function coverCeiling(
+  posterior: OnsetPosterior,
+  { drivesDb }: OnsetPlan,
+  { detection, overload }: BandOnset,
+): OnsetPosterior {
+  if (detection?.firstActive !== detection?.top || overload === "overload") return posterior;
+  const top = detection?.top ?? 0;
+  const lossAtTopDb = detection?.lossDb[top] ?? Number.NaN;
+  const sigmaDb = detection?.lossSigmaDb[top] ?? Number.NaN;
+  return {
+    ...posterior,
+    quantiles: (lossDb, ceilingDb) => {
+      const fitted = posterior.quantiles(lossDb, ceilingDb);
+      const boundDb = (drivesDb[top] ?? Number.NaN) - (lossAtTopDb - lossDb) + sigmaDb;
+      if (!(lossDb <= lossAtTopDb) || !(boundDb > fitted.highDb)) return fitted;
+      return { ...fitted, highDb: Math.min(boundDb, ceilingDb) };
+    },
+  };
 }
 
 /**
