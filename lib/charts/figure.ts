@@ -67,7 +67,7 @@ export interface TextShape extends Named {
   readonly size: number;
   readonly fill: Paint;
   readonly anchor?: "start" | "middle" | "end";
-  readonly weight?: 400 | 500 | 600;
+  readonly weight?: 400 | 500 | 600 | 700;
   readonly family?: "figures" | "prose";
   /** Letters set closer, px. */
   readonly tighten?: number;

@@ -38,6 +38,8 @@ export const WALL_LAYOUT: WallLayout = {
 };
 
 const NEATLINE = 6;
+/** A staff narrower than this has no room for words beside its figures. */
+const WORDS_FROM = 70;
 const ROW = 21;
 const LABEL_ROW = 26;
 
@@ -121,7 +123,7 @@ export function toWall(
     ...(rows.decision === null
       ? []
       : [rowLabel("decision", place.staffWidth - 9, rows.decision + 4)]),
-    rowLabel("band, Hz", place.staffWidth - 9, rows.labels),
+    rowLabel(place.staffWidth < WORDS_FROM ? "Hz" : "band, Hz", place.staffWidth - 9, rows.labels),
   ];
   return {
     staff: { ...size, width: place.staffWidth, shapes: staff },
