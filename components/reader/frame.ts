@@ -45,7 +45,7 @@ export function toReaderPage(page: ReaderPage): string {
       <body>
         <a class="skip" href="#content">Skip to the content</a>
         <header class="bar">
-          <a class="brand" href="/published">${MARK}Tidemark</a>
+          <a class="brand" href="/published">${BRAND_MARK}Tidemark</a>
           <nav aria-label="Main">
             <a href="/published" ${page.current === "published" && asHtml(' aria-current="page"')}
               >Published tests</a
@@ -59,7 +59,7 @@ export function toReaderPage(page: ReaderPage): string {
     </html> `.text;
 }
 
-const MARK = toMark();
+export const BRAND_MARK = toMark();
 
 function toMark(): Html {
   const [, low, middle, high] = levelRamp(4);

@@ -6,24 +6,39 @@ export interface PackedPage {
   status: number;
   bytes: Uint8Array<ArrayBuffer>;
   etag: string;
+  mediaType: string;
+  /** Beside those of every answer: the name of a download, who may read it. */
+  headers?: Readonly<Record<string, string>>;
+  /** A card: it alone may stand in a frame, of any origin. */
+  framed?: boolean;
 }
 
-/** Its own style sheet, script and fonts; nothing from anywhere else, and in nobody's frame. */
-const POLICY = [
-  "default-src 'none'",
-  "script-src 'self'",
-  "style-src 'self'",
-  "font-src 'self'",
-  "img-src 'self'",
-  "base-uri 'none'",
-  "form-action 'self'",
-  "frame-ancestors 'none'",
-].join("; ");
+/** Its own style sheet and fonts, nothing from anywhere else; a card runs no script. */
+const toPolicy = (framed: boolean): string =>
+  [
+    "default-src 'none'",
+    `script-src ${framed ? "'none'" : "'self'"}`,
+    "style-src 'self'",
+    "font-src 'self'",
+    "img-src 'self'",
+    "base-uri 'none'",
+    `form-action ${framed ? "'none'" : "'self'"}`,
+    `frame-ancestors ${framed ? "*" : "'none'"}`,
+  ].join("; ");
 
-export function packPage(status: number, text: string): PackedPage {
-  const bytes = new Uint8Array(Buffer.from(text, "utf8"));
+export const packPage = (status: number, text: string): PackedPage =>
+  packBytes(status, "text/html; charset=utf-8", Buffer.from(text, "utf8"));
+
+/** Anything that is not a page. */
+export function packBytes(
+  status: number,
+  mediaType: string,
+  content: Uint8Array,
+  headers: Readonly<Record<string, string>> = {},
+): PackedPage {
+  const bytes = new Uint8Array(content);
   const etag = `"${createHash("sha256").update(bytes).digest("base64url").slice(0, 27)}"`;
-  return { status, bytes, etag };
+  return { status, bytes, etag, mediaType, headers };
 }
 
 /** Held by shared caches for a minute; a browser asks again every time, mostly for nothing new. */
@@ -32,24 +47,21 @@ const NOT_KEPT = "private, no-store";
 
 /** @param shared false: for one reader alone, kept by nobody */
 export function answerPage(request: Request, page: PackedPage, shared = true): Response {
-  const headers = {
+  const framed = page.framed === true;
+  const headers = new Headers({
     "cache-control": shared ? SHARED_FOR_A_MINUTE : NOT_KEPT,
-    "content-security-policy": POLICY,
+    "content-security-policy": toPolicy(framed),
     "referrer-policy": shared ? "strict-origin-when-cross-origin" : "same-origin",
     "x-content-type-options": "nosniff",
-    "x-frame-options": "DENY",
+    ...(framed ? {} : { "x-frame-options": "DENY" }),
     ...(shared ? { etag: page.etag } : {}),
-  };
+    ...page.headers,
+  });
   if (shared && page.status === 200 && matches(request.headers.get("if-none-match"), page.etag)) {
     return new Response(null, { status: 304, headers });
   }
-  return new Response(page.bytes, {
-    status: page.status,
-    headers: {
-      ...headers,
-      "content-type": "text/html; charset=utf-8",
-    },
-  });
+  headers.set("content-type", page.mediaType);
+  return new Response(page.bytes, { status: page.status, headers });
 }
 
 const matches = (header: string | null, etag: string): boolean =>

@@ -6,7 +6,10 @@ import {
 } from "../../../components/reader/revisions";
 import { toReaderPage } from "../../../components/reader/frame";
 import { toPublicationBody } from "../../../components/reader/publication-page";
+import { toPublicationHead } from "../../../components/reader/publication-head";
 import { html } from "../../../lib/html/html";
+import { toAltText } from "../../../lib/kit/kit-words";
+import { toOembedAddress } from "../../../lib/kit/oembed";
 import { inLab } from "../../../db/in-lab";
 import { getLab } from "../../../db/queries/labs";
 import {
@@ -31,7 +34,8 @@ export interface PublicationAddress {
   revision: number | null;
 }
 
-interface Standing {
+/** What is known of a revision besides its snapshot. */
+export interface RevisionRows {
   row: PublicationRow;
   /** All that a reader may know of, newest first. */
   revisions: PublicationRow[];
@@ -43,9 +47,13 @@ const pages = new Map<string, PackedPage>();
 
 const look = takeTurns((key) => findStanding(JSON.parse(key) as PublicationAddress));
 
+/** Looked up afresh: whatever was decided a moment ago counts. @returns null where nothing is published here */
+export const findRevision = (address: PublicationAddress): Promise<RevisionRows | null> =>
+  look(JSON.stringify(address));
+
 /** @returns null where nothing is published at this address. */
 export async function findPublicationPage(address: PublicationAddress): Promise<PackedPage | null> {
-  const standing = await look(JSON.stringify(address));
+  const standing = await findRevision(address);
   if (standing === null) return null;
   const key = JSON.stringify([standing, getEnvironment().publicUrl]);
   const known = pages.get(key);
@@ -57,7 +65,7 @@ export async function findPublicationPage(address: PublicationAddress): Promise<
   return page;
 }
 
-async function findStanding(address: PublicationAddress): Promise<Standing | null> {
+async function findStanding(address: PublicationAddress): Promise<RevisionRows | null> {
   const found = await findPublication(getDatabase(), address);
   if (found === null) return null;
   const { labId, publicationId } = found;
@@ -77,10 +85,14 @@ async function findStanding(address: PublicationAddress): Promise<Standing | nul
   });
 }
 
-async function drawPage({ row, revisions, timeZone }: Standing): Promise<PackedPage> {
-  const text = await inLab(getDatabase(), { labId: row.lab_id, accountId: null }, (trx) =>
+/** The kept text behind a row. */
+export const readSnapshotText = (row: PublicationRow): Promise<string> =>
+  inLab(getDatabase(), { labId: row.lab_id, accountId: null }, (trx) =>
     getSnapshotText(trx, row.lab_id, row.id),
   );
+
+async function drawPage({ row, revisions, timeZone }: RevisionRows): Promise<PackedPage> {
+  const text = await readSnapshotText(row);
   const snapshot = parseSnapshotText(text);
   const paths = { lab: snapshot.lab.slug, slug: row.slug };
   const canonical = `${getEnvironment().publicUrl}${toRevisionPath(paths.lab, paths.slug, row.revision)}`;
@@ -105,6 +117,14 @@ async function drawPage({ row, revisions, timeZone }: Standing): Promise<PackedP
       description: toAnswer(snapshot).join(" "),
       canonical,
       script: true,
+      head: toPublicationHead({
+        title: `${model}: how loud it plays`,
+        description: toAnswer(snapshot).join(" "),
+        page: canonical,
+        picture: `${canonical}/og.png`,
+        alt: toAltText(snapshot),
+        oembed: (format) => toOembedAddress(getEnvironment().publicUrl, canonical, format),
+      }),
       body: toPublicationBody({
         snapshot,
         digest: row.digest,
