@@ -2,7 +2,7 @@
 import { act, useState, type ReactNode } from "react";
 import { createRoot, type Root } from "react-dom/client";
 import { renderToStaticMarkup } from "react-dom/server";
-import { afterEach, beforeEach, describe, expect, it } from "vitest";
+import { afterEach, beforeEach, describe, expect, it, vi } from "vitest";
 import type { Step } from "@/lib/api/series";
 import { levelRamp } from "@/lib/charts/tokens";
 import { Button, Unavailable } from "./button";
@@ -15,6 +15,7 @@ import { ProgressBar } from "./progress-bar";
 import { SegmentedControl } from "./segmented-control";
 import { StateBoxes, StateSquares } from "./state-boxes";
 import { NoValue, SortTh } from "./table";
+import { ValuesGrid } from "./values-grid";
 import { ValuesTable } from "./values-table";
 
 let root: Root;
@@ -200,7 +201,7 @@ describe("tables", () => {
   });
   it("of values have a head per row and a caption", () => {
     show(
-      <ValuesTable
+      <ValuesGrid
         caption="Output limit by band"
         columns={[
           { key: "band", head: "band" },
@@ -220,7 +221,7 @@ describe("tables", () => {
       { key: "limit", head: "limit" },
     ];
     const rows = limits.map((limit, at) => ({ id: at, cells: { band: `${at}`, limit } }));
-    show(<ValuesTable caption="Limits" columns={columns} rows={rows} />);
+    show(<ValuesGrid caption="Limits" columns={columns} rows={rows} />);
     const order = () => [...page.querySelectorAll("td")].map((cell) => cell.textContent);
     const head = page.querySelectorAll("thead button")[1];
     expect(order()).toEqual(limits);
@@ -233,6 +234,22 @@ describe("tables", () => {
     expect([first, second]).toContainEqual(up);
     expect([first, second]).toContainEqual(down);
     expect(page.querySelector("th[aria-sort]")?.textContent).toBe("limit");
+  });
+  it("of values come when their disclosure is opened", async () => {
+    show(
+      <ValuesTable
+        caption="Limits"
+        columns={[{ key: "band", head: "band" }]}
+        rows={[{ id: 63, cells: { band: "63 Hz" } }]}
+      />,
+    );
+    expect(page.querySelector("summary")?.textContent).toBe("Table of values");
+    expect(page.querySelector("table")).toBeNull();
+    await act(async () => {
+      page.querySelector("details")?.dispatchEvent(new Event("toggle"));
+      await vi.dynamicImportSettled();
+    });
+    expect(page.querySelector("caption")?.textContent).toBe("Limits");
   });
 });
 

@@ -1,83 +1,24 @@
 "use client";
 
-import {
-  createColumnHelper,
-  createSortedRowModel,
-  rowSortingFeature,
-  sortFn_basic,
-  tableFeatures,
-  useTable,
-} from "@tanstack/react-table";
-import { useMemo, type ReactNode } from "react";
-import { SortTh, Table, TableFrame, Td } from "./table";
+import dynamic from "next/dynamic";
+import { useState } from "react";
+import type { ValuesGridProps } from "./values-grid";
 
-export interface ValuesColumn {
-  key: string;
-  /** With its unit: "limit, dB SPL". */
-  head: string;
-  /** Words stand at the left, figures at the right. */
-  words?: boolean;
-}
+const ValuesGrid = dynamic(() => import("./values-grid").then((module) => module.ValuesGrid), {
+  ssr: false,
+  loading: () => <p className="mt-2 text-small text-ink-2">Loading the table</p>,
+});
 
-export interface ValuesRow {
-  /** Unique: the band or frequency. */
-  id: string | number;
-  cells: Readonly<Record<string, ReactNode>>;
-}
-
-interface ValuesTableProps {
-  /** What the figure shows: "Output limit by band". */
-  caption: string;
-  columns: readonly ValuesColumn[];
-  /** One row per band or frequency; the first column is its head. */
-  rows: readonly ValuesRow[];
+interface ValuesTableProps extends ValuesGridProps {
   /** Words of the disclosure. */
   summary?: string;
 }
 
-const features = tableFeatures({
-  rowSortingFeature,
-  sortedRowModel: createSortedRowModel(),
-  sortFns: { basic: sortFn_basic },
-});
-const helper = createColumnHelper<typeof features, ValuesRow>();
-
-/**
- * What a cell sorts by: its first number, so that "at least 102.7 dB" and "94.0" stand in order;
- * a cell without a number is undefined and stands last either way.
- */
-export function toSortValue(cell: ReactNode): number | undefined {
-  if (typeof cell === "number") return cell;
-  if (typeof cell !== "string") return undefined;
-  const found = /[−-]?\d+(?:\.\d+)?|[−-]?\.\d+/.exec(cell);
-  return found === null ? undefined : Number(found[0].replace("−", "-"));
-}
-
-/** Every figure has its numbers as a table, closed until asked for; any column sorts it. */
-export function ValuesTable({
-  caption,
-  columns,
-  rows,
-  summary = "Table of values",
-}: ValuesTableProps) {
-  const defined = useMemo(
-    () =>
-      helper.columns(
-        columns.map((column, at) =>
-          helper.accessor(
-            (row) =>
-              at === 0 && typeof row.id === "number" ? row.id : toSortValue(row.cells[column.key]),
-            { id: column.key, header: column.head, sortFn: "basic", sortUndefined: "last" },
-          ),
-        ),
-      ),
-    [columns],
-  );
-  const data = useMemo(() => [...rows], [rows]);
-  const table = useTable({ features, columns: defined, data });
-  const wordsOf = new Set(columns.filter((column) => column.words).map((column) => column.key));
+/** Every figure has its numbers as a table, closed until asked for; what sorts it comes with the first look. */
+export function ValuesTable({ summary = "Table of values", ...grid }: ValuesTableProps) {
+  const [opened, setOpened] = useState(false);
   return (
-    <details className="group mt-2">
+    <details className="group mt-2" onToggle={() => setOpened(true)}>
       <summary className="inline-flex min-h-[30px] list-none items-center gap-2 text-small underline underline-offset-3 max-md:min-h-11 [&::-webkit-details-marker]:hidden">
         <svg
           className="group-open:rotate-90"
@@ -90,51 +31,7 @@ export function ValuesTable({
         </svg>
         {summary}
       </summary>
-      <TableFrame label={caption} className="mt-2">
-        <Table>
-          <caption className="sr-only">{caption}</caption>
-          <thead>
-            {table.getHeaderGroups().map((group) => (
-              <tr key={group.id}>
-                {group.headers.map((header, at) => (
-                  <SortTh
-                    key={header.id}
-                    right={at > 0 && !wordsOf.has(header.id)}
-                    sorted={toDirection(header.column.getIsSorted())}
-                    onSort={() => header.column.toggleSorting()}
-                  >
-                    {columns[at]?.head}
-                  </SortTh>
-                ))}
-              </tr>
-            ))}
-          </thead>
-          <tbody>
-            {table.getRowModel().rows.map(({ original: row }) => (
-              <tr key={row.id} className="hover:bg-wash">
-                {columns.map((column, at) =>
-                  at === 0 ? (
-                    <th
-                      key={column.key}
-                      scope="row"
-                      className="figures border-t border-rule px-2.5 py-1.5 pl-4! text-figure font-medium whitespace-nowrap"
-                    >
-                      {row.cells[column.key]}
-                    </th>
-                  ) : (
-                    <Td key={column.key} figures right={column.words !== true} className="py-1.5!">
-                      {row.cells[column.key]}
-                    </Td>
-                  ),
-                )}
-              </tr>
-            ))}
-          </tbody>
-        </Table>
-      </TableFrame>
+      {opened && <ValuesGrid {...grid} />}
     </details>
   );
 }
-
-const toDirection = (sorted: false | "asc" | "desc"): "ascending" | "descending" | null =>
-  sorted === false ? null : sorted === "asc" ? "ascending" : "descending";
