@@ -38,6 +38,12 @@ export function useRemoveRun(seriesId: string) {
   });
 }
 
+/** @param remove has the server forget the upload of this id. */
+export function useRemoveUpload(seriesId: string, remove: (id: string) => Promise<void>) {
+  const refresh = useSeriesRefresh(seriesId);
+  return useMutation({ mutationFn: remove, onSettled: refresh });
+}
+
 /** A planned run is excused with a reason; null withdraws that. */
 export function useExcuseSlot(seriesId: string) {
   const refresh = useSeriesRefresh(seriesId);

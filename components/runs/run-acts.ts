@@ -10,4 +10,6 @@ export interface RunActs {
   stopUpload: (id: string) => void;
   goOnUpload: (id: string) => void;
   discardUpload: (id: string) => void;
+  /** Of an upload begun elsewhere, by the server's id. */
+  removeUpload: (id: string) => Promise<void>;
 }

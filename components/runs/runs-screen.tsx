@@ -9,7 +9,13 @@ import type { PlannedRun } from "@/lib/series/planned-runs";
 import { Button } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
 import { LoadingState } from "../parts/states";
-import { runsQuery, useActOnRun, useExcuseSlot, useRemoveRun } from "../queries/runs";
+import {
+  runsQuery,
+  useActOnRun,
+  useExcuseSlot,
+  useRemoveRun,
+  useRemoveUpload,
+} from "../queries/runs";
 import { seriesQuery } from "../queries/series";
 import { useSeriesEvents } from "../queries/use-series-events";
 import { DropZone } from "./drop-zone";
@@ -22,6 +28,7 @@ import { toRunTable } from "./run-rows";
 import { RunsFoot } from "./runs-foot";
 import { RunsTable } from "./runs-table";
 import { UnassignedFiles } from "./unassigned-files";
+import { removeUpload } from "./tus-transfer";
 import { useUploads } from "./use-uploads";
 
 interface RunsScreenProps {
@@ -51,6 +58,7 @@ function Runs({ series, mayCapture, mayAnalyse }: RunsProps) {
   const actOnRun = useActOnRun(series.id);
   const excuseSlot = useExcuseSlot(series.id);
   const removeRun = useRemoveRun(series.id);
+  const removeLeft = useRemoveUpload(series.id, removeUpload);
   const [placed, setPlaced] = useState<PlacedFile[] | null>(null);
   const planned: PlannedRun[] = series.planned_runs;
   const mayWrite = mayCapture && series.archived_at === null;
@@ -90,6 +98,7 @@ function Runs({ series, mayCapture, mayAnalyse }: RunsProps) {
     stopUpload: (id) => void controller.stop(id),
     goOnUpload: (id) => controller.goOn(id),
     discardUpload: (id) => void controller.discard(id),
+    removeUpload: (id) => removeLeft.mutateAsync(id),
   };
   const take = (files: File[]): void => {
     const found = placeFiles(files, planned);

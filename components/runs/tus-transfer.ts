@@ -7,6 +7,8 @@ import type { ChosenFile, StartTransfer } from "./upload-controller";
 /** The first tries follow quickly; then one each 15 s, for an hour. */
 const RETRY_DELAYS_MS = [0, 1000, 3000, 5000, ...Array.from({ length: 240 }, () => 15_000)];
 const CHUNK_BYTES = 16 * 1024 * 1024;
+const NOT_SENT = "The file could not be sent. Check the connection and try again.";
+const NOT_REMOVED = "It was not removed. Check the connection and try again.";
 /** No answer, a lock that another request still holds, or a fault of the moment. */
 const PASSING = new Set([0, 423, 502, 503, 504]);
 
@@ -27,7 +29,7 @@ export function makeTusTransfer(seriesId: string): StartTransfer {
         if (again) events.onRetrying();
         return again;
       },
-      onError: (error) => events.onFault(toFaultWords(error)),
+      onError: (error) => events.onFault(toFaultWords(error, NOT_SENT)),
       onSuccess: ({ lastResponse }) =>
         events.onDone(lastResponse.getHeader("tidemark-run-id") ?? null),
     });
@@ -43,18 +45,29 @@ export function makeTusTransfer(seriesId: string): StartTransfer {
   };
 }
 
+/** Has the server forget an upload that was begun elsewhere. @throws Error in the server's words */
+export async function removeUpload(id: string): Promise<void> {
+  try {
+    await Upload.terminate(`${UPLOADS_PATH}/${id}`);
+  } catch (error) {
+    throw new Error(error instanceof Error ? toFaultWords(error, NOT_REMOVED) : NOT_REMOVED, {
+      cause: error,
+    });
+  }
+}
+
 /** Name, size and time of change tell a file from a new recording under the old name. */
 export function toFingerprint(seriesId: string, { file, slot }: ChosenFile): string {
   return ["tidemark", seriesId, slot ?? "", file.name, file.size, file.lastModified].join("|");
 }
 
 /** The server's own sentence where it sent one. */
-function toFaultWords(error: Error): string {
+function toFaultWords(error: Error, otherwise: string): string {
   if (error instanceof DetailedError) {
     const parsed = problemSchema.safeParse(parseJson(error.originalResponse?.getBody() ?? ""));
     if (parsed.success) return parsed.data.detail;
   }
-  return "The file could not be sent. Check the connection and try again.";
+  return otherwise;
 }
 
 function parseJson(text: string): unknown {

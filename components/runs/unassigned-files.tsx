@@ -58,17 +58,72 @@ export function UnassignedFiles(props: UnassignedFilesProps) {
         );
       })}
       {unfinished.map((upload) => (
-        <li key={upload.id} className={LINE}>
-          <VerdictMark kind="wait" />
-          <span className="min-w-0">
-            <b>Unfinished:</b>{" "}
-            <span className="figures text-figure break-all">{upload.file_name}</span>,{" "}
-            {formatBytes(upload.received)} of {formatBytes(upload.bytes)} arrived. Choose the file
-            again and it goes on from there.
-          </span>
-        </li>
+        <UnfinishedUpload key={upload.id} upload={upload} mayCapture={mayCapture} acts={acts} />
       ))}
     </ul>
+  );
+}
+
+interface UnfinishedUploadProps {
+  upload: UploadView;
+  mayCapture: boolean;
+  acts: RunActs;
+}
+
+/** Where it was begun it goes on; anywhere else it can be taken away. */
+function UnfinishedUpload({ upload, mayCapture, acts }: UnfinishedUploadProps) {
+  const [asked, setAsked] = useState(false);
+  const [fault, setFault] = useState<string | null>(null);
+  const [busy, setBusy] = useState(false);
+  const remove = async (): Promise<void> => {
+    setBusy(true);
+    try {
+      await acts.removeUpload(upload.id);
+    } catch (error) {
+      setFault(error instanceof Error ? error.message : "It was not removed. Try again.");
+    } finally {
+      setBusy(false);
+    }
+  };
+  return (
+    <li className={LINE}>
+      <VerdictMark kind="wait" />
+      <span className="min-w-0 flex-1">
+        <b>Unfinished:</b> <span className="figures text-figure break-all">{upload.file_name}</span>
+        , {formatBytes(upload.received)} of {formatBytes(upload.bytes)} arrived. Where it was begun,
+        choose the file again and it goes on from there.
+      </span>
+      {mayCapture && (
+        <Button
+          tone="quiet"
+          size="small"
+          aria-label={`Remove what arrived of ${upload.file_name}`}
+          onClick={() => {
+            setFault(null);
+            setAsked(true);
+          }}
+        >
+          Remove
+        </Button>
+      )}
+      <Dialog
+        open={asked}
+        onClose={() => setAsked(false)}
+        title={`Remove what arrived of ${upload.file_name}?`}
+        actions={
+          <Button tone="main" busy={busy} onClick={() => void remove()}>
+            Remove
+          </Button>
+        }
+      >
+        <p>Whoever is still sending it has to begin again.</p>
+        {fault !== null && (
+          <p role="alert" className="mt-2 text-small text-fault">
+            {fault}
+          </p>
+        )}
+      </Dialog>
+    </li>
   );
 }
 

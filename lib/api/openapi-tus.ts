@@ -119,7 +119,7 @@ export function toTusPaths(toProblems: ToProblems): Record<string, JsonObject> {
       delete: {
         ...common,
         operationId: "stopUpload",
-        summary: "Stop an upload; nothing of it stays",
+        summary: "Stop an upload, one's own or one that a colleague left; nothing of it stays",
         responses: {
           204: { description: "It is gone." },
           ...toProblems([...OWN, "conflict.state"]),

@@ -29,11 +29,13 @@ import {
 let bench: ApiBench;
 let seriesId = "";
 let colleague: TestMember;
+let reader: TestMember;
 let stranger: TestMember;
 beforeAll(async () => {
   bench = await openApiBench({ TIDEMARK_MAX_UPLOAD_MB: "3" });
   seriesId = (await planTestSeries(bench)).id;
   colleague = await makeTestMember(bench, bench.labId, "colleague", ["tester"]);
+  reader = await makeTestMember(bench, bench.labId, "reader", ["reviewer"]);
   stranger = (await makeTestLab(bench, "other")).all;
 });
 afterAll(() => bench.stop());
@@ -404,6 +406,22 @@ describe("whose upload it is", () => {
       ).status,
     ).toBe(404);
     expect(await offsetOf(location)).toBe(0);
+  });
+
+  it("may be taken away by a colleague who captures, and by no other lab", async () => {
+    const location = await begin(file("calibrator-before"));
+    const id = location.split("/").at(-1);
+    const remove = async (token: string) => {
+      const headers = { "tus-resumable": "1.0.0", authorization: `Bearer ${token}` };
+      return (await fetch(`${bench.product.url}${location}`, { method: "DELETE", headers })).status;
+    };
+    expect(await remove(stranger.token)).toBe(404);
+    expect(await remove(reader.token)).toBe(403);
+    expect(await offsetOf(location)).toBe(0);
+    expect(await remove(colleague.token)).toBe(204);
+    const { uploads } = await call(bench, listRuns, { params: { seriesId } });
+    expect(uploads.map((upload) => upload.id)).not.toContain(id);
+    expect(staged().filter((path) => path.includes(id ?? ""))).toEqual([]);
   });
 
   it("may be a colleague's own", async () => {

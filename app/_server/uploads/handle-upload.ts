@@ -35,7 +35,7 @@ async function answer(request: Request): Promise<Response> {
   const caller = checkCapability(await findCaller(getDatabase(), request.headers), "capture");
   checkCookieWrite(request, caller);
   if (request.method === "POST") return tus(request, caller);
-  const upload = await getOwnUpload(caller, request);
+  const upload = await getUpload(caller, request);
   if (upload.run_id !== null) return answerFinished(request, upload, upload.run_id);
   const complete = request.method === "HEAD" && (await isComplete(upload));
   if (complete) {
@@ -47,16 +47,18 @@ async function answer(request: Request): Promise<Response> {
 }
 
 /**
- * The upload named by the address, as far as it belongs to the caller.
+ * The upload named by the address. Only who began it goes on with it; left behind in another
+ * browser, whoever captures in the lab may take it away.
  *
  * @throws AppError "upload.not-found", "upload.expired"
  */
-async function getOwnUpload(caller: LabCaller, request: Request): Promise<UploadRow> {
+async function getUpload(caller: LabCaller, request: Request): Promise<UploadRow> {
   const id = new URL(request.url).pathname.split("/").at(-1) ?? "";
   const row = UPLOAD_ID.test(id)
     ? await inLab(getDatabase(), toScope(caller), (trx) => findUpload(trx, caller.labId, id))
     : null;
-  if (row === null || row.account_id !== caller.accountId) throw noSuchUpload();
+  const mine = row?.account_id === caller.accountId || request.method === "DELETE";
+  if (row === null || !mine) throw noSuchUpload();
   if (row.run_id === null && row.expires_at <= new Date()) {
     throw new AppError(
       "upload.expired",
