@@ -1,6 +1,7 @@
 /** When the sweep arrived: found in the mid band, refined on the full response. */
 import { AnalysisError } from "../errors/app-error";
 import { toPeak, type ArrivalEnvelope, type Deconvolved, type SweepInUse } from "./deconvolution";
+import { sayNumber } from "./say";
 
 export interface Arrival {
   /** Circular lag of the linear response, samples with fraction. */
@@ -52,7 +53,7 @@ export function requireSweep(arrival: Arrival, sweep: SweepInUse, file: string):
   if (arrival.compactness >= LEAST_COMPACTNESS && Math.abs(arrival.spreadS) > LARGEST_SPREAD_S) {
     throw new AnalysisError(
       "run.no-sweep",
-      `${file} holds another sweep than the stimulus: what it plays about 2 kHz arrives ${(1000 * arrival.spreadS).toFixed(0)} ms after what it plays about 500 Hz. Check the stimulus that was played, its length and its frequencies.`,
+      `${file} holds another sweep than the stimulus: what it plays about 2 kHz arrives ${sayNumber(1000 * arrival.spreadS, 0)} ms after what it plays about 500 Hz. Check the stimulus that was played, its length and its frequencies.`,
       { file, details: { spreadS: arrival.spreadS } },
     );
   }

@@ -3,10 +3,13 @@ import type { Warning } from "../result/result-schema";
 import type { SweepInUse } from "./deconvolution";
 import { toDriftUncertaintyPpm } from "./drift";
 import type { RawRun } from "./measure-run";
+import { sayDb, sayNumber } from "./say";
 import type { MeasuredRun, MeasuredSeries } from "./types";
 
 const LEAST_SNR_DB = 20;
 const DRIFT_PPM = 50;
+/** No two clocks of players and recorders lie further apart. */
+const CLOCKS_PPM = 1000;
 const MISSING_S = 0.01;
 
 /** Defaults of docs/domain.md section 9; none of them stops an analysis. */
@@ -21,7 +24,7 @@ export function toRunWarnings(raw: RawRun, file: string, sweep: SweepInUse): War
   if (raw.snrDb < LEAST_SNR_DB)
     warn(
       "run.low-signal",
-      `${file} is only ${raw.snrDb.toFixed(1)} dB over the noise in the reference band; ${LEAST_SNR_DB} dB are wanted.`,
+      `${file} is only ${sayDb(raw.snrDb)} over the noise in the reference band; ${LEAST_SNR_DB} dB are wanted.`,
     );
   if (raw.missing > MISSING_S * sweep.rateHz) {
     warn(
@@ -29,10 +32,16 @@ export function toRunWarnings(raw: RawRun, file: string, sweep: SweepInUse): War
       `${file} lacks ${(raw.missing / sweep.rateHz).toFixed(3)} s of the sweep at its ${raw.latencyS < 0 ? "start" : "end"}.`,
     );
   }
-  if (Math.abs(raw.driftPpm) > Math.max(DRIFT_PPM, toDriftUncertaintyPpm(sweep.rateConstantS))) {
+  const unsurePpm = toDriftUncertaintyPpm(sweep.rateConstantS);
+  if (Math.abs(raw.driftPpm) > Math.max(CLOCKS_PPM, 4 * unsurePpm)) {
+    warn(
+      "run.other-sweep",
+      `${file}: the sweep runs ${(Math.abs(raw.driftPpm) / 10_000).toFixed(2)} % too ${raw.driftPpm > 0 ? "fast" : "slow"} for one from ${sweep.startHz} to ${sweep.stopHz} Hz in ${sweep.lengthS.toFixed(3)} s, more than two clocks can differ: another sweep was played. Check its start, its end and its length; frequencies and harmonics are read in the wrong places.`,
+    );
+  } else if (Math.abs(raw.driftPpm) > Math.max(DRIFT_PPM, unsurePpm)) {
     warn(
       "run.clock-drift",
-      `${file}: player and recorder differ by about ${raw.driftPpm.toFixed(0)} ppm. Magnitudes hold; frequencies are off by as much.`,
+      `${file}: player and recorder differ by about ${sayNumber(raw.driftPpm, 0)} ppm. Magnitudes hold; frequencies are off by as much.`,
     );
   }
   return warnings;
@@ -60,7 +69,7 @@ export function toLevelWarnings(
     if (off > OFF_PLAN_DB || (run === lowest && off < -OFF_PLAN_DB)) {
       warnings.push({
         code: "run.level-plan",
-        message: `${run.file} measures ${run.measuredLevelDb.toFixed(1)} dB where ${run.levelDb} dB were planned: ${Math.abs(off).toFixed(1)} dB ${off > 0 ? "more" : "less"}. Check the gain, the calibration and the distance.`,
+        message: `${run.file} measures ${sayDb(run.measuredLevelDb)} where ${run.levelDb} dB were planned: ${Math.abs(off).toFixed(1)} dB ${off > 0 ? "more" : "less"}. Check the gain, the calibration and the distance.`,
         file: run.file,
       });
     }

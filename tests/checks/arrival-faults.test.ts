@@ -11,6 +11,7 @@ import {
   RATE_HZ,
   at,
   before,
+  bump,
   check,
   cut,
   overdrive,
@@ -45,6 +46,13 @@ const FAULTS: Fault[] = [
     make: () => [overdrive("short-86", 1.3)],
     fails: ["clipping"],
     finding: /clipped on [\d ]+ samples, between .*Hz of the sweep/,
+  },
+  {
+    name: "a bump that clips the input",
+    slot: "short-86",
+    make: () => [bump("short-86", 400)],
+    fails: ["clipping"],
+    finding: /clipped on \d+ samples, between 400 Hz and/,
   },
   {
     name: "DC",
@@ -98,6 +106,20 @@ const FAULTS: Fault[] = [
     ],
     fails: ["sweep-identity"],
     finding: /not the planned one/,
+  },
+  {
+    // A sweep of 0.45 % another rate constant, as where its end was planned otherwise.
+    name: "a sweep that is nearly the planned one",
+    slot: "short-76",
+    make: () => [
+      record(upsample(take("short-76"), 4), 4, {
+        length: take("short-76").length,
+        delay: 0,
+        driftPpm: 4500,
+      }),
+    ],
+    fails: ["sweep-identity"],
+    finding: /runs 0\.4\d % too slow/,
   },
   {
     name: "digital silence",

@@ -87,6 +87,15 @@ export const overdrive = (slot: string, over: number): Float64Array => {
   const gain = over / peakOf(take(slot));
   return take(slot).map((x) => Math.max(-1, Math.min(1, gain * x)));
 };
+/** A knock at the stand while the sweep passes a frequency: twice full scale, gone within a tenth of a second. */
+export const bump = (slot: string, hz: number): Float64Array => {
+  const from = at(passes(slot, hz));
+  return take(slot).map((x, n) => {
+    const s = (n - from) / RATE_HZ;
+    const knock = s < 0 ? 0 : 2 * Math.exp(-s / 0.02) * Math.cos(2 * Math.PI * 90 * s);
+    return Math.max(-1, Math.min(1, x + knock));
+  });
+};
 export const at = (seconds: number): number => Math.round(seconds * RATE_HZ);
 export const cut = (slot: string, from: number, count: number, insert = 0): Float64Array => {
   const samples = take(slot);

@@ -9,7 +9,7 @@ import { readTable } from "../../audio/read-table";
 import { AnalysisError, FileError } from "../../errors/app-error";
 import type { ArrivalCheck, ArrivalReport } from "../arrival-schema";
 import type { ArrivalRequest } from "./arrival-request";
-import { findDelayStep } from "./band-arrivals";
+import { findDelayStep, type BandArrival, type DelayStep } from "./band-arrivals";
 import { checkClipping } from "./file-checks";
 import { drawEnvelope, round, type FileFacts } from "./file-facts";
 import {
@@ -69,7 +69,7 @@ export function checkSweep(
     checkClipping(recording, facts, sweep),
     ...sayPresent(sweep),
     checkComplete(sweep),
-    ...checkAlong(request, recording, sweep, plans),
+    ...checkAlong(request, recording, sweep, plans, clipped),
     checkSignalToNoise(sweep, request.limits),
     // A clipped take has no level of its own.
     ...(clipped ? [] : checkLevels(request, sweep, levelDb)),
@@ -93,26 +93,24 @@ export function checkSweep(
   };
 }
 
-/** What shows along the sweep and beside it; after a jump in time the rest says nothing. */
+/**
+ * What shows along the sweep and beside it; after a jump in time the rest says nothing. The overtones of
+ * a clipped input arrive before their time: neither a jump nor a clock can be read beside them.
+ */
 function checkAlong(
   request: ArrivalRequest,
   recording: Recording,
   sweep: SweepFacts,
   plans: Plans,
+  clipped: boolean,
 ): (ArrivalCheck | null)[] {
   const sibling = toPeer(request);
-  const step =
-    findDelayStep(sweep.arrivals) ??
-    (sibling === undefined
-      ? null
-      : findDelayStep(
-          sweep.arrivals,
-          sibling.summary.arrivals.map(({ hz, delay_ms }) => ({ hz, delayS: delay_ms / 1000 })),
-        ));
-  const dropped = checkDropped(sweep, step);
+  const step = clipped ? null : findStep(sweep.arrivals, sibling);
+  const dropped = clipped ? null : checkDropped(sweep, step);
   if (step !== null) return [dropped];
   // Cut or buried in noise, a sweep does not show its clock.
-  const clear = sweep.raw.missing === 0 && sweep.raw.snrDb >= request.limits.snr_fail_dB;
+  const clear =
+    !clipped && sweep.raw.missing === 0 && sweep.raw.snrDb >= request.limits.snr_fail_dB;
   const hot = request.run.place?.role === "long-term";
   return [
     dropped,
@@ -130,6 +128,15 @@ function checkAlong(
           sayRun(sibling.levelDb),
         ),
   ];
+}
+
+function findStep(arrivals: readonly BandArrival[], sibling?: SweepSibling): DelayStep | null {
+  const alone = findDelayStep(arrivals);
+  if (alone !== null || sibling === undefined) return alone;
+  return findDelayStep(
+    arrivals,
+    sibling.summary.arrivals.map(({ hz, delay_ms }) => ({ hz, delayS: delay_ms / 1000 })),
+  );
 }
 
 /** The short run next in level: most like this one. A variant may be set up otherwise. */

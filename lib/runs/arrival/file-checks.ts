@@ -109,7 +109,7 @@ function checkMean(facts: FileFacts): ArrivalCheck {
         code: "dc-offset",
         verdict: "fail",
         title: "DC offset",
-        finding: `The recording is shifted by ${toText(level)} of DC; up to ${DC_LIMIT_DBFS} dBFS is usual.`,
+        finding: `The recording is shifted by ${toText(level)} of DC; up to ${toText(DC_LIMIT_DBFS)} is usual.`,
         spoils: "It takes headroom and points at a fault of the input.",
         remedy:
           "Check the input and its cable, record the calibrator again and repeat every level.",

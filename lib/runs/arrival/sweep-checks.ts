@@ -12,6 +12,9 @@ import { toBandsBetween, toHz, toPlace, toTimeS } from "./sweep-timeline";
 const MISSING_LIMIT_S = 0.01;
 const DRIFT_LIMIT_PPM = 200;
 
+/** No two clocks of players and recorders lie further apart: the sweep itself is another one. */
+const CLOCKS_LIMIT_PPM = 1000;
+
 const sayS = (seconds: number): string => `${seconds.toFixed(2)} s`;
 const sayAt = (hz: number): string => sayHz(Number(hz.toPrecision(hz < 100 ? 2 : 3)));
 
@@ -143,6 +146,18 @@ export function checkDrift({ raw, timeline }: SweepFacts): ArrivalCheck | null {
       title: "clocks agree",
       finding: `Player and recorder differ by ${sayNumber(driftPpm, 0)} ppm, which a loudspeaker's own delay can feign up to ${sayNumber(unsure, 0)} ppm.`,
       figure,
+    });
+  }
+  const most = Math.max(CLOCKS_LIMIT_PPM, 4 * limit);
+  if (Math.abs(driftPpm) > most) {
+    const { startHz, stopHz, lengthS } = timeline.sweep;
+    return speaking("sweep-identity", "fail", {
+      title: "another sweep",
+      finding: `A sweep is there, but not the planned one (${sayHz(startHz)} to ${sayHz(stopHz)} in ${sayS(lengthS)}): it runs ${sayNumber(Math.abs(driftPpm) / 10_000, 2)} % too ${driftPpm > 0 ? "fast" : "slow"} for that, more than two clocks can differ.`,
+      spoils: "Levels and harmonics would be read at the wrong frequencies.",
+      remedy:
+        "Check start, end and length of the sweep in the plan against the file that was played. If the plan is right, download the stimulus file of this level anew, play it without speed or rate conversion, and record this run again at the same gain.",
+      figure: { value: round(driftPpm, 0), limit: most, unit: "ppm" },
     });
   }
   return speaking("clock-drift", "fail", {
