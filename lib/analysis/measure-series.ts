@@ -10,6 +10,7 @@ import { measureRun, type MeasuringContext, type RawRun } from "./measure-run";
 import { toMicrophoneResponse, type MicrophoneResponse } from "./microphone";
 import { measureNoise } from "./noise-floor";
 import { toGateWindow, toOrderWindows } from "./order-windows";
+import { warnOfOddRuns } from "./run-oddities";
 import { toLevelWarnings, toRunWarnings } from "./run-warnings";
 import { measureScale, type Scale } from "./scale";
 import { toPlayedStimulus } from "./stimulus-in-use";
@@ -54,7 +55,7 @@ export async function measureSeries(
   requireReference(series.runs);
   const scale = await measureScale(series, (file) => source.readRecording(file, 1), plans);
   const context = await toMeasuringContext(series, source, plans);
-  const warnings = [...scale.warnings];
+  const warnings = [...scale.warnings, ...warnOfOddRuns(series.runs)];
   const raw: RawRun[] = [];
   for (const run of series.runs) {
     const result = isTableName(run.file)
