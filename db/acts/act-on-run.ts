@@ -10,6 +10,7 @@ import { recordEvent } from "../queries/audit";
 import { assignRun, getRun, updateRun, type RunChange, type RunRow } from "../queries/runs";
 import { lockSeries } from "../queries/series";
 import { loadCapture, type Capture } from "./capture";
+import { recheckLevels, recheckNeighbours } from "./recheck-levels";
 import { settleSeries } from "./settle-series";
 
 type By = LabScope & { accountId: string };
@@ -36,9 +37,22 @@ export async function actOnRun(trx: Trx, by: By, runId: string, act: RunAct): Pr
     seriesId,
     details: { file: run.file_name, label: labelOf(capture, run.slot), ...details },
   });
+  const stale = PUTS_ASIDE.has(act.act) ? await recheckOthers(trx, by.labId, run) : [];
   const followUp = await settleSeries(trx, by, seriesId);
   const checks = change.state === "checking" ? [runId] : [];
-  return { ...followUp, runIds: [...checks, ...followUp.runIds] };
+  return { ...followUp, runIds: [...checks, ...stale, ...followUp.runIds] };
+}
+
+const PUTS_ASIDE: ReadonlySet<RunAct["act"]> = new Set(["exclude", "bring-back"]);
+
+/** What was held against a recording is held anew when it no longer counts, or does so again. */
+async function recheckOthers(trx: Trx, labId: string, run: RunRow): Promise<string[]> {
+  if (run.slot === null) return [];
+  const capture = await loadCapture(trx, labId, run.series_id);
+  const calibrator = run.role === "calibrator-before" || run.role === "calibrator-after";
+  return calibrator
+    ? recheckLevels(trx, labId, capture)
+    : recheckNeighbours(trx, labId, capture, run.id);
 }
 
 export function requireUnarchived({ series }: Pick<Capture, "series">): void {

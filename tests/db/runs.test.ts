@@ -1,6 +1,7 @@
 import { randomUUID } from "node:crypto";
 import { beforeAll, beforeEach, describe, expect, it } from "vitest";
 import { loadCapture } from "../../db/acts/capture";
+import { actOnRun } from "../../db/acts/act-on-run";
 import { recheckNeighbours } from "../../db/acts/recheck-levels";
 import type { Trx } from "../../db/client";
 import { inLab } from "../../db/in-lab";
@@ -301,6 +302,20 @@ describe("a new take beside others", () => {
       expect(await recheckNeighbours(trx, lab.id, capture, fresh)).toEqual([step]);
       expect((await getRun(trx, lab.id, step)).state).toBe("checking");
       expect((await getRun(trx, lab.id, fresh)).state).toBe("failed");
+    });
+  });
+
+  it("that is put aside, or brought back, has them checked again as well", async () => {
+    await act(async (trx) => {
+      const bad = await add(trx, 86, "failed", check("hum", "fail"));
+      const beside = await add(trx, 92, "failed", check("level-step", "fail"));
+      const exclude = { act: "exclude", reason: "a door was slammed" } as const;
+      expect((await actOnRun(trx, lab.admin, bad, exclude)).runIds).toEqual([beside]);
+      expect((await getRun(trx, lab.id, beside)).state).toBe("checking");
+      const report = check("level-step", "fail");
+      const now = { runId: beside, channel: 1, slot: "short-92" };
+      await saveReport(trx, lab.id, now, { state: "failed", report });
+      expect((await actOnRun(trx, lab.admin, bad, { act: "bring-back" })).runIds).toEqual([beside]);
     });
   });
 });
