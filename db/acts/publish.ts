@@ -13,7 +13,6 @@ import { notifyChange } from "../queries/changes";
 import { getLab } from "../queries/labs";
 import { getLoudspeaker } from "../queries/loudspeakers";
 import {
-  findSignOffInForce,
   getPublication,
   insertPublication,
   isSlugTaken,
@@ -25,6 +24,7 @@ import {
 import { getResult } from "../queries/results";
 import { listRuns } from "../queries/runs";
 import { getSeries, lockSeries, toSeriesNumber } from "../queries/series";
+import { findStandingSignOff, getSignedParts } from "../queries/sign-offs";
 import { noticePublished } from "./notices";
 
 export interface Publishing {
@@ -132,13 +132,14 @@ export async function draftSnapshot(
 ): Promise<{ snapshot: Snapshot; signOffId: string }> {
   const { labId } = by;
   const series = await getSeries(trx, labId, seriesId);
-  const signOff = await findSignOffInForce(trx, labId, seriesId);
+  const signOff = await findStandingSignOff(trx, labId, seriesId);
   if (signOff === null) {
     throw new AppError(
       "conflict.state",
       "This series is not signed off. An analyst decides every band and signs off first.",
     );
   }
+  const { decisions } = await getSignedParts(trx, labId, signOff.id);
   const lab = await getLab(trx, labId);
   const loudspeaker = await getLoudspeaker(trx, labId, series.loudspeaker_id);
   const analysis = await getAnalysis(trx, labId, signOff.analysis_id);
@@ -170,12 +171,12 @@ export async function draftSnapshot(
     result,
     signOff: {
       criterion: signOff.criterion,
-      decisions: signOff.decisions,
+      decisions,
       decisionsDigest: signOff.decisions_digest,
       resultDigest: checkResultDigest(toResultText(result), signOff.result_digest),
       onePerson: signOff.one_person,
-      by: signOff.signedByName ?? "somebody",
-      at: signOff.signed_at,
+      by: signOff.by.name,
+      at: new Date(signOff.at),
     },
     revision: (last?.revision ?? 0) + 1,
     publishedAt: draft.at,

@@ -4,7 +4,6 @@ import { isUniqueViolation } from "../database-error";
 import { AppError } from "../../lib/errors/app-error";
 import type { Db, Trx } from "../client";
 import type { PublicationsTable } from "../schema/publications";
-import type { SignOffsTable } from "../schema/review";
 
 export type PublicationRow = Omit<Selectable<PublicationsTable>, "snapshot"> & {
   publishedByName: string | null;
@@ -184,45 +183,6 @@ export async function listPublishedIds(
   const { rows } = await sql<{ lab_id: string; publication_id: string }>`
     select lab_id, publication_id from list_published()`.execute(db);
   return rows.map((row) => ({ labId: row.lab_id, publicationId: row.publication_id }));
-}
-
-export interface SignOffRow {
-  id: string;
-  analysis_id: string;
-  criterion: Selectable<SignOffsTable>["criterion"];
-  decisions: Selectable<SignOffsTable>["decisions"];
-  decisions_digest: string;
-  result_digest: string;
-  one_person: boolean;
-  signed_at: Date;
-  signedByName: string | null;
-}
-
-/** The sign-off of a series that nobody reopened; null where there is none. */
-export async function findSignOffInForce(
-  trx: Trx,
-  labId: string,
-  seriesId: string,
-): Promise<SignOffRow | null> {
-  const row = await trx
-    .selectFrom("sign_offs as o")
-    .leftJoin("accounts as a", "a.id", "o.signed_by")
-    .select([
-      "o.id",
-      "o.analysis_id",
-      "o.criterion",
-      "o.decisions",
-      "o.decisions_digest",
-      "o.result_digest",
-      "o.one_person",
-      "o.signed_at",
-      "a.name as signedByName",
-    ])
-    .where("o.lab_id", "=", labId)
-    .where("o.series_id", "=", seriesId)
-    .where("o.reopened_at", "is", null)
-    .executeTakeFirst();
-  return row ?? null;
 }
 
 function publicationsOf(trx: Trx, labId: string) {
