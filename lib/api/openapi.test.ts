@@ -30,6 +30,23 @@ describe("the OpenAPI document", () => {
     }
   });
 
+  it("says that a recording may be asked for in part", () => {
+    expect(document).toMatchObject({
+      paths: {
+        "/api/v1/runs/{runId}/file": {
+          get: {
+            parameters: [{ name: "runId" }, { name: "Range", in: "header", required: false }],
+            responses: {
+              200: { content: { "application/octet-stream": {} } },
+              206: { headers: { "Content-Range": {} } },
+              416: { headers: { "Content-Range": {} } },
+            },
+          },
+        },
+      },
+    });
+  });
+
   it("has answers that a validator takes", () => {
     const ajv = addFormats(new Ajv2020({ strict: false }));
     for (const operation of OPERATIONS) {

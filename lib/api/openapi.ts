@@ -73,6 +73,7 @@ function toOperationObject(tag: string, operation: Operation): JsonObject {
   const parameters = [
     ...toParameters(operation.params, "path"),
     ...toParameters(operation.query, "query"),
+    ...(operation.ranged === true ? [RANGE] : []),
   ];
   const body = toRequestBody(operation);
   return {
@@ -82,7 +83,11 @@ function toOperationObject(tag: string, operation: Operation): JsonObject {
     description: toAccessWords(operation.access),
     ...(parameters.length === 0 ? {} : { parameters }),
     ...(body === null ? {} : { requestBody: body }),
-    responses: { [operation.status]: toAnswer(operation), ...toProblems(listErrors(operation)) },
+    responses: {
+      [operation.status]: toAnswer(operation),
+      ...(operation.ranged === true ? toRangeAnswers(operation) : {}),
+      ...toProblems(listErrors(operation)),
+    },
     security: operation.access === "anyone" ? [] : [{ token: [] }, { session: [] }],
   };
 }
@@ -108,6 +113,27 @@ function toAnswer(operation: Operation): JsonObject {
   return schema === null
     ? { description }
     : { description, content: { "application/json": { schema } } };
+}
+
+const RANGE = {
+  name: "Range",
+  in: "header",
+  required: false,
+  description: "One stretch of bytes, such as bytes=0-999; several are answered as the whole.",
+  schema: { type: "string" },
+};
+const CONTENT_RANGE = {
+  "Content-Range": {
+    description: "The bytes of this answer and the size of the whole.",
+    schema: { type: "string" },
+  },
+};
+
+function toRangeAnswers(operation: Operation): Record<string, JsonObject> {
+  return {
+    206: { ...toAnswer(operation), description: "The range asked for.", headers: CONTENT_RANGE },
+    416: { description: "The range begins behind the end.", headers: CONTENT_RANGE },
+  };
 }
 
 /** Every code that the operation may answer, its own and those of its access. */

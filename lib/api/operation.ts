@@ -31,6 +31,8 @@ export interface Operation<
   answer?: Answer;
   /** An answer that is not JSON, for example "audio/wav" or "text/event-stream". */
   answerMediaType?: string;
+  /** The file may be asked for in part, by the header Range. */
+  ranged?: boolean;
   /** Codes beyond those that every operation of its access may answer. */
   errors: readonly ErrorCode[];
 }

@@ -130,6 +130,7 @@ export const downloadRun = defineOperation({
   params: runParams,
   status: 200,
   answerMediaType: "application/octet-stream",
+  ranged: true,
   errors: ["not-found", "storage.missing"],
 });
 
