@@ -1,4 +1,6 @@
 import { describe, expect, it } from "vitest";
+import { measureTone } from "../analysis/calibration";
+import { Plans } from "../analysis/cell-power";
 import { AnalysisError, AppError, FileError } from "../errors/app-error";
 import { mayRetry, toFailure } from "./failure";
 
@@ -38,11 +40,28 @@ describe("toFailure", () => {
 
   it.each([
     ["audio.truncated", /Export the recording again/],
-    ["calibration.not-a-tone", /calibrator again/],
+    ["calibration.not-a-tone", /input gain/],
     ["analysis.argument", /report number/],
   ] as const)("has a remedy for %s", (code, remedy) => {
     expect(toFailure(new FileError(code, "x"), place).remedy).toMatch(remedy);
   });
+});
+
+it("says once what to do about a calibrator that is no tone", () => {
+  const silence = {
+    file: "calibrator.wav",
+    rateHz: 48_000,
+    fullScale: 1,
+    samples: new Float32Array(48_000),
+  };
+  let thrown: unknown;
+  try {
+    measureTone(silence, 1000, new Plans());
+  } catch (error) {
+    thrown = error;
+  }
+  const { message, remedy } = toFailure(thrown, place);
+  expect(`${message} ${remedy}`.match(/again/g)).toEqual(["again"]);
 });
 
 describe("mayRetry", () => {

@@ -3,17 +3,17 @@ import { AppError } from "../errors/app-error";
 import { ERROR_TABLE, type ErrorCode } from "../errors/error-table";
 import type { Failure } from "../api/series";
 
-/** What helps against a code; the rest is ours to look at. */
+/** What helps against a code, beyond what its message says already; the rest is ours to look at. */
 const REMEDIES: Partial<Record<ErrorCode, string>> = {
   "run.no-sweep":
     "Listen to the recording: record this run again at the same gain, or excuse it with a reason.",
   "run.silent": "Check microphone and channel, and record this run again at the same gain.",
   "run.too-short": "Record this run again at the same gain and let the recorder run to the end.",
-  "stimulus.rate": "Record at the sample rate of the stimulus; do not convert the file.",
+  "stimulus.rate":
+    "Set the recorder to that rate and repeat the run at the same gain; do not convert the file.",
   "stimulus.invalid": "Check start, end and length of the sweep in the plan.",
   "calibration.missing": "Record the calibrator at the same input gain.",
-  "calibration.not-a-tone":
-    "Record the calibrator again at the same input gain, with nothing else playing.",
+  "calibration.not-a-tone": "Leave the input gain as it is, and let nothing else play meanwhile.",
   "series.too-few-runs": "Record another level, or keep a failed take with a reason.",
   "series.reference-missing": "Record the lowest level as a short-term run.",
   "analysis.nothing-valid":
