@@ -6,7 +6,8 @@ const STEP_DB = 0.5;
 /** Under every knee of the devices. */
 const FROM_DB = 72;
 const TO_DB = 102;
-const TONE_S = 0.2;
+/** Ten periods and more, behind a settling as long: of the bass longer than of the rest. */
+const toToneS = (frequencyHz: number): number => (frequencyHz < 200 ? 0.2 : 0.1);
 const LEAD_IN_TONES = 4;
 
 export interface StaticLaw {
@@ -21,9 +22,10 @@ export async function measureStaticLaw(device: Device, frequencyHz: number): Pro
     { length: (TO_DB - FROM_DB) / STEP_DB + 1 },
     (_, i) => FROM_DB + i * STEP_DB,
   );
-  const length = Math.round(TONE_S * RATE_HZ);
+  const toneS = toToneS(frequencyHz);
+  const length = Math.round(toneS * RATE_HZ);
   // A whole number of periods ends each tone; the look-ahead of a limiter is shorter than what is left out.
-  const periods = Math.max(1, Math.floor(0.1 * frequencyHz));
+  const periods = Math.max(1, Math.floor((toneS / 2) * frequencyHz));
   const window = Math.round((periods * RATE_HZ) / frequencyHz);
   const omega = (2 * Math.PI * periods) / window;
   // The first tone is played several times: programs begin with their gain turned down.
