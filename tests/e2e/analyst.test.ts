@@ -12,7 +12,14 @@ import type { Role } from "../../lib/roles/roles";
 import { call, openApiBench, until, type ApiBench } from "../api/support";
 import { addVersion, makeReviewableSeries, type ReviewableSeries } from "../support/reviewable";
 import { makeSampleResult } from "../support/sample-result";
-import { DESK, findAxeFaults, measureOverflow, openBrowser, PHONE, signIn } from "./browser";
+import {
+  DESK,
+  findAxeFaults,
+  measureOverflow,
+  openBrowser,
+  PHONE,
+  signIn,
+} from "../support/browser";
 
 const PASSWORD = "a wall in the morning";
 let bench: ApiBench;

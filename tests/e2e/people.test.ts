@@ -2,7 +2,7 @@
 import type { Browser, Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { createLab } from "../../scripts/labs/labs";
-import { findAccessFaults, openBrowser, waitForForm } from "../support/browser";
+import { findAxeFaults, openBrowser, waitForForm } from "../support/browser";
 import { createTestDatabase, type TestDatabase } from "../support/database";
 import { type LabBench, openLabBench } from "../support/lab-bench";
 import { startTestProduct, type TestProduct } from "../support/product";
@@ -107,7 +107,7 @@ describe("people of a lab", () => {
     await form.getByRole("button", { name: "Make the invitation" }).click();
     const link = await admin.getByLabel("one-time link").inputValue();
     expect(link).toMatch(new RegExp(`^${product.url}/invitation/[\\w-]{43}$`));
-    expect(await findAccessFaults(admin)).toEqual([]);
+    expect(await findAxeFaults(admin)).toEqual([]);
     await admin.getByRole("button", { name: "Done" }).click();
     await admin.getByRole("button", { name: "Withdraw the invitation for bo@" }).waitFor();
     expect(await admin.content()).not.toContain(link);
@@ -265,7 +265,7 @@ describe("every page", () => {
       await admin.setViewportSize(viewport);
       await admin.emulateMedia({ colorScheme });
       await goTo(admin, path, awaited);
-      expect(await findAccessFaults(admin)).toEqual([]);
+      expect(await findAxeFaults(admin)).toEqual([]);
       const tooWide = await admin.evaluate(
         "document.documentElement.scrollWidth - window.innerWidth",
       );

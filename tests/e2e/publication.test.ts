@@ -7,7 +7,14 @@ import { TEST_PASSWORD } from "../support/lab-bench";
 import { makeReviewableSeries } from "../support/reviewable";
 import { signTestSeries } from "../support/signed-series";
 import { openApiBench, type ApiBench } from "../api/support";
-import { DESK, findAxeFaults, measureOverflow, openBrowser, PHONE, signIn } from "./browser";
+import {
+  DESK,
+  findAxeFaults,
+  measureOverflow,
+  openBrowser,
+  PHONE,
+  signIn,
+} from "../support/browser";
 
 let bench: ApiBench;
 let browser: Browser;

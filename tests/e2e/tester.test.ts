@@ -10,7 +10,14 @@ import { getSeries } from "../../lib/api/series";
 import { DEMO_LABS } from "../../scripts/demo/demo-labs";
 import { recordSeries } from "../../scripts/demo/record-series";
 import { call, openApiBench, type ApiBench } from "../api/support";
-import { DESK, findAxeFaults, measureOverflow, openBrowser, PHONE, signIn } from "./browser";
+import {
+  DESK,
+  findAxeFaults,
+  measureOverflow,
+  openBrowser,
+  PHONE,
+  signIn,
+} from "../support/browser";
 
 const PASSWORD = "a sweep in the evening";
 let bench: ApiBench;

@@ -23,7 +23,7 @@ import { beginSeed, isUnderWay } from "../../scripts/demo/seed-state";
 import { bundlePath } from "../../scripts/setup/bundles.mjs";
 import { readSignIns, signInsPath } from "../../scripts/setup/demo-sign-ins";
 import { call, openApiBench, seriesInState, target, type ApiBench } from "../api/support";
-import { measureOverflow, openBrowser, PHONE, signIn } from "../e2e/browser";
+import { measureOverflow, openBrowser, PHONE, signIn } from "../support/browser";
 import { makeTestMember } from "../support/lab-bench";
 import { uploadWhole } from "../support/tus";
 
