@@ -58,6 +58,7 @@ export async function invite(
     to: row.email,
     content: {
       kind: "invitation",
+      invitation_id: row.id,
       lab: lab.name,
       time_zone: lab.time_zone,
       name: row.name,

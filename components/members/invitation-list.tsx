@@ -5,6 +5,13 @@ import { Moment } from "../frame/moment";
 import { Button } from "../parts/button";
 import { useWithdrawInvitation } from "../queries/people";
 
+/** The link was shown besides: what did not arrive can be handed over in another way. */
+function sayMail({ state, error }: NonNullable<Invitation["mail"]>): string {
+  if (state === "sent") return "mail sent";
+  const why = error === null ? "" : `: ${error}`;
+  return state === "waiting" ? `mail waits${why}` : `mail not delivered${why}`;
+}
+
 /** Links that nobody used yet. */
 export function InvitationList({ invitations }: { invitations: readonly Invitation[] }) {
   const withdraw = useWithdrawInvitation();
@@ -31,6 +38,12 @@ export function InvitationList({ invitations }: { invitations: readonly Invitati
                 from {invitation.created_by?.name ?? "the command line"}
                 <br />
                 good until <Moment at={invitation.expires_at} as="day" />
+                {invitation.mail !== null && (
+                  <>
+                    <br />
+                    {sayMail(invitation.mail)}
+                  </>
+                )}
               </span>
               <Button
                 size="small"

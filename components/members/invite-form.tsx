@@ -55,7 +55,7 @@ export function InviteForm() {
         secret={link}
         onDone={() => setMade(null)}
       >
-        Send it yourself: no mail goes out. It can be used once, until{" "}
+        It goes to them by mail, too. It can be used once, until{" "}
         <Moment at={invitation.expires_at} as="day" />, and is not shown again.
       </ShownOnce>
     );

@@ -102,4 +102,43 @@ export async function giveUpMail(trx: Trx, mailId: string, why: string): Promise
     .execute();
 }
 
+/** Mails of these invitations by their ids. */
+export async function listInvitationMails(
+  trx: Trx,
+  labId: string,
+  invitationIds: readonly string[],
+): Promise<ReadonlyMap<string, MailRow>> {
+  if (invitationIds.length === 0) return new Map();
+  const rows = await trx
+    .selectFrom("mails")
+    .selectAll()
+    .where("lab_id", "=", labId)
+    .where("kind", "=", "invitation")
+    .where(invitationIdOf, "in", invitationIds)
+    .execute();
+  return new Map(rows.map((row) => [String(row.payload["invitation_id"]), row]));
+}
+
+/** What has not gone out yet stays here. */
+export async function stopInvitationMail(
+  trx: Trx,
+  labId: string,
+  invitationId: string,
+): Promise<void> {
+  await trx
+    .updateTable("mails")
+    .set({
+      given_up_at: new Date(),
+      last_error: "the invitation was withdrawn",
+      payload: withoutSecret,
+    })
+    .where("lab_id", "=", labId)
+    .where("kind", "=", "invitation")
+    .where(invitationIdOf, "=", invitationId)
+    .where("sent_at", "is", null)
+    .where("given_up_at", "is", null)
+    .execute();
+}
+
+const invitationIdOf = sql<string>`payload ->> 'invitation_id'`;
 const withoutSecret = sql<string>`(payload::jsonb - 'secret')::json`;

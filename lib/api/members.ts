@@ -26,6 +26,14 @@ export const invitationSchema = z.object({
   created_at: timeSchema,
   created_by: personSchema.nullable(),
   expires_at: timeSchema,
+  /** How its mail fares; null where none was written. */
+  mail: z
+    .object({
+      state: z.enum(["waiting", "sent", "not delivered"]),
+      /** What the mail server said last, where it did not take it. */
+      error: z.string().nullable(),
+    })
+    .nullable(),
 });
 export type Invitation = z.infer<typeof invitationSchema>;
 

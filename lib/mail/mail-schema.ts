@@ -22,6 +22,7 @@ const aboutSeries = {
 export const mailContentSchema = z.discriminatedUnion("kind", [
   z.strictObject({
     kind: z.literal("invitation"),
+    invitation_id: z.uuid(),
     lab: words,
     time_zone: words,
     name: words,

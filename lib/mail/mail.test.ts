@@ -21,6 +21,7 @@ const link = { secret: SECRET, expires_at: EXPIRES };
 const CONTENTS: { readonly [Kind in MailKind]: Extract<MailContent, { kind: Kind }> } = {
   invitation: {
     kind: "invitation",
+    invitation_id: "00000000-0000-4000-8000-000000000002",
     lab: "Withy Lane",
     time_zone: "Europe/Helsinki",
     name: "Bo",

@@ -2,6 +2,7 @@
 import type { AuditRow } from "../../../db/queries/audit";
 import type { InvitationRow } from "../../../db/queries/invitations";
 import type { LabRow } from "../../../db/queries/labs";
+import type { MailRow } from "../../../db/queries/mails";
 import type { MemberRow } from "../../../db/queries/members";
 import type { TokenRow } from "../../../db/queries/tokens";
 import type { Lab, TrailEvent } from "../../../lib/api/labs";
@@ -21,6 +22,7 @@ export const toMember = (row: MemberRow): Member => ({
 export const toInvitation = (
   row: InvitationRow,
   names: ReadonlyMap<string, string>,
+  mail: MailRow | undefined,
 ): Invitation => ({
   id: row.id,
   email: row.email,
@@ -29,7 +31,13 @@ export const toInvitation = (
   created_at: row.created_at.toISOString(),
   created_by: toPerson(row.created_by, row.created_by === null ? null : names.get(row.created_by)),
   expires_at: row.expires_at.toISOString(),
+  mail: mail === undefined ? null : { state: toMailState(mail), error: mail.last_error },
 });
+
+function toMailState(mail: MailRow): NonNullable<Invitation["mail"]>["state"] {
+  if (mail.sent_at !== null) return "sent";
+  return mail.given_up_at === null ? "waiting" : "not delivered";
+}
 
 export const toToken = (row: TokenRow): Token => ({
   id: row.id,
