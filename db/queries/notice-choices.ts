@@ -3,6 +3,22 @@ import type { NoticeKind } from "../../lib/mail/notices";
 import type { Role } from "../../lib/roles/roles";
 import type { Trx } from "../client";
 
+/** Kinds that the member does not want. */
+export async function listUnwanted(
+  trx: Trx,
+  labId: string,
+  accountId: string,
+): Promise<ReadonlySet<string>> {
+  const rows = await trx
+    .selectFrom("notice_choices")
+    .select("kind")
+    .where("lab_id", "=", labId)
+    .where("account_id", "=", accountId)
+    .where("wanted", "=", false)
+    .execute();
+  return new Set(rows.map((row) => row.kind));
+}
+
 export async function chooseNotice(
   trx: Trx,
   choice: { labId: string; accountId: string; kind: NoticeKind; wanted: boolean },

@@ -1,0 +1,58 @@
+"use client";
+
+import { useQuery } from "@tanstack/react-query";
+import { NOTICES } from "@/lib/mail/notices";
+import { Button } from "../parts/button";
+import { Checkbox } from "../parts/checkbox";
+import { FaultBar } from "../parts/fault-bar";
+import { LoadingState } from "../parts/states";
+import { noticesQuery, useChooseNotice } from "../queries/mail";
+
+/** Which mails one wants, in the lab that is open now; each choice is saved as it is made. */
+export function NoticeChoices({ lab }: { lab: string }) {
+  const choices = useQuery(noticesQuery);
+  const choose = useChooseNotice();
+  if (choices.isPending) {
+    return <LoadingState label="Loading the notices" onRetry={() => void choices.refetch()} />;
+  }
+  if (choices.data === undefined) {
+    return (
+      <FaultBar
+        title="The notices could not be read"
+        actions={<Button onClick={() => void choices.refetch()}>Try again</Button>}
+      >
+        {choices.error.message}
+      </FaultBar>
+    );
+  }
+  const { notices } = choices.data;
+  if (notices.length === 0) {
+    return <p>Your roles in {lab} bring no notices: testers, analysts and reviewers get them.</p>;
+  }
+  const changing = choose.isPending ? choose.variables : null;
+  return (
+    <fieldset>
+      <legend className="text-ink-2">
+        In {lab}, a mail comes when somebody else brings it about that
+      </legend>
+      <ul className="mt-1.5 grid gap-1.5">
+        {notices.map(({ kind, wanted }) => (
+          <li key={kind}>
+            <Checkbox
+              checked={changing?.kind === kind ? changing.wanted : wanted}
+              disabled={changing?.kind === kind}
+              onChange={(event) => choose.mutate({ kind, wanted: event.target.checked })}
+            >
+              {NOTICES[kind].words}
+            </Checkbox>
+          </li>
+        ))}
+      </ul>
+      {choose.isError && (
+        <p role="alert" className="mt-2 text-fault">
+          The choice was not saved. {choose.error.message}
+        </p>
+      )}
+    </fieldset>
+  );
+}
