@@ -9,7 +9,8 @@ import { PATH_HEADER } from "@/app/_server/path-header";
 import { sessionCookieName } from "@/app/_server/session-cookie";
 import { toContentSecurityPolicy } from "@/lib/http/content-security";
 
-const PUBLIC = /^\/(sign-in|invitation|how-we-measure)(\/|$)/;
+const PUBLIC =
+  /^\/(sign-in|invitation|forgotten-password|reset-password|confirm-address|how-we-measure)(\/|$)/;
 
 export function proxy(request: NextRequest): NextResponse {
   const { pathname, search } = request.nextUrl;

@@ -23,26 +23,44 @@ export interface Attempts {
 }
 
 export function createAttempts(pool: Pool): Attempts {
-  const limiter = (keyPrefix: string, points: number): RateLimiterPostgres =>
-    new RateLimiterPostgres({
-      storeClient: pool,
-      storeType: "pool",
-      tableName: "rate_limits",
-      tableCreated: true,
-      keyPrefix,
-      points,
-      duration: WINDOW_S,
-    });
-  const byAddress = limiter("address", TRIES_PER_ADDRESS);
-  const byIp = limiter("ip", TRIES_PER_IP);
+  const windowS = WINDOW_S;
+  const byAddress = createLimiter(pool, { name: "address", points: TRIES_PER_ADDRESS, windowS });
+  const byIp = createLimiter(pool, { name: "ip", points: TRIES_PER_IP, windowS });
   return {
     async count(email, ip) {
-      await consume(byIp, toKey(ip));
-      return (await consume(byAddress, toKey(email))).remainingPoints;
+      await byIp.count(ip);
+      return byAddress.count(email);
     },
     async forgive(email, ip) {
-      await byAddress.delete(toKey(email));
-      await byIp.reward(toKey(ip));
+      await byAddress.forget(email);
+      await byIp.giveBack(ip);
+    },
+  };
+}
+
+/** One count by whatever text; the text itself is stored nowhere. */
+export function createLimiter(
+  pool: Pool,
+  { name, points, windowS }: { name: string; points: number; windowS: number },
+) {
+  const limiter = new RateLimiterPostgres({
+    storeClient: pool,
+    storeType: "pool",
+    tableName: "rate_limits",
+    tableCreated: true,
+    keyPrefix: name,
+    points,
+    duration: windowS,
+  });
+  return {
+    /** @returns points that are left. @throws as Attempts.count does */
+    count: async (text: string): Promise<number> =>
+      (await consume(limiter, toKey(text))).remainingPoints,
+    forget: async (text: string): Promise<void> => {
+      await limiter.delete(toKey(text));
+    },
+    giveBack: async (text: string): Promise<void> => {
+      await limiter.reward(toKey(text));
     },
   };
 }

@@ -1,5 +1,5 @@
 /** From address and password to a session row. */
-import type { Db } from "../../db/client";
+import type { Db, Trx } from "../../db/client";
 import { asAccount, inLab } from "../../db/in-lab";
 import { findAccountForSignIn, findPasswordHash } from "../../db/queries/accounts";
 import { recordEvent } from "../../db/queries/audit";
@@ -27,11 +27,7 @@ export async function signIn(
   attempt: SignInAttempt,
 ): Promise<{ accountId: string; sessionId: string }> {
   const accountId = await checkPasswordOf(db, attempts, attempt);
-  const labId = await asAccount(db, accountId, async (trx) => {
-    const labs = await listLabsOfAccount(trx, accountId);
-    const last = await findLastLab(trx, accountId);
-    return labs.find((lab) => lab.id === last)?.id ?? labs[0]?.id ?? null;
-  });
+  const labId = await asAccount(db, accountId, (trx) => findUsualLab(trx, accountId));
   const session = { accountId, labId, userAgent: attempt.userAgent, ip: attempt.ip };
   if (labId === null) {
     const sessionId = await asAccount(db, accountId, (trx) => createSession(trx, session));
@@ -48,6 +44,13 @@ export async function signIn(
     return id;
   });
   return { accountId, sessionId };
+}
+
+/** The lab that the account worked in last, or any; null where it belongs to none. */
+export async function findUsualLab(trx: Trx, accountId: string): Promise<string | null> {
+  const labs = await listLabsOfAccount(trx, accountId);
+  const last = await findLastLab(trx, accountId);
+  return labs.find((lab) => lab.id === last)?.id ?? labs[0]?.id ?? null;
 }
 
 /** Counts the try, then looks. @returns id of the account. @throws as signIn does */

@@ -6,8 +6,10 @@ import { PageHead } from "../frame/page-head";
 import { ThemeSwitch } from "../frame/theme-switch";
 import { FormSection } from "../parts/section";
 import { useUpdateAccount } from "../queries/people";
+import { AddressForm } from "./address-form";
 import { LabChoices } from "./lab-choices";
 import { NameForm } from "./name-form";
+import { NoticeChoices } from "./notice-choices";
 import { PasswordForm } from "./password-form";
 import { SessionList } from "./session-list";
 
@@ -20,7 +22,10 @@ export function AccountScreen({ passwordMin }: { passwordMin: number }) {
       <PageHead title="Account" line={account.email} />
       <div className="max-w-[908px] px-gutter pb-10 max-md:px-phone">
         <FormSection title="You">
-          <NameForm name={account.name} email={account.email} />
+          <NameForm name={account.name} />
+        </FormSection>
+        <FormSection title="Address">
+          <AddressForm email={account.email} />
         </FormSection>
         <FormSection title="Labs">
           <LabChoices />
@@ -31,6 +36,11 @@ export function AccountScreen({ passwordMin }: { passwordMin: number }) {
             </p>
           )}
         </FormSection>
+        {lab !== null && (
+          <FormSection title="Notices">
+            <NoticeChoices lab={lab.name} />
+          </FormSection>
+        )}
         <FormSection title="Password">
           <PasswordForm passwordMin={passwordMin} />
         </FormSection>

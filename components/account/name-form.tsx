@@ -7,7 +7,7 @@ import { Field, TextInput } from "../parts/field";
 import { useUpdateAccount } from "../queries/people";
 
 /** The name that stands by everything one does. */
-export function NameForm({ name, email }: { name: string; email: string }) {
+export function NameForm({ name }: { name: string }) {
   const update = useUpdateAccount();
   const [text, setText] = useState(name);
   const [left, setLeft] = useState(false);
@@ -27,7 +27,7 @@ export function NameForm({ name, email }: { name: string; email: string }) {
         if (parsed.success) update.mutate({ name: parsed.data });
       }}
     >
-      <div className="grid gap-x-3.5 gap-y-3 sm:grid-cols-2">
+      <div className="sm:w-1/2">
         <Field label="name" error={fault} hint="Stands by everything that you do, in every lab.">
           {(control) => (
             <TextInput
@@ -41,9 +41,6 @@ export function NameForm({ name, email }: { name: string; email: string }) {
               onBlur={() => setLeft(true)}
             />
           )}
-        </Field>
-        <Field label="email" hint="You sign in with it. It cannot be changed here.">
-          {(control) => <TextInput {...control} readOnly figures value={email} />}
         </Field>
       </div>
       <div className="mt-3 flex flex-wrap items-center gap-4">

@@ -34,6 +34,9 @@ const WORDS: Record<string, (details: Details) => string> = {
   "account.signed-in": () => "signed in",
   "account.signed-out": () => "signed out",
   "account.password-changed": (d) => `changed the password${sayEnded(d.endedSessions ?? 0)}`,
+  "account.password-reset": (d) =>
+    `set a new password by a mailed link${sayEnded(d.endedSessions ?? 0)}`,
+  "account.address-changed": (d) => `signs in with ${d.email ?? "another address"} now`,
   "invitation.created": (d) => `invited ${d.email ?? "somebody"} as ${listed(d.roles)}`,
   "invitation.withdrawn": (d) => `withdrew the invitation for ${d.email ?? "somebody"}`,
   "member.joined": (d) => `joined the lab as ${listed(d.roles)}`,

@@ -30,4 +30,5 @@ export const queryKeys = {
   lab: ["lab"],
   trail: (about: TrailAbout | null) => ["trail", about],
   sessions: ["sessions"],
+  notices: ["notices"],
 } as const;

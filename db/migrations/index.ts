@@ -14,6 +14,7 @@ import * as publicLookups from "./20261201t1103-public-lookups";
 import * as labLookup from "./20261201t1104-lab-lookup";
 import * as tableColumns from "./20261201t1310-table-columns";
 import * as keeping from "./20261201t1320-keeping";
+import * as accountAddress from "./20261201t1330-account-address";
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t0900-people": people,
@@ -30,4 +31,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   "20261201t1104-lab-lookup": labLookup,
   "20261201t1310-table-columns": tableColumns,
   "20261201t1320-keeping": keeping,
+  "20261201t1330-account-address": accountAddress,
 };

@@ -1,8 +1,10 @@
 /** Accounts and their passwords. The transaction is the account's own (asAccount or inLab). */
 import type { Kysely, Selectable } from "kysely";
 import { sql } from "kysely";
+import { AppError } from "../../lib/errors/app-error";
 import type { Theme } from "../../lib/labs/settings-schema";
 import type { Db, Trx } from "../client";
+import { isUniqueViolation } from "../database-error";
 import type { AccountsTable } from "../schema/accounts";
 import type { Database } from "../schema/database";
 
@@ -59,6 +61,22 @@ export async function updateAccount(
 ): Promise<void> {
   if (change.name === undefined && change.theme === undefined) return;
   await trx.updateTable("accounts").set(change).where("id", "=", accountId).execute();
+}
+
+/** @throws AppError "conflict.exists" where another account has it */
+export async function setEmail(trx: Trx, accountId: string, email: string): Promise<void> {
+  try {
+    await trx
+      .updateTable("accounts")
+      .set({ email: email.toLowerCase() })
+      .where("id", "=", accountId)
+      .execute();
+  } catch (error) {
+    if (!isUniqueViolation(error, "accounts_email_key")) throw error;
+    throw new AppError("conflict.exists", "Another account has this address meanwhile.", {
+      cause: error,
+    });
+  }
 }
 
 export async function setPasswordHash(

@@ -92,6 +92,18 @@ export async function endSession(trx: Trx, accountId: string, sessionId: string)
 }
 
 /** @returns how many were ended. */
+export async function endAllSessions(trx: Trx, accountId: string): Promise<number> {
+  const rows = await trx
+    .updateTable("sessions")
+    .set({ ended_at: new Date() })
+    .where("account_id", "=", accountId)
+    .where("ended_at", "is", null)
+    .returning("id")
+    .execute();
+  return rows.length;
+}
+
+/** @returns how many were ended. */
 export async function endOtherSessions(
   trx: Trx,
   accountId: string,

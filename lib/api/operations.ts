@@ -1,5 +1,6 @@
 /** Every operation of the API, in the order of the document. */
 import { accountOperations } from "./account";
+import { accountLinkOperations } from "./account-links";
 import { analysisOperations } from "./analyses";
 import { compareOperations } from "./compare";
 import { getHealth } from "./health";
@@ -8,6 +9,7 @@ import { labOperations } from "./labs";
 import { loudspeakerOperations } from "./loudspeakers";
 import { memberOperations } from "./members";
 import { microphoneOperations } from "./microphones";
+import { noticeOperations } from "./notices";
 import type { Operation } from "./operation";
 import { reviewOperations } from "./review";
 import { publicationOperations } from "./publications";
@@ -24,7 +26,12 @@ export const OPERATION_GROUPS: Readonly<Record<string, readonly Operation[]>> = 
   Review: reviewOperations,
   Compare: compareOperations,
   Publications: [...publicationOperations, ...evidenceOperations],
-  Account: [...sessionOperations, ...accountOperations],
+  Account: [
+    ...sessionOperations,
+    ...accountOperations,
+    ...noticeOperations,
+    ...accountLinkOperations,
+  ],
   Members: memberOperations,
   Tokens: tokenOperations,
   Lab: labOperations,

@@ -54,6 +54,7 @@ export const ERROR_TABLE = {
   "auth.session-needed": final(403, "A token cannot do this"),
   "auth.token-invalid": final(401, "The token is not valid"),
   "invitation.invalid": final(410, "The invitation is used or expired"),
+  "link.invalid": final(410, "The link is used or expired"),
   "password.weak": final(422, "The password is too short"),
   "not-found": final(404, "Not found"),
   "conflict.changed": final(409, "It was changed meanwhile"),

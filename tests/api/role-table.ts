@@ -117,9 +117,17 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("updateAccount", EVERYONE, "yes"),
   row("changePassword", EVERYONE, "yes"),
   row("listSessions", EVERYONE, "yes"),
+  row("requestAddressChange", EVERYONE, "yes"),
+  // Notices of the lab that one works in.
+  row("getNoticeChoices", EVERYONE, "yes"),
+  row("chooseNotice", EVERYONE, "yes"),
   row("endSession", ["not there", "not there", "not there", "not there"], "not there"),
   // No account needed.
   row("lookAtInvitation", EVERYONE, "yes", "yes"),
   row("acceptInvitation", EVERYONE, "yes", "yes"),
+  row("requestPasswordReset", EVERYONE, "yes", "yes"),
+  row("resetPassword", EVERYONE, "yes", "yes"),
+  row("lookAtAccountLink", EVERYONE, "yes", "yes"),
+  row("confirmAddress", EVERYONE, "yes", "yes"),
   row("getHealth", EVERYONE, "yes", "yes"),
 ];

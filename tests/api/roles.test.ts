@@ -72,6 +72,16 @@ const INPUTS: Readonly<Record<string, (things: Things) => { body?: unknown; quer
   switchLab: ({ labId }) => ({ body: { lab_id: labId } }),
   updateAccount: () => ({ body: { theme: "dark" } }),
   changePassword: () => ({ body: { current: "wrong", next: "a long enough password" } }),
+  chooseNotice: () => ({ body: { kind: "published", wanted: false } }),
+  requestAddressChange: () => ({
+    body: { email: `new.${crypto.randomUUID()}@lab.test`, password: "wrong" },
+  }),
+  requestPasswordReset: () => ({ body: { email: `no.${crypto.randomUUID()}@lab.test` } }),
+  resetPassword: () => ({
+    body: { secret: "a secret that nobody was given", password: "a long enough password" },
+  }),
+  lookAtAccountLink: () => ({ body: { secret: "a secret that nobody was given" } }),
+  confirmAddress: () => ({ body: { secret: "a secret that nobody was given" } }),
   lookAtInvitation: () => ({ body: { secret: "a secret that nobody was given" } }),
   acceptInvitation: () => ({
     body: { secret: "a secret that nobody was given", name: "N", password: "a long enough one" },

@@ -1,4 +1,5 @@
 import type { Metadata } from "next";
+import Link from "next/link";
 import { redirect } from "next/navigation";
 import { findPageCaller } from "@/app/_server/page-caller";
 import { SignInForm } from "@/components/entry/sign-in-form";
@@ -17,6 +18,12 @@ export default async function SignInPage({ searchParams }: PageProps<"/sign-in">
         For the members of the lab. An admin invites new ones.
       </p>
       <SignInForm next={path} />
+      <p className="mt-5 flex flex-wrap gap-x-5 gap-y-1">
+        <Link href="/forgotten-password">Forgotten the password?</Link>
+        <Link href="/published" prefetch={false}>
+          Read published tests
+        </Link>
+      </p>
     </>
   );
 }

@@ -1,0 +1,16 @@
+import type { Metadata } from "next";
+import { ForgottenForm } from "@/components/entry/forgotten-form";
+
+export const metadata: Metadata = { title: "Forgotten password" };
+
+export default function ForgottenPasswordPage() {
+  return (
+    <>
+      <h1 className="text-entry max-lg:text-[32px]/[38px]">Forgotten password</h1>
+      <p className="mt-1.5 mb-6.5 text-[16px]/6 text-ink-2">
+        We mail you a link by which you set a new one.
+      </p>
+      <ForgottenForm />
+    </>
+  );
+}
