@@ -6,6 +6,7 @@ import { isTableName, type ColumnChoice } from "../series/table-columns";
 import { assembleRun, toLowResponse, type AssemblyContext } from "./assemble-run";
 import { thirdOctaves, twentyFourthOctaves, type Grid } from "./bands";
 import { Plans } from "./cell-power";
+import { getAt } from "./get-at";
 import { measureRun, type MeasuringContext, type RawRun } from "./measure-run";
 import { toMicrophoneResponse, type MicrophoneResponse } from "./microphone";
 import { measureNoise } from "./noise-floor";
@@ -33,6 +34,17 @@ export interface MeasureOptions {
   onProgress?: OnProgress;
   /** Tables of earlier series, to be used again by a process that analyses many. */
   plans?: Plans;
+  /** Another core, that takes half of the runs. */
+  helper?: RunHelper;
+}
+
+/** Measures runs of a series elsewhere, by measureRuns. */
+export interface RunHelper {
+  /**
+   * @param runs indices into the runs of the series.
+   * @returns what became of each, in their order; after one that failed the rest may be left out.
+   */
+  measure(series: Series, runs: readonly number[]): Promise<PromiseSettledResult<RawRun>[]>;
 }
 
 export const DEFAULT_REFERENCE_BAND_HZ = [500, 2000] as const;
@@ -50,18 +62,27 @@ const FIRST_VALID = Math.SQRT2;
 export async function measureSeries(
   series: Series,
   source: SeriesSource,
-  { onProgress, plans = new Plans() }: MeasureOptions = {},
+  { onProgress, plans = new Plans(), helper }: MeasureOptions = {},
 ): Promise<{ measured: MeasuredSeries; warnings: Warning[] }> {
   requireReference(series.runs);
+  const away = helper === undefined ? [] : listLaterHalf(series.runs);
+  const elsewhere = away.length === 0 ? undefined : helper?.measure(series, away);
+  // Whoever waits for it below hears of it; nobody does where a run before fails.
+  elsewhere?.catch(() => undefined);
   const scale = await measureScale(series, (file) => source.readRecording(file, 1), plans);
   const context = await toMeasuringContext(series, source, plans);
   const warnings = [...scale.warnings, ...warnOfOddRuns(series.runs)];
   const raw: RawRun[] = [];
-  for (const run of series.runs) {
-    const result = isTableName(run.file)
-      ? await readTableRun(run, source, context, scale, warnings)
-      : await measureRecordedRun(run, source, context, warnings, onProgress);
-    raw.push(result);
+  for (const [i, run] of series.runs.entries()) {
+    if (isTableName(run.file)) {
+      raw.push(await readTableRun(run, source, context, scale, warnings));
+    } else {
+      const result = away.includes(i)
+        ? take((await elsewhere)?.[away.indexOf(i)])
+        : await measureRecordedRun(run, source, context, onProgress);
+      warnings.push(...toRunWarnings(result, run.file, context.finder.stimulus.sweep));
+      raw.push(result);
+    }
     onProgress?.({ file: run.file, stage: "levels", done: raw.length, total: series.runs.length });
   }
   const measured = assembleSeries(series, raw, context, scale);
@@ -71,21 +92,52 @@ export async function measureSeries(
   };
 }
 
+/** The later half of the runs that are recordings: what stands before them is heard of first. */
+function listLaterHalf(runs: readonly Run[]): number[] {
+  const recorded = [...runs.keys()].filter((i) => !isTableName(runs[i]!.file));
+  return recorded.slice(Math.ceil(recorded.length / 2));
+}
+
+function take(settled: PromiseSettledResult<RawRun> | undefined): RawRun {
+  if (settled?.status === "fulfilled") return settled.value;
+  throw settled?.reason ?? new Error("a run was measured elsewhere and never came back");
+}
+
+/**
+ * The part of measureSeries that a helper does.
+ *
+ * @param runs indices of runs that are recordings.
+ * @returns what became of each, in their order; nothing after one that failed.
+ * @throws AnalysisError, FileError where no run can be measured.
+ */
+export async function measureRuns(
+  series: Series,
+  source: SeriesSource,
+  runs: readonly number[],
+  plans: Plans,
+): Promise<PromiseSettledResult<RawRun>[]> {
+  const context = await toMeasuringContext(series, source, plans);
+  const settled: PromiseSettledResult<RawRun>[] = [];
+  for (const run of runs.map((i) => getAt(series.runs, i))) {
+    const [result] = await Promise.allSettled([measureRecordedRun(run, source, context)]);
+    settled.push(result);
+    if (result.status === "rejected") break;
+  }
+  return settled;
+}
+
 async function measureRecordedRun(
   run: Run,
   source: SeriesSource,
   context: MeasuringContext,
-  warnings: Warning[],
-  onProgress: OnProgress | undefined,
+  onProgress?: OnProgress,
 ): Promise<RawRun> {
   const recording = await source.readRecording(run.file, run.channel, run.loopback_channel);
   onProgress?.({ file: run.file, stage: "read", done: 0, total: 3 });
   const { sweep } = context.finder.stimulus;
   requireRate(recording, sweep.rateHz);
   const shape = { kind: run.kind, sweeps: run.sweeps, periodS: run.period_s };
-  const result = measureRun(recording, shape, context, onProgress);
-  warnings.push(...toRunWarnings(result, run.file, sweep));
-  return result;
+  return measureRun(recording, shape, context, onProgress);
 }
 
 async function readTableRun(

@@ -1,5 +1,5 @@
 /** Shapes that several answers share. */
-import { z } from "zod";
+import * as z from "zod";
 
 export const idSchema = z.uuid();
 export const timeSchema = z.iso.datetime();

@@ -2,7 +2,7 @@
  * evidence.json: what stands in a folder beside series.json and its recordings, so that an outsider
  * can compute a published result again and hold it against what was published.
  */
-import { z } from "zod";
+import * as z from "zod";
 import { timeSchema } from "../api/common";
 import { criterionSchema } from "../series/series-schema";
 

@@ -1,5 +1,5 @@
 import { createHash } from "node:crypto";
-import { z } from "zod";
+import * as z from "zod";
 import { signedDecisionSchema, type Decision, type SignedDecision } from "./review-schema";
 
 /**

@@ -1,5 +1,5 @@
 /** Decisions of people on what was computed, and the sign-off that binds them. */
-import { z } from "zod";
+import * as z from "zod";
 import { idSchema, personSchema, timeSchema } from "../api/common";
 import { criterionSchema } from "../series/series-schema";
 import { DECIDABLE_CAUSES } from "../series/vocabulary";

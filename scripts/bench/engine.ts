@@ -9,12 +9,14 @@ import { median } from "simple-statistics";
 import { z } from "zod";
 import { analyseSeries } from "../../lib/analysis/analyse-series";
 import { Plans } from "../../lib/analysis/cell-power";
+import type { RunHelper } from "../../lib/analysis/measure-series";
 import type { RealFft } from "../../lib/analysis/fft/real-fft";
 import { toResultText } from "../../lib/result/result-text";
 import { createFolderSource, readSeriesText } from "../../lib/series/folder-source";
 import { parseSeries } from "../../lib/series/parse-series";
 import type { Bench } from "../setup/bench";
 import { cloneDir } from "../setup/bootstrap.mjs";
+import { startMeasuringThread } from "../threads/measuring-thread";
 import { bundlePath, ensureBundle, listBundles } from "../setup/bundles.mjs";
 import { long, makeFolder, removeFolder, short, type BenchSeries } from "./support/engine-folders";
 
@@ -49,10 +51,10 @@ class TimedPlans extends Plans {
 const plans = new TimedPlans();
 
 /** From files to JSON text, ms; tables of earlier runs stay, as in a worker. */
-async function analyseMs({ folder }: BenchSeries): Promise<number> {
+async function analyseMs({ folder }: BenchSeries, helper?: RunHelper): Promise<number> {
   const from = performance.now();
   const series = parseSeries(readSeriesText(folder));
-  toResultText(await analyseSeries(series, createFolderSource(folder), { plans }));
+  toResultText(await analyseSeries(series, createFolderSource(folder), { plans, helper }));
   return performance.now() - from;
 }
 
@@ -95,6 +97,43 @@ async function prepareCommand(series: BenchSeries): Promise<void> {
   if (bundle === undefined) throw new Error("scripts/entries/analyse.ts is missing");
   await ensureBundle(bundle);
 }
+
+let thread: ReturnType<typeof startMeasuringThread> | undefined;
+
+async function warmUpTwoCores(series: BenchSeries): Promise<void> {
+  await prepareCommand(series);
+  await warmUp(series);
+  thread = startMeasuringThread(bundlePath("analyse"));
+  for (let i = 0; i < WARM_UP_RUNS; i += 1)
+    await analyseMs(series, thread.helperFor(series.folder));
+}
+
+/** Both cores over one, one after the other, so that whatever else the machine does meets both. */
+async function compareCores(series: BenchSeries): Promise<number> {
+  const one: number[] = [];
+  const two: number[] = [];
+  for (let i = 0; i < WARM_RUNS; i += 1) {
+    one.push(await analyseMs(series));
+    two.push(await analyseMs(series, thread?.helperFor(series.folder)));
+  }
+  process.stderr.write(
+    `  one core: ${median(one).toFixed(0)} ms, both: ${median(two).toFixed(0)} ms\n`,
+  );
+  return median(two) / median(one);
+}
+
+const onTwoCores = (series: BenchSeries, key: string, name: string): Bench => ({
+  key,
+  name: `analysis of ${name} samples, warm, on both cores against one`,
+  unit: "times",
+  runs: 3,
+  before: () => warmUpTwoCores(series),
+  run: () => compareCores(series),
+  after: async () => {
+    await thread?.close();
+    await removeFolder(series);
+  },
+});
 
 const peerSchema = z.object({ warm_ms: z.number(), process_s: z.number() });
 
@@ -212,6 +251,8 @@ export const benches: Bench[] = [
     run: async () => (await runCommand(short)).rssMib,
     after: () => removeFolder(short),
   },
+  onTwoCores(short, "engine.two_cores_ratio", "2^19"),
+  onTwoCores(long, "engine.two_cores_2e21_ratio", "2^21"),
   ...againstPeer(short, "2e19"),
   ...againstPeer(long, "2e21"),
 ];

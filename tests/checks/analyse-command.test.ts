@@ -1,10 +1,23 @@
 /** What the built analysis command prints, refuses and leaves. */
-import { existsSync, mkdtempSync, readFileSync, rmSync, symlinkSync, writeFileSync } from "node:fs";
+import {
+  existsSync,
+  mkdtempSync,
+  readFileSync,
+  rmSync,
+  statSync,
+  symlinkSync,
+  writeFileSync,
+} from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { analyseSeries } from "../../lib/analysis/analyse-series";
 import { resultSchema } from "../../lib/result/result-schema";
-import { ensureBundle, listBundles } from "../../scripts/setup/bundles.mjs";
+import { toResultText } from "../../lib/result/result-text";
+import { createFolderSource, readSeriesText } from "../../lib/series/folder-source";
+import { parseSeries } from "../../lib/series/parse-series";
+import { bundlePath, ensureBundle, listBundles } from "../../scripts/setup/bundles.mjs";
+import { startMeasuringThread } from "../../scripts/threads/measuring-thread";
 import { runAnalyse, type CommandOutcome } from "../support/analyse-command";
 import { writeSeriesFolder } from "../support/series-folder";
 
@@ -192,5 +205,49 @@ describe("analyse <folder>", () => {
     expect([outcome.code, outcome.stdout]).toEqual([2, ""]);
     expect(toFault(outcome)).toMatchObject({ code: "request.invalid" });
     expect(toFault(outcome).message).toContain("--out");
+  });
+});
+
+describe("a second thread that measures half of the runs", () => {
+  const analyse = async (helped: boolean): Promise<string> => {
+    const thread = startMeasuringThread(bundlePath("analyse"));
+    try {
+      const helper = helped ? thread.helperFor(folder) : undefined;
+      const text = readSeriesText(folder);
+      return toResultText(
+        await analyseSeries(parseSeries(text), createFolderSource(folder), { helper }),
+      );
+    } finally {
+      await thread.close();
+    }
+  };
+
+  it("changes no byte of the result", async () => {
+    expect(await analyse(true)).toBe(await analyse(false));
+  });
+
+  it("says what is wrong with a recording as the first thread would", async () => {
+    const file = join(folder, "102.wav");
+    const whole = readFileSync(file);
+    writeFileSync(file, whole.subarray(0, whole.length / 2));
+    try {
+      const [alone, helped] = await Promise.allSettled([analyse(false), analyse(true)]);
+      expect(helped).toMatchObject({
+        status: "rejected",
+        reason: { code: "audio.truncated", file: "102.wav" },
+      });
+      const toMessage = (end: PromiseSettledResult<string>): unknown =>
+        end.status === "rejected" && end.reason instanceof Error && end.reason.message;
+      expect(toMessage(helped)).toBe(toMessage(alone));
+    } finally {
+      writeFileSync(file, whole);
+    }
+  });
+});
+
+describe("the built command", () => {
+  it("carries no languages of messages that nobody reads: it starts with every series", () => {
+    // 450 kB; with every language of zod (an import of its `z`) 880 kB.
+    expect(statSync(bundlePath("analyse")).size).toBeLessThan(600_000);
   });
 });
