@@ -13,8 +13,9 @@ export function toPlanDifferences(theirs: Plan, mine: Plan): PlanDifference[] {
   const left = new Map(toLeaves(theirs, []));
   const right = new Map(toLeaves(mine, []));
   return [...new Set([...left.keys(), ...right.keys()])].flatMap((field) => {
-    const a = left.get(field) ?? "";
-    const b = right.get(field) ?? "";
+    // A plan from before something was asked says nothing of it.
+    const a = left.get(field) ?? toWords(null);
+    const b = right.get(field) ?? toWords(null);
     return a === b ? [] : [{ field, theirs: a, mine: b }];
   });
 }

@@ -50,8 +50,9 @@ export function DropZone({ seriesId, rateHz, onFiles, children }: DropZoneProps)
       <div>
         <h2 className="text-big">{over ? "Let go to send" : "Drop run files here"}</h2>
         <p className="mt-1 max-w-[54ch] text-ink-2">
-          WAV or FLAC, {rateHz / 1000} kHz, 24 bit or float. A file is matched by its name; then its
-          level is checked against the plan. Volume and input gain stay as they are.
+          WAV or FLAC, {rateHz / 1000} kHz, 24 bit or float; or runs reduced elsewhere as tables
+          (.csv, .tsv, .txt, .frd). A file is matched by its name; then its level is checked against
+          the plan. Volume and input gain stay as they are.
         </p>
         <div className="mt-3 flex flex-wrap items-center gap-2.5">
           <Button tone="main" onClick={() => input.current?.click()}>

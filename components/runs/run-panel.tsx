@@ -80,7 +80,7 @@ export function RunPanel({ row, run, paint, mayCapture, acts }: RunPanelProps) {
           </LinkButton>
         </div>
       </div>
-      {run.report !== null && (
+      {run.report !== null && run.report.envelope.low.length > 0 && (
         <EnvelopeFigure
           report={run.report}
           check={checks.find((check) => check.where !== null) ?? null}
@@ -129,8 +129,13 @@ function CheckWords({ check, main = false }: { check: ArrivalCheck; main?: boole
 function FileFacts({ report, run }: { report: ArrivalReport; run: RunView }) {
   const facts = [
     report.format,
-    `${formatNumber(report.rate_Hz / 1000, report.rate_Hz % 1000 === 0 ? 0 : 1)}${NBSP}kHz`,
-    report.channels === 1 ? "1 channel" : `channel ${report.channel} of ${report.channels}`,
+    // A table has neither rate nor channels.
+    ...(report.rate_Hz === 0
+      ? []
+      : [
+          `${formatNumber(report.rate_Hz / 1000, report.rate_Hz % 1000 === 0 ? 0 : 1)}${NBSP}kHz`,
+          report.channels === 1 ? "1 channel" : `channel ${report.channel} of ${report.channels}`,
+        ]),
     ...(report.latency_s === null
       ? []
       : [`latency ${formatNumber(report.latency_s * 1000, 0)}${NBSP}ms`]),

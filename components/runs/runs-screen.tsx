@@ -29,6 +29,7 @@ import { RunsFoot } from "./runs-foot";
 import { RunsTable } from "./runs-table";
 import { UnassignedFiles } from "./unassigned-files";
 import { removeUpload } from "./tus-transfer";
+import { useColumns } from "./use-columns";
 import { useUploads } from "./use-uploads";
 
 interface RunsScreenProps {
@@ -59,6 +60,7 @@ function Runs({ series, mayCapture, mayAnalyse }: RunsProps) {
   const excuseSlot = useExcuseSlot(series.id);
   const removeRun = useRemoveRun(series.id);
   const removeLeft = useRemoveUpload(series.id, removeUpload);
+  const { ask, dialog } = useColumns((files) => controller.add(files));
   const [placed, setPlaced] = useState<PlacedFile[] | null>(null);
   const planned: PlannedRun[] = series.planned_runs;
   const mayWrite = mayCapture && series.archived_at === null;
@@ -89,9 +91,7 @@ function Runs({ series, mayCapture, mayAnalyse }: RunsProps) {
   const acts: RunActs = {
     act: async (run, act) => void (await actOnRun.mutateAsync({ runId: run.id, act })),
     replace: (row, files) =>
-      controller.add(
-        files.map((file) => ({ file, slot: row.planned.slot, shownSlot: row.planned.slot })),
-      ),
+      ask(files.map((file) => ({ file, slot: row.planned.slot, shownSlot: row.planned.slot }))),
     excuse: async (row, reason) =>
       void (await excuseSlot.mutateAsync({ slot: row.planned.slot, reason })),
     remove: async (run) => void (await removeRun.mutateAsync(run.id)),
@@ -106,7 +106,7 @@ function Runs({ series, mayCapture, mayAnalyse }: RunsProps) {
       setPlaced(found);
       return;
     }
-    controller.add(found.map(({ file, slot }) => ({ file, slot: null, shownSlot: slot })));
+    ask(found.map(({ file, slot }) => ({ file, slot: null, shownSlot: slot })));
   };
   const lost = list.isRefetchError && list.error instanceof ApiProblem && list.error.status === 0;
 
@@ -156,13 +156,9 @@ function Runs({ series, mayCapture, mayAnalyse }: RunsProps) {
         mayAnalyse={mayAnalyse && series.archived_at === null}
       />
       {placed !== null && (
-        <PlaceDialog
-          placed={placed}
-          rows={rows}
-          onSend={(files) => controller.add(files)}
-          onClose={() => setPlaced(null)}
-        />
+        <PlaceDialog placed={placed} rows={rows} onSend={ask} onClose={() => setPlaced(null)} />
       )}
+      {dialog}
     </div>
   );
 }

@@ -15,13 +15,18 @@ const PASSING = new Set([0, 423, 502, 503, 504]);
 /** @param seriesId the series that the files belong to; the same file for another one starts anew. */
 export function makeTusTransfer(seriesId: string): StartTransfer {
   return (chosen, events) => {
-    const { file, slot } = chosen;
+    const { file, slot, columns } = chosen;
     const upload = new Upload(file, {
       endpoint: UPLOADS_PATH,
       chunkSize: CHUNK_BYTES,
       retryDelays: RETRY_DELAYS_MS,
       removeFingerprintOnSuccess: true,
-      metadata: { seriesId, fileName: file.name, ...(slot === null ? {} : { slot }) },
+      metadata: {
+        seriesId,
+        fileName: file.name,
+        ...(slot === null ? {} : { slot }),
+        ...(columns === undefined ? {} : { columns: JSON.stringify(columns) }),
+      },
       fingerprint: () => Promise.resolve(toFingerprint(seriesId, chosen)),
       onProgress: (sent) => events.onProgress(sent),
       onShouldRetry: (error) => {
@@ -57,8 +62,10 @@ export async function removeUpload(id: string): Promise<void> {
 }
 
 /** Name, size and time of change tell a file from a new recording under the old name. */
-export function toFingerprint(seriesId: string, { file, slot }: ChosenFile): string {
-  return ["tidemark", seriesId, slot ?? "", file.name, file.size, file.lastModified].join("|");
+export function toFingerprint(seriesId: string, { file, slot, columns }: ChosenFile): string {
+  const mapped = columns === undefined ? [] : [JSON.stringify(columns)];
+  const parts = [seriesId, slot ?? "", file.name, file.size, file.lastModified, ...mapped];
+  return ["tidemark", ...parts].join("|");
 }
 
 /** The server's own sentence where it sent one. */

@@ -179,7 +179,8 @@ function UnassignedFile({ run, rows, mayCapture, acts }: UnassignedFileProps) {
 function toFactWords(run: RunView): string {
   if (run.reason !== null) return `. ${run.reason}`;
   if (run.report === null) return ", being checked.";
-  const rate = `${formatNumber(run.report.rate_Hz / 1000)}${NBSP}kHz`;
+  const { rate_Hz: rateHz, format } = run.report;
+  const rate = rateHz === 0 ? `a ${format}` : `${formatNumber(rateHz / 1000)}${NBSP}kHz`;
   const [check] = toSpeakingChecks(run);
   return check === undefined ? `, ${rate}.` : `, ${rate}, ${check.title}.`;
 }

@@ -2,6 +2,7 @@
  * Files on their way to a series: a few at once, each can be stopped and gone on with. Knows nothing
  * of the page nor of the protocol: who draws subscribes, and how bytes travel is handed in.
  */
+import type { ColumnChoice } from "@/lib/series/table-columns";
 import type { UploadItem, UploadState } from "./upload-item";
 
 export interface ChosenFile {
@@ -10,6 +11,8 @@ export interface ChosenFile {
   slot: string | null;
   /** Where the page shows it meanwhile. */
   shownSlot: string | null;
+  /** Of a table: its columns as a person mapped them; absent where its head tells. */
+  columns?: ColumnChoice;
 }
 
 export interface TransferEvents {

@@ -150,7 +150,8 @@ export function toRunFigures(run: RunView | null): RunFigures {
   }
   if (report === null) return { length: null, peak: null, level: null, snr: null, faulty };
   return {
-    length: `${formatNumber(report.length_s, 2)}${NBSP}s`,
+    // A table has no length in time.
+    length: report.length_s === 0 ? null : `${formatNumber(report.length_s, 2)}${NBSP}s`,
     peak: report.peak_dBFS === null ? null : formatNumber(report.peak_dBFS),
     level: report.measured_level_dB === null ? null : formatNumber(report.measured_level_dB),
     snr: report.snr_dB === null ? null : `${formatNumber(report.snr_dB, 0)}${NBSP}dB`,

@@ -47,6 +47,13 @@ describe("readTable", () => {
     ]);
   });
 
+  it.each([
+    ["semicolons and decimal commas beside whole numbers", "f;level;THD\n20;80,5;1\n40;81,5;2"],
+    ["commas with blanks after them", "f, level, THD\n20, 80.5, 1\n40, 81.5, 2"],
+  ])("reads every cell: %s", (_, text) => {
+    expect(read(text)).toMatchObject({ levelDb: [80.5, 81.5], thdPercent: [1, 2] });
+  });
+
   it("takes columns that were mapped by hand", () => {
     const bytes = new TextEncoder().encode("a b c\n1 80 20\n2 81 40\n");
     const table = readTable(bytes, "run.txt", {

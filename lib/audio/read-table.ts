@@ -113,7 +113,12 @@ const THD = /\bthd\b|total harmonic/;
 const ORDER = /(?:^|\b)(?:h|hd|k|d)\s?([2-9])\b|\b([2-9])(?:nd|rd|th)\b|harmonic\s?([2-9])/;
 const LEVEL = /spl|level|magn|ampl|\bdb|respon|sens|gain|pegel|fundamental|\bh1\b/;
 
-function recogniseColumns(head: readonly string[], width: number, file: string): TableColumns {
+/** What the head tells, counted from 0. @throws FileError "table.column-missing" */
+export function recogniseColumns(
+  head: readonly string[],
+  width: number,
+  file: string,
+): TableColumns {
   if (head.length === 0)
     return { frequency: 0, level: 1, ...(width > 2 ? { phase: 2 } : {}), harmonics: [] };
   const kinds = head.map(toKind);

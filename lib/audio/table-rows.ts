@@ -12,6 +12,9 @@ export const LARGEST_TABLE_BYTES = 16 * 2 ** 20;
 const COMMENT = /^\s*(?:[*;#!%]|\/\/)+\s?/;
 const NUMBER = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:e[+-]?\d+)?$/i;
 
+/** More than the cells of 200 lines: lines weigh before cells. */
+const MOST_CELLS = 1e6;
+
 type Split = (line: string) => string[];
 interface Dialect {
   split: Split;
@@ -78,12 +81,14 @@ const DIALECTS: Dialect[] = [
   { split: byMark(","), decimalComma: false },
 ];
 
-/** The way of reading under which most lines are rows of two numbers or more. */
+/** The way of reading under which most lines are rows of two numbers or more, and most cells numbers. */
 function toDialect(lines: readonly string[]): Dialect {
   const sample = lines.filter((line) => line.trim() !== "" && !COMMENT.test(line)).slice(0, 200);
-  const scores = DIALECTS.map(
-    (dialect) => sample.filter((line) => countNumbers(line, dialect) >= 2).length,
-  );
+  const scores = DIALECTS.map((dialect) => {
+    const counts = sample.map((line) => countNumbers(line, dialect)).filter((count) => count >= 2);
+    // Whole frequencies beside levels with a decimal comma are rows either way: the cells tell.
+    return counts.length * MOST_CELLS + counts.reduce((sum, count) => sum + count, 0);
+  });
   return DIALECTS[scores.indexOf(Math.max(...scores))] ?? { split: byBlanks, decimalComma: false };
 }
 
