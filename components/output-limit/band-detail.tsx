@@ -1,5 +1,6 @@
 "use client";
 
+import dynamic from "next/dynamic";
 import type { ReactNode } from "react";
 import { computedCause } from "@/lib/charts/band-columns";
 import { formatFrequency } from "@/lib/charts/format";
@@ -14,6 +15,9 @@ import type { Band, Result } from "@/lib/result/result-schema";
 import type { Criterion } from "@/lib/series/series-schema";
 import { CauseLabel } from "../parts/cause-mark";
 import { HarmonicsTable } from "./harmonics-table";
+
+/** Read by few, and not at first sight: it comes after the page. */
+const SplUncertainty = dynamic(() => import("./spl-uncertainty").then((m) => m.SplUncertainty));
 
 interface BandDetailProps {
   result: Result;
@@ -72,6 +76,7 @@ export function BandDetail({ result, band, criterion, onMove, figure, decision }
         </div>
       )}
       {variants.length > 0 && <VariantList variants={variants} />}
+      <SplUncertainty band={band} />
       <div className="py-3">
         <HarmonicsTable band={band} />
       </div>

@@ -52,9 +52,10 @@ function toValues(series: SeriesView | null, picked: Loudspeaker | null = null):
   };
 }
 
-/** Both fields of a criterion are always there, filled or not: else a fresh form counts as changed. */
+/** Both fields of a criterion, and those of the uncertainty, are always there, filled or not: else a fresh form counts as changed. */
 const toPlanValues = (plan: Plan): PlanFormInput["plan"] => ({
   ...plan,
+  uncertainty: { calibrator_dB: null, microphone_dB: null, distance_m: null, ...plan.uncertainty },
   criteria: plan.criteria.map(({ thd_percent, compression_dB }) => ({
     thd_percent,
     compression_dB,

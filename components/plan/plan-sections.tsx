@@ -110,6 +110,15 @@ export function CalibrationSection() {
           </>
         )}
       </FieldGrid>
+      <FieldGrid>
+        <NumberField name="plan.uncertainty.calibrator_dB" label="calibrator ±, dB (k = 2)" />
+        <NumberField name="plan.uncertainty.microphone_dB" label="microphone ±, dB (k = 2)" />
+        <NumberField name="plan.uncertainty.distance_m" label="distance ±, m" />
+      </FieldGrid>
+      <SectionHint>
+        From their certificates, for the uncertainty of an absolute level. Left empty, class 1 and ±
+        1 cm are assumed, and said to be.
+      </SectionHint>
       <MicrophoneField />
     </FormSection>
   );

@@ -161,7 +161,20 @@ function toCalibrationValues(plan: Plan): Pair[] {
     ["by", CALIBRATION_WORDS[calibration.by]],
     ...by,
     ["microphone file", microphone === null ? null : `${microphone.file_name}, ${microphone.kind}`],
+    ...toUncertaintyValues(plan),
   ];
+}
+
+/** Only what was stated: the rest is assumed, and said to be where it counts. */
+function toUncertaintyValues({ uncertainty }: Plan): Pair[] {
+  if (uncertainty === undefined) return [];
+  const { calibrator_dB, microphone_dB, distance_m } = uncertainty;
+  const pairs: Pair[] = [
+    ["calibrator ± (k = 2)", withUnit(calibrator_dB, "dB")],
+    ["microphone ± (k = 2)", withUnit(microphone_dB, "dB")],
+    ["distance ±", withUnit(distance_m, "m")],
+  ];
+  return pairs.filter(([, value]) => value !== null);
 }
 
 function Values({ of }: { of: readonly Pair[] }) {

@@ -14,6 +14,7 @@ import {
   toMethodWords,
   toPublishedNotice,
   toSeatSource,
+  toSplUncertaintyWords,
 } from "@/lib/reader/page-words";
 import { toPartsOfSound, toReachedWords, type PartOfSound } from "@/lib/reader/parts-of-sound";
 import { USUAL_SEAT } from "@/lib/reader/seat";
@@ -207,7 +208,7 @@ function toMeasured({ snapshot, digest, timeZone }: PublicationParts): Html {
     ["published", `${day(snapshot.published_at)}, ${snapshot.published_by}`],
     snapshot.uncertainty_dB !== null && [
       "uncertainty",
-      `compression at most \u00b1${snapshot.uncertainty_dB.toFixed(1)}${NBSP}dB in any band; k = 2, for this one unit. Calibrator, microphone and distance, common to all bands, come on top.`,
+      `compression at most \u00b1${snapshot.uncertainty_dB.toFixed(1)}${NBSP}dB in any band; ${toSplUncertaintyWords(snapshot.bands)}; k = 2, for this one unit.`,
     ],
     [
       "allowance",

@@ -33,6 +33,7 @@ import { readSteps } from "./onset/steps";
 import { DEFAULT_CREST_DB, PROGRAMME_SPECTRA, estimateProgramme } from "./programme";
 import { sayNumber } from "./say";
 import { warnOfSeries } from "./series-warnings";
+import { budgetSpl } from "./spl-uncertainty";
 import { shapeOf } from "./shape";
 import type { MeasuredSeries } from "./types";
 
@@ -70,6 +71,7 @@ export function assessSeries(
   const steps = readSteps(groups, groups[0], series.bands.length);
   const onsets = findOnsets(groups, steps, series.bands.length, (drives) => plans.onset(drives));
   const causes = nameCauses(series, groups, onsets);
+  const budgets = budgetSpl(series, groups);
   const references = referRuns(series, groups, steps);
   const assessed = series.bands.map((band, index): Assessed => {
     const onset = getAt(onsets, index);
@@ -105,6 +107,7 @@ export function assessSeries(
           cause: loss.cause,
         })),
         limits: [...limits, ...longLimits].map(toLimit),
+        spl_uncertainty: getAt(budgets, input.index),
       };
     }),
     shape: [...groups.slice(1), ...longTerm].map((group) => toShape(group, groups[0], series)),

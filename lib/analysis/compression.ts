@@ -60,7 +60,8 @@ export function groupShortTerm(series: MeasuredSeries): [LevelGroup, ...LevelGro
   return [reference, ...rest];
 }
 
-function gainsOf(run: MeasuredRun): Float64Array {
+/** [bands] level minus drive, dB. */
+export function gainsOf(run: MeasuredRun): Float64Array {
   return Float64Array.from(run.bands, (band) => band.levelDb - run.driveDb);
 }
 

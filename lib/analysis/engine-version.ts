@@ -1,2 +1,2 @@
 /** Version of the computation: goes up whenever the same recordings may give other numbers. */
-export const ENGINE_VERSION = "1.0.0";
+export const ENGINE_VERSION = "1.1.0";

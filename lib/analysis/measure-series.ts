@@ -14,6 +14,7 @@ import { toGateWindow, toOrderWindows } from "./order-windows";
 import { warnOfOddRuns } from "./run-oddities";
 import { toLevelWarnings, toRunWarnings } from "./run-warnings";
 import { measureScale, type Scale } from "./scale";
+import type { SplScaleFacts } from "./spl-uncertainty";
 import { toPlayedStimulus } from "./stimulus-in-use";
 import { SweepFinder } from "./sweep-in-recording";
 import { toTableRun, toTableWarning, type RunTable } from "./table-run";
@@ -257,6 +258,24 @@ function assembleSeries(
     ...(scale.calibratorChangeDb === undefined
       ? {}
       : { calibratorChangeDb: scale.calibratorChangeDb }),
+    splScale: toSplScale(series, scale),
+  };
+}
+
+function toSplScale(series: Series, { calibratorChangeDb }: Scale): SplScaleFacts {
+  const { calibration, environment, distance_m, gate_ms, microphone, uncertainty } = series;
+  const byTone = calibration !== undefined && "frequency_Hz" in calibration;
+  // A table states its own level: how well it is known is its maker's knowledge.
+  const stated = series.runs.some((run) => isPlain(run) && isTableName(run.file));
+  return {
+    environment,
+    distanceM: distance_m,
+    gateMs: gate_ms,
+    calibratedBy:
+      stated || calibration === undefined ? null : byTone ? "calibrator" : "sensitivity",
+    calibratorChangeDb,
+    hasMicrophoneFile: microphone !== undefined,
+    stated: uncertainty ?? {},
   };
 }
 

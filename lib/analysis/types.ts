@@ -5,6 +5,7 @@
  */
 import type { Conditioning } from "../series/series-schema";
 import type { Quality } from "../result/result-schema";
+import type { SplScaleFacts } from "./spl-uncertainty";
 import type { RunKind } from "../series/vocabulary";
 
 /** One channel of a recording as the engine takes it. */
@@ -106,6 +107,8 @@ export interface MeasuredSeries {
   sweep: { startHz: number; stopHz: number; rateConstantS: number };
   /** Calibrator after minus before, dB; absent where there was one recording or none. */
   calibratorChangeDb?: number;
+  /** What the uncertainty of an absolute level rests on; absent where levels are simulated. */
+  splScale?: SplScaleFacts;
 }
 
 /** Progress of an analysis, by run and stage. */

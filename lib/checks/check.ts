@@ -5,6 +5,7 @@ export const SUBJECTS = {
   bands: "Bands",
   calibration: "Calibration",
   distance: "Level and distance",
+  uncertainty: "Uncertainty",
   harmonics: "Distortion",
   sweep: "Sweep",
   "static-curves": "Compression",

@@ -10,6 +10,7 @@ import { HARMONICS_CHECKS } from "./harmonics";
 import { PROGRAMME_CHECKS } from "./programme";
 import { STATIC_CURVE_CHECKS } from "./static-curves";
 import { SWEEP_CHECKS } from "./sweep";
+import { UNCERTAINTY_CHECKS } from "./uncertainty";
 import { WEIGHTING_CHECKS } from "./weighting";
 
 export const CHECKS: readonly Check[] = [
@@ -17,6 +18,7 @@ export const CHECKS: readonly Check[] = [
   ...BAND_CHECKS,
   ...CALIBRATION_CHECKS,
   ...DISTANCE_CHECKS,
+  ...UNCERTAINTY_CHECKS,
   ...HARMONICS_CHECKS,
   ...SWEEP_CHECKS,
   ...STATIC_CURVE_CHECKS,

@@ -3,6 +3,7 @@
 /** Documents that were read; numbers and words are those of docs/check-values.md section 15. */
 export const DOCUMENTS = {
   R1: "two open-source acoustics libraries' copies of IEC 61672-1:2013 Table 3",
+  R2: "one library's copy of IEC 60942:2017 Tables 2, 4, 7",
   R3: "same, IEC 60268-1:1985 cl. 7, Table II and IEC 60268-7:2010",
   R4: "same, notes on IEC 60268-3 cl. 14.12, IEC 61260-1:2014 annexes E, F, ISO 9612 example report",
   R5: "OSHA 1910.95 App. A, two web copies",

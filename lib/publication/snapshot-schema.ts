@@ -88,6 +88,8 @@ export const snapshotSchema = z.object({
         }),
       ),
       long_term: z.array(longTermSchema),
+      /** Of the band's absolute levels, k = 2, one unit; absent in snapshots from before it was computed. */
+      spl_uncertainty_dB: z.number().nullable().optional(),
     }),
   ),
   headline: headlineSchema.nullable(),

@@ -133,6 +133,7 @@ function toBand(
         thd_orders: level.thd_orders,
       })),
     long_term: band.long_term,
+    spl_uncertainty_dB: band.spl_uncertainty?.expanded_dB ?? null,
   };
 }
 

@@ -1,6 +1,8 @@
 /** Sentences of the public page that are computed from the snapshot. */
 import {
   formatCriterionPercent,
+  formatDb,
+  formatFrequency,
   formatLevel,
   formatList,
   formatPlain,
@@ -98,4 +100,25 @@ export function toChangedWords(bands: Snapshot["bands"]): string {
   return changed === 0
     ? `all ${bands.length} causes confirmed by the analyst`
     : `${changed} of ${bands.length} causes changed by the analyst`;
+}
+
+/**
+ * "absolute SPL ±0.9 dB at 1 kHz, at most ±3.4 dB (8 kHz)": calibrator, microphone, place and
+ * repeat, of which compression is free.
+ */
+export function toSplUncertaintyWords(
+  bands: readonly Pick<Snapshot["bands"][number], "nominal_Hz" | "spl_uncertainty_dB">[],
+): string {
+  const known = bands.flatMap(({ nominal_Hz: hz, spl_uncertainty_dB: db }) =>
+    db == null ? [] : [{ hz, db }],
+  );
+  const worst = known.toSorted((a, b) => b.db - a.db)[0];
+  const middle = known.find(({ hz }) => hz === 1000) ?? known[Math.floor(known.length / 2)];
+  if (worst === undefined || middle === undefined)
+    return "calibrator, microphone and distance come on top of that in an absolute level";
+  const say = ({ hz, db }: { hz: number; db: number }): string =>
+    `\u00b1${formatDb(db)} at ${formatFrequency(hz)}`;
+  return middle.db === worst.db
+    ? `absolute SPL ${say(middle)}`
+    : `absolute SPL ${say(middle)}, at most ${say(worst)}`;
 }

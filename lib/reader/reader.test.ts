@@ -8,6 +8,7 @@ import {
   toMethodWords,
   toPublishedNotice,
   toSeatSource,
+  toSplUncertaintyWords,
 } from "./page-words";
 import { toPartsOfSound, toReachedWords } from "./parts-of-sound";
 import { choosePublished, listKinds, readPublishedFilter, toPublishedTest } from "./published-list";
@@ -238,5 +239,26 @@ describe("the published list", () => {
 
   it("offers the kinds that there are", () => {
     expect(listKinds(tests)).toEqual(["active", "passive"]);
+  });
+});
+
+describe("the uncertainty of an absolute level", () => {
+  const band = (nominal_Hz: number, spl_uncertainty_dB?: number | null) => ({
+    nominal_Hz,
+    ...(spl_uncertainty_dB === undefined ? {} : { spl_uncertainty_dB }),
+  });
+
+  it.each([
+    [
+      [band(1000, 0.93), band(8000, 2.94)],
+      "absolute SPL ±0.9 dB at 1 kHz, at most ±2.9 dB at 8 kHz",
+    ],
+    [[band(500, 0.5), band(1000, 0.5)], "absolute SPL ±0.5 dB at 1 kHz"],
+    [
+      [band(1000), band(2000, null)],
+      "calibrator, microphone and distance come on top of that in an absolute level",
+    ],
+  ])("%j", (bands, words) => {
+    expect(toSplUncertaintyWords(bands).replaceAll("\u00a0", " ")).toBe(words);
   });
 });

@@ -134,6 +134,35 @@ export const longTermSchema = z.object({
   cause: z.enum(LONG_TERM_CAUSES),
 });
 
+export const SPL_UNCERTAINTY_NAMES = [
+  "calibrator",
+  "sensitivity",
+  "microphone",
+  "distance",
+  "reflections",
+  "temperature",
+  "repeat",
+  "drift",
+  "noise",
+] as const;
+
+export const splUncertaintyPartSchema = z.object({
+  name: z.enum(SPL_UNCERTAINTY_NAMES),
+  /** Standard uncertainty. */
+  standard_dB: z.number(),
+  /** The same for all bands, so it moves them together. */
+  common: z.boolean(),
+  /** What it rests on: stated, measured or assumed. */
+  basis: z.string(),
+});
+export type SplUncertaintyPart = z.infer<typeof splUncertaintyPartSchema>;
+
+/** Of an absolute level: parts as root of squares, expanded with k = 2, for the one unit measured. */
+export const splUncertaintySchema = z.object({
+  expanded_dB: z.number(),
+  parts: z.array(splUncertaintyPartSchema),
+});
+
 export const bandSchema = z.object({
   nominal_Hz: z.number(),
   exact_Hz: z.number(),
@@ -145,6 +174,8 @@ export const bandSchema = z.object({
   evidence: evidenceSchema,
   long_term: z.array(longTermSchema),
   limits: z.array(limitSchema),
+  /** null where SPL is not valid, or levels came stated by tables. */
+  spl_uncertainty: splUncertaintySchema.nullable().optional(),
 });
 export type Band = z.infer<typeof bandSchema>;
 

@@ -83,6 +83,14 @@ export const planSchema = z
         full_scale_dB: finite.min(60).max(200).nullable().default(null),
       })
       .prefault({}),
+    /** What is known of the uncertainty of an absolute level; absent in plans from before it was asked. */
+    uncertainty: z
+      .strictObject({
+        calibrator_dB: finite.min(0).max(10).nullable().default(null),
+        microphone_dB: finite.min(0).max(10).nullable().default(null),
+        distance_m: finite.min(0).max(1).nullable().default(null),
+      })
+      .optional(),
     microphone: z
       .strictObject({
         file_name: z.string().max(200),

@@ -83,6 +83,20 @@ export const calibrationSchema = z.union([
 ]);
 export type Calibration = z.infer<typeof calibrationSchema>;
 
+/** What is known of the uncertainty of an absolute level; what is not stated is assumed, and said to be. */
+export const statedUncertaintySchema = z.strictObject({
+  /** Of the calibrator, or of a stated full_scale_dB: expanded, k = 2. */
+  calibrator_dB: finite.min(0).max(10).optional(),
+  /** Of microphone and its file at any frequency: expanded, k = 2. */
+  microphone_dB: finite.min(0).max(10).optional(),
+  /** Limit of error of distance_m, with the loudspeaker's acoustic centre. */
+  distance_m: finite.min(0).max(1).optional(),
+  /** Of reflections: expanded, k = 2. */
+  reflections_dB: finite.min(0).max(20).optional(),
+  temperature_C: finite.min(-40).max(80).optional(),
+});
+export type StatedUncertainty = z.infer<typeof statedUncertaintySchema>;
+
 export const microphoneSchema = z.strictObject({
   file: relativeFileSchema,
   kind: z.enum(["response", "correction"]),
@@ -148,6 +162,7 @@ export const seriesSchema = z
     stimulus: stimulusSchema,
     calibration: calibrationSchema.optional(),
     microphone: microphoneSchema.optional(),
+    uncertainty: statedUncertaintySchema.optional(),
     ambient: z.strictObject({ file: relativeFileSchema }).optional(),
     runs: z.array(runSchema).min(1).max(200),
     settings: settingsSchema.default({ criteria: [...DEFAULT_CRITERIA] }),

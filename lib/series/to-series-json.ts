@@ -5,7 +5,7 @@
 import { AnalysisError } from "../errors/app-error";
 import type { Plan } from "./plan-schema";
 import type { RecordingRole } from "./planned-runs";
-import { seriesSchema, type Run, type Series } from "./series-schema";
+import { seriesSchema, type Run, type Series, type StatedUncertainty } from "./series-schema";
 import { isTableName, type ColumnChoice } from "./table-columns";
 
 /** A recording that may enter an analysis. */
@@ -71,6 +71,7 @@ export function toSeriesJson({ loudspeaker, plan, runs }: SeriesSource): SeriesF
     reference_band_Hz: plan.reference_band_Hz,
     stimulus: { ...plan.sweep },
     ...toCalibration(plan, runs),
+    ...toUncertainty(plan),
     ...(microphone === null
       ? {}
       : { microphone: { file: MICROPHONE_FILE, kind: microphone.kind } }),
@@ -86,6 +87,14 @@ export function toSeriesJson({ loudspeaker, plan, runs }: SeriesSource): SeriesF
         ? named
         : [...named, { file: MICROPHONE_FILE, digest: microphone.digest, run_id: null }],
   };
+}
+
+/** Only what is known; the rest the engine assumes, and says so. */
+function toUncertainty({ uncertainty, place }: Plan): { uncertainty?: StatedUncertainty } {
+  const known = Object.entries({ ...uncertainty, temperature_C: place.temperature_C }).filter(
+    ([, value]) => value !== null,
+  );
+  return known.length === 0 ? {} : { uncertainty: Object.fromEntries(known) };
 }
 
 const MICROPHONE_FILE = "microphone.txt";

@@ -30,8 +30,23 @@ const COIL = "lib/analysis/voice-coil.ts";
 const LAWS = "lib/analysis/onset/static-laws.ts";
 const PROGRAMME = "lib/analysis/programme.ts";
 const SCALE = "lib/analysis/scale.ts";
+const SPL = "lib/analysis/spl-uncertainty.ts";
 
 const CONSTANTS: Held[] = [
+  held(SPL, "calibrator class 1", "CALIBRATOR_LIMIT_DB = «0.25»", "uncertainty.class-1-calibrator"),
+  held(SPL, "even limits", "const EVEN = Math.sqrt(«3»)", "uncertainty.class-1-calibrator"),
+  held(SPL, "microphone at 1 kHz", "[1122, «0.7»]", "uncertainty.microphone-1k"),
+  held(SPL, "microphone at 8 kHz", "[8913, «2.5»]", "uncertainty.microphone-8k"),
+  held(SPL, "distance", "DISTANCE_LIMIT_M = «0.01»", "uncertainty.distance"),
+  held(SPL, "per kelvin", "TEMPERATURE_LIMIT_DB_PER_K = «0.01»", "uncertainty.temperature"),
+  held(SPL, "coarse gate", "COARSE_GATE_LIMIT_DB = «1»", "uncertainty.gate-coarse"),
+  held(SPL, "unseen repeat", "UNSEEN_REPEAT_DB = «0.1»", "uncertainty.budget-assumed"),
+  held(
+    "lib/analysis/uncertainty.ts",
+    "coverage factor",
+    "COVERAGE_FACTOR = «2»",
+    "uncertainty.three-four-five",
+  ),
   held(WEIGHTING, "pole 1", "const F1 = «20.598997057618316»;", "weighting.formula-c--17"),
   held(WEIGHTING, "pole 2", "const F2 = «107.65264864304629»;", "weighting.formula-a--10"),
   held(WEIGHTING, "pole 3", "const F3 = «737.8622307362901»;", "weighting.formula-a--3"),
