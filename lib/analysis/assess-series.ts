@@ -126,6 +126,7 @@ function toOnset(
   const common = {
     ceiling_dB: cause.ceiling ? orNull(top?.splDb[index]) : null,
     ...(reason === "" ? {} : { reason }),
+    ...(onset.noLaw === null ? {} : { control: onset.noLaw.control }),
   };
   const none = { nominal_dB: null, low_dB: null, high_dB: null, spl_dB: null };
   if (status === "below lowest") {

@@ -42,7 +42,7 @@ export function findCompressionLimit(
   const from = groups[passing ?? failing]?.driveDb ?? Number.NaN;
   const to = groups[failing]?.driveDb ?? Number.NaN;
   if (onset.status === "unresolved" || !posterior) {
-    if (!onset.noLaw || passing === undefined)
+    if (onset.noLaw === null || passing === undefined)
       return { status: "not assessed", reason: onset.reason };
     return {
       status: "found",

@@ -179,8 +179,28 @@ describe("warnings of a series", () => {
       settings,
     );
     expect(codes(assessment)).toContain("onset.slow-control");
-    expect(assessment.bands[0]?.onset.status).toBe("unresolved");
+    expect(assessment.bands[0]?.onset).toMatchObject({
+      status: "unresolved",
+      control: "slow control",
+    });
     expect(assessment.bands[0]?.cause).toBe("unresolved");
+  });
+
+  it("say where two controls act one behind the other", () => {
+    const device = {
+      lossDb: (b: number, drive: number) =>
+        b < 2 ? ({ 70: 0, 76: 3, 86: 3.1, 96: 3.2, 102: 8 }[drive] ?? 0) : 0,
+    };
+    const assessment = assessSeries(
+      measuredSeries({ device, runs: plainRuns(70, 76, 86, 96, 102) }),
+      settings,
+    );
+    expect(codes(assessment)).toContain("onset.several-controls");
+    expect(codes(assessment)).not.toContain("onset.slow-control");
+    expect(assessment.bands[0]).toMatchObject({
+      cause: "unresolved",
+      onset: { status: "unresolved", control: "several controls" },
+    });
   });
 
   it("say where the output grows more than the drive", () => {

@@ -3,6 +3,7 @@ import { getAt } from "./get-at";
 import type { Warning } from "../result/result-schema";
 import { groupRuns, type LevelGroup } from "./compression";
 import type { BandOnset } from "./onset/find-onsets";
+import type { NoLaw } from "./onset/no-law";
 import { ONSET_LOSS_DB } from "./onset/shapes";
 import type { StepReading } from "./onset/steps";
 import { sayBands, sayDb, sayNumber, sayRun } from "./say";
@@ -25,7 +26,7 @@ export function warnOfSeries(
     ...warnOfFewLevels(groups),
     ...warnOfReference(series, groups, onsets),
     ...warnOfSteps(steps),
-    ...warnOfSlowControl(series, onsets),
+    ...warnOfNoLaw(series, onsets),
     ...warnOfRisingGain(series, groups, onsets),
     ...warnOfDrift(series, groups),
   ];
@@ -100,16 +101,30 @@ function warnOfSteps(steps: readonly StepReading[]): Warning[] {
   });
 }
 
-function warnOfSlowControl(series: MeasuredSeries, onsets: readonly BandOnset[]): Warning[] {
-  const bands = series.bands.flatMap(({ nominalHz }, b) =>
-    onsets[b]?.noLaw === true ? [nominalHz] : [],
-  );
-  if (bands.length === 0) return [];
+function warnOfNoLaw(series: MeasuredSeries, onsets: readonly BandOnset[]): Warning[] {
+  const bandsOf = (control: NoLaw["control"]): number[] =>
+    series.bands.flatMap(({ nominalHz }, b) =>
+      onsets[b]?.noLaw?.control === control ? [nominalHz] : [],
+    );
+  const slow = bandsOf("slow control");
+  const several = bandsOf("several controls");
   return [
-    {
-      code: "onset.slow-control",
-      message: `No static law follows the losses at ${sayBands(bands)}: slow control suspected. Repeat the series with a sweep twice as long; what moves is the control.`,
-    },
+    ...(slow.length === 0
+      ? []
+      : [
+          {
+            code: "onset.slow-control",
+            message: `Slow control at ${sayBands(slow)}: the losses contradict every static control, so the gain depends on time. What a sweep shows there holds for its length only; repeat the series with one twice as long to see how far it moves.`,
+          },
+        ]),
+    ...(several.length === 0
+      ? []
+      : [
+          {
+            code: "onset.several-controls",
+            message: `No single law follows the losses at ${sayBands(several)}: two gain controls or two paths add up there, or a slow control acts. Repeat the series with a sweep twice as long; what stays is static.`,
+          },
+        ]),
   ];
 }
 

@@ -50,8 +50,9 @@ export function toFindingSentence(band: Band): Segment[] {
       ];
     case "unresolved":
       return [
-        { text: "The onset is " },
-        { text: "unresolved", strong: true },
+        ...(onset.control === "slow control"
+          ? [{ text: "Slow control", strong: true }]
+          : [{ text: "The onset is " }, { text: "unresolved", strong: true }]),
         { text: `: ${onset.reason ?? "the runs do not show it"}.` },
       ];
   }

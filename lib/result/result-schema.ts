@@ -87,6 +87,8 @@ export const onsetSchema = z.object({
   spl_dB: value,
   ceiling_dB: value,
   reason: z.string().optional(),
+  /** Where no law follows the losses: the gain depends on time, or more than one control acts. */
+  control: z.enum(["slow control", "several controls"]).optional(),
 });
 
 export type Onset = z.infer<typeof onsetSchema>;

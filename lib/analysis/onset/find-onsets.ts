@@ -8,8 +8,10 @@ import {
   type OverloadVerdict,
 } from "../distortion-evidence";
 import { detectLoss, type Detection } from "./detect";
+import { isEdgeOfWay } from "./edge-of-way";
 import { computeLikelihood, type BandGains, type OnsetLikelihood } from "./likelihood";
 import { planOnset, type OnsetPlan } from "./onset-plan";
+import { readNoLaw, type NoLaw } from "./no-law";
 import { computePosterior, type OnsetPosterior } from "./posterior";
 import { ONSET_LOSS_DB } from "./shapes";
 import { priorOf, poolShapes } from "./shape-prior";
@@ -33,8 +35,8 @@ export interface BandOnset {
   overloadInferred: boolean;
   /** Present where the top run is active and a law fits. */
   posterior: OnsetPosterior | null;
-  /** No static law follows the losses: a sign of slow control. */
-  noLaw: boolean;
+  /** What it means that no law follows the losses; null where one does. */
+  noLaw: NoLaw | null;
 }
 
 /**
@@ -55,11 +57,12 @@ export function findOnsets(
     ({ detection }) => detection !== null && detection.firstActive <= detection.top,
   );
   if (groups.length < 2 || fitted.length === 0)
-    return drafts.map((draft) => conclude(draft, groups));
+    return drafts.map((draft) => conclude(draft, groups, false));
   const tables = toPlan(groups.map(({ driveDb }) => driveDb));
   const likelihoods = drafts.map((draft) =>
     fitted.includes(draft) ? likelihoodOf(tables, draft) : null,
   );
+  const detections = drafts.map(({ detection }) => detection);
   const pooled = poolShapes(
     tables,
     likelihoods.map((likelihood, b) => (drafts[b]?.overload === "no overload" ? likelihood : null)),
@@ -67,11 +70,35 @@ export function findOnsets(
   drafts.forEach((draft, b) => {
     const likelihood = likelihoods[b];
     if (!likelihood) return;
-    const prior = priorOf(tables, draft.overload, pooled[b] ?? null);
-    draft.posterior = coverCeiling(computePosterior(likelihood, prior), tables, draft);
+    const others = pooled[b] ?? null;
+    const posterior = computePosterior(likelihood, priorOf(tables, draft.overload, others));
+    const kept =
+      others !== null && isEdgeOfWay(detections, b)
+        ? widenTo(posterior, computePosterior(likelihood, priorOf(tables, draft.overload, null)))
+        : posterior;
+    draft.posterior = coverCeiling(kept, tables, draft);
     draft.detection = draft.detection && countFromFit(draft.detection, draft.posterior);
   });
-  return drafts.map((draft) => conclude(draft, groups));
+  return drafts.map((draft, b) => conclude(draft, groups, isEdgeOfWay(detections, b)));
+}
+
+/**
+ * At the edge of a way the bands share no law: what the others say of it may lead, but takes nothing off what the
+ * band's own runs leave open.
+ */
+function widenTo(posterior: OnsetPosterior, own: OnsetPosterior): OnsetPosterior {
+  return {
+    ...posterior,
+    quantiles: (lossDb, ceilingDb) => {
+      const led = posterior.quantiles(lossDb, ceilingDb);
+      const alone = own.quantiles(lossDb, ceilingDb);
+      return {
+        lowDb: Math.min(led.lowDb, alone.lowDb),
+        medianDb: led.medianDb,
+        highDb: Math.max(led.highDb, alone.highDb),
+      };
+    },
+  };
 }
 
 /**
@@ -133,7 +160,7 @@ function draftBand(
     overload: distortion?.verdict ?? "no verdict",
     overloadInferred: false,
     posterior: null,
-    noLaw: false,
+    noLaw: null,
   };
 }
 
@@ -189,9 +216,9 @@ function likelihoodOf(plan: OnsetPlan, draft: BandOnset): OnsetLikelihood | null
   return computeLikelihood(plan, gains, detection.lossDb, lowDb, highDb);
 }
 
-function conclude(draft: BandOnset, groups: readonly LevelGroup[]): BandOnset {
+function conclude(draft: BandOnset, groups: readonly LevelGroup[], isEdge: boolean): BandOnset {
   const { detection, posterior } = draft;
-  const settle = (status: OnsetStatus, reason: string, noLaw = false): BandOnset => ({
+  const settle = (status: OnsetStatus, reason: string, noLaw: NoLaw | null = null): BandOnset => ({
     ...draft,
     status,
     reason,
@@ -223,11 +250,9 @@ function conclude(draft: BandOnset, groups: readonly LevelGroup[]): BandOnset {
     );
   }
   if (posterior.chiSquare > NO_LAW_CHI_SQUARE + 2 * groups.length) {
-    return settle(
-      "unresolved",
-      "no static law follows the losses from run to run: slow control suspected; repeat with a sweep twice as long, what moves is the control",
-      true,
-    );
+    const drives = groups.map(({ driveDb }) => driveDb);
+    const noLaw = readNoLaw(detection, draft.gains, drives, isEdge);
+    return settle("unresolved", noLaw.reason, noLaw);
   }
   const lowest = [...detection.lossDb.keys()].find((k) => Number.isFinite(detection.lossDb[k]));
   const lowestDriveDb = groups[lowest ?? 0]?.driveDb ?? Number.NaN;
