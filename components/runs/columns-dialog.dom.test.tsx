@@ -22,7 +22,14 @@ afterEach(() => {
   page.remove();
 });
 
-const settle = () => act(() => new Promise((resolve) => setTimeout(resolve, 20)));
+/** Until the file has been looked into. */
+async function settle(): Promise<void> {
+  for (let round = 0; round < 200; round += 1) {
+    await act(() => new Promise((resolve) => setTimeout(resolve, 10)));
+    if (page.querySelector('table, [role="alert"]') !== null) return;
+  }
+  throw new Error("the file was never looked into");
+}
 async function show(...texts: string[]): Promise<void> {
   const files = texts.map((text, at) => new File([text], `run${at}.csv`));
   act(() =>
@@ -53,7 +60,7 @@ async function choose(column: number, meaning: string): Promise<void> {
   });
 }
 const press = (words: string) => act(async () => Promise.resolve(button(words).click()));
-const status = () => page.querySelector('[role="status"]')?.textContent;
+const status = () => page.querySelector("output")?.textContent;
 
 describe("ColumnsDialog", () => {
   it("asks for what the head does not tell, beside the first rows", async () => {

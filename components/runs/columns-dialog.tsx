@@ -95,10 +95,10 @@ function OneTable({ file, count, last, onChosen, onClose }: OneTableProps) {
             meanings={meanings}
             onChange={(column, meaning) => setChanged(meanings.with(column, meaning))}
           />
-          <p role="status" className="mt-2 text-small">
+          <output className="mt-2 block text-small">
             {fault ??
               "Levels are taken as dB SPL at 1 m. Noise, clipping and latency are not known of a table."}
-          </p>
+          </output>
         </>
       )}
     </Dialog>
@@ -141,8 +141,8 @@ function Preview({ preview, meanings, onChange }: PreviewProps) {
           </tr>
         </thead>
         <tbody>
-          {first.map((row, r) => (
-            <tr key={r}>
+          {first.map((row) => (
+            <tr key={row.join(" ")}>
               {at.map((column) => (
                 <Td key={column} figures right>
                   {row[column] ?? <NoValue say="no number" />}

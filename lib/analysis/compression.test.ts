@@ -187,12 +187,12 @@ describe("warnings of a series", () => {
   });
 
   it("say where two controls act one behind the other", () => {
-    const device = {
+    const twofold = {
       lossDb: (b: number, drive: number) =>
         b < 2 ? ({ 70: 0, 76: 3, 86: 3.1, 96: 3.2, 102: 8 }[drive] ?? 0) : 0,
     };
     const assessment = assessSeries(
-      measuredSeries({ device, runs: plainRuns(70, 76, 86, 96, 102) }),
+      measuredSeries({ device: twofold, runs: plainRuns(70, 76, 86, 96, 102) }),
       settings,
     );
     expect(codes(assessment)).toContain("onset.several-controls");
