@@ -1,4 +1,5 @@
 /** From what stands in the outbox to a mail: subject, text and HTML. */
+import { toTesterSignal } from "../exposure/notices";
 import { toLongDay } from "../time/time-words";
 import { toOneLine, type ComposedMail, type Letter } from "./letter";
 import { toLetterHtml } from "./letter-html";
@@ -56,7 +57,7 @@ const invitation: Template<"invitation"> = (content, { publicUrl }) => ({
     url: `${publicUrl}${LINK_PATHS.invitation}${content.secret}`,
   },
   notes: [
-    `You choose your password there. The link works once, until ${toLongDay(content.expires_at, content.time_zone)}.`,
+    `If this address has no account yet, you choose a password there. The link works once, until ${toLongDay(content.expires_at, content.time_zone)}.`,
   ],
   reason: `It came to this address because an admin of ${content.lab} entered it.`,
 });
@@ -134,23 +135,30 @@ const readyForReview: Template<"ready-for-review"> = (content, place) => ({
   },
 });
 
-const runAsked: Template<"run-asked"> = (content, place) => ({
-  subject: `${nameOf(content)}: a run is asked for`,
-  heading: `${content.by} asks for a run`,
-  paragraphs: [
-    "It stands in the plan of the series, so that it can be recorded as the others are.",
-  ],
-  facts: [
-    ...seriesFacts(content),
-    ["run", content.label],
-    ["level", `${content.level_dB} dB SPL at 1 m`],
-  ],
-  quote: content.reason,
-  action: { words: "Open the runs", url: toSeriesUrl(place, content.series_id, "runs") },
-  notes: [
-    "Such levels can harm hearing: wear hearing protection or leave the room. The plan tells the dose of the session.",
-  ],
-});
+const runAsked: Template<"run-asked"> = (content, place) => {
+  // As if one stood at 1 m: never less than what is heard.
+  const signal = toTesterSignal({ levelAtTesterDbA: content.level_dB, dose: 0 });
+  return {
+    subject: `${nameOf(content)}: a run is asked for`,
+    heading: `${content.by} asks for a run`,
+    paragraphs: [
+      "It stands in the plan of the series, so that it can be recorded as the others are.",
+    ],
+    facts: [
+      ...seriesFacts(content),
+      ["run", content.label],
+      ["level", `${content.level_dB} dB SPL at 1 m`],
+    ],
+    quote: content.reason,
+    action: { words: "Open the runs", url: toSeriesUrl(place, content.series_id, "runs") },
+    notes:
+      signal === null
+        ? []
+        : [
+            `${signal}: such a level can harm hearing. Wear hearing protection or leave the room. The plan tells the dose of the session.`,
+          ],
+  };
+};
 
 const signedOff: Template<"signed-off"> = (content, place) => ({
   subject: `${nameOf(content)} is signed off`,

@@ -13,7 +13,7 @@ const FIGURES = "'Roboto Mono',ui-monospace,Menlo,Consolas,monospace";
 /** Class by colour role, for the dark theme; the light one stands in the elements. */
 const DARK: Readonly<Record<string, string>> = {
   page: `background:${COLOURS.page.dark}`,
-  sheet: `background:${COLOURS.sheet.dark};border-color:${COLOURS.rule.dark}`,
+  sheet: `background:${COLOURS.sheet.dark};border-color:${COLOURS.ink.dark} ${COLOURS.rule.dark} ${COLOURS.rule.dark}`,
   ink: `color:${COLOURS.ink.dark}`,
   ink2: `color:${COLOURS.ink2.dark}`,
   rule: `border-color:${COLOURS.rule.dark}`,

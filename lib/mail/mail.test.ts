@@ -159,7 +159,11 @@ describe("composeMail", () => {
   });
 
   it("stands by the notice for hearing where a level is asked for", () => {
-    expect(composeMail(CONTENTS["run-asked"], PLACE).text).toContain("wear hearing protection");
+    const at = (level_dB: number): string =>
+      composeMail({ ...CONTENTS["run-asked"], level_dB }, PLACE).text;
+    expect(at(79)).not.toMatch(/CAUTION|WARNING/);
+    expect(at(91)).toContain("CAUTION: such a level can harm hearing.");
+    expect(at(100)).toContain("WARNING: such a level can harm hearing.");
   });
 
   it("escapes what people wrote", () => {

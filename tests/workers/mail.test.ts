@@ -273,7 +273,7 @@ describe("a notice", () => {
     expect(mail.text).toContain("analyst asks for a run");
     expect(mail.text).toContain("> The onset lies between two levels.");
     expect(mail.text).toContain("91 dB SPL at 1 m");
-    expect(mail.text).toContain("wear hearing protection");
+    expect(mail.text).toContain("CAUTION: such a level can harm hearing.");
   });
 
   it("is not sent where the act is refused", async () => {
