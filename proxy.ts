@@ -37,5 +37,5 @@ export function proxy(request: NextRequest): NextResponse {
 
 // Never under /api: the proxy would hold whole uploads in memory. Pages for readers have their own policy.
 export const config = {
-  matcher: ["/((?!api/|_next/|t/|preview/|published$|oembed$|.*\\.[a-z0-9]+$).*)"],
+  matcher: ["/((?!api/|_next/|t/|preview/|published$|published/|oembed$|.*\\.[a-z0-9]+$).*)"],
 };

@@ -4,7 +4,7 @@ import { listPublishedTests } from "@/app/_server/reader/published-tests";
 import { toReaderPage } from "@/components/reader/frame";
 import { toPublishedBody } from "@/components/reader/published-list";
 import { getEnvironment } from "@/lib/config/environment";
-import { choosePublished, listKinds, readPublishedFilter } from "@/lib/reader/published-list";
+import { choosePublished, listChoices, readPublishedFilter } from "@/lib/reader/published-list";
 
 const PAGE_SIZE = 24;
 
@@ -20,7 +20,8 @@ export const GET = (request: Request): Promise<Response> =>
       found: found.length,
       total: all.length,
       pages,
-      kinds: listKinds(all),
+      choices: listChoices(all),
+      chosen: filter.chosen.flatMap((key) => all.find((test) => test.key === key) ?? []),
       filter: { ...filter, page },
     });
     const text = toReaderPage({

@@ -1,4 +1,4 @@
-import { formatFrequency, NBSP } from "@/lib/charts/format";
+import { NBSP } from "@/lib/charts/format";
 import { CAUSE_WORDS } from "@/lib/charts/marks";
 import {
   toFirstLines,
@@ -7,6 +7,7 @@ import {
   type TwoLines,
 } from "@/lib/compare/compare-words";
 import type { ComparisonTest } from "@/lib/compare/comparison-schema";
+import { toRange } from "@/lib/reader/parts-of-sound";
 import { CauseMark } from "../parts/cause-mark";
 import { Table, TableFrame, Td, Th } from "../parts/table";
 import { LetterBox } from "./letter-box";
@@ -25,7 +26,7 @@ export function CompareTable({ tests }: { tests: readonly ComparisonTest[] }) {
             {names.map((name) => (
               <Th key={name}>
                 {name}, dB
-                <small className="block text-label font-normal">{toRange(tests, name)}</small>
+                <small className="block text-label font-normal">{rangeOf(tests, name)}</small>
               </Th>
             ))}
             <Th>
@@ -101,11 +102,11 @@ function FirstWords({ lines }: { lines: TwoLines }) {
   );
 }
 
-function toRange(tests: readonly ComparisonTest[], name: string): string {
+function rangeOf(tests: readonly ComparisonTest[], name: string): string {
   const parts = tests.flatMap((test) => test.parts.filter((part) => part.name === name));
   const [from, to] = [
     Math.min(...parts.map((part) => part.from_Hz)),
     Math.max(...parts.map((part) => part.to_Hz)),
   ];
-  return `${formatFrequency(from)} to ${formatFrequency(to)}`;
+  return toRange(from, to);
 }

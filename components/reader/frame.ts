@@ -11,7 +11,7 @@ interface ReaderPage {
   /** Search engines stay away. */
   hidden?: boolean;
   script?: boolean;
-  current?: "published";
+  current?: "published" | "compare" | "how";
   /** More elements for the head. */
   head?: HtmlPart;
   body: HtmlPart;
@@ -47,10 +47,18 @@ export function toReaderPage(page: ReaderPage): string {
         <header class="bar">
           <a class="brand" href="/published">${BRAND_MARK}Tidemark</a>
           <nav aria-label="Main">
-            <a href="/published" ${page.current === "published" && asHtml(' aria-current="page"')}
-              >Published tests</a
-            >
-            <a href="/how-we-measure">How we measure</a>
+            ${(
+              [
+                ["published", "/published", "Published tests"],
+                ["compare", "/published/compare", "Compare"],
+                ["how", "/how-we-measure", "How we measure"],
+              ] as const
+            ).map(
+              ([room, href, words]) =>
+                html`<a href="${href}" ${page.current === room && asHtml(' aria-current="page"')}
+                  >${words}</a
+                > `,
+            )}
           </nav>
         </header>
         <main id="content">${page.body}</main>

@@ -4,10 +4,17 @@ import { CAUSE_WORDS, causeShapes } from "@/lib/charts/marks";
 import { toSmallWall } from "@/lib/charts/small-wall";
 import { toSvg } from "@/lib/charts/svg-text";
 import { COLOURS } from "@/lib/charts/tokens";
+import { letterOf } from "@/lib/compare/compare-words";
+import { MOST_COMPARED } from "@/lib/compare/comparison-schema";
 import { toMethodLine } from "@/lib/exposure/notices";
 import { asHtml, html, type Html } from "@/lib/html/html";
 import {
+  PUBLISHED_SIZES_DB,
+  PUBLISHED_SORTS,
+  toComparePath,
   toListNotice,
+  toPublishedHref,
+  type PublishedChoices,
   type PublishedFilter,
   type PublishedTest,
 } from "@/lib/reader/published-list";
@@ -20,7 +27,9 @@ interface PublishedListProps {
   found: number;
   total: number;
   pages: number;
-  kinds: readonly string[];
+  choices: PublishedChoices;
+  /** Picked for comparing, wherever in the list they stand. */
+  chosen: readonly Pick<PublishedTest, "key" | "model">[];
   filter: PublishedFilter;
 }
 
@@ -44,41 +53,106 @@ export function toPublishedBody(props: PublishedListProps): Html {
             ${total === 0 ? "Nothing is published yet." : "No published test matches. Try fewer words."}
           </p>`
         : html`<ul class="cards">
-            ${tests.map(toCard)}
+            ${tests.map((test) => toCard(test, filter))}
           </ul>`
     }
-    ${props.pages > 1 && toPager(filter, props.pages)}`;
+    ${props.pages > 1 && toPager(filter, props.pages)} ${props.chosen.length > 0 && toTray(props)}`;
 }
 
-function toFilters({ kinds, filter }: PublishedListProps): Html {
+function toFilters({ choices, filter }: PublishedListProps): Html {
   const option = (value: string, words: string, on: boolean): Html =>
     html`<option value="${value}" ${on && asHtml(" selected")}>${words}</option>`;
+  const select = (
+    name: string,
+    label: string,
+    value: string,
+    options: readonly (readonly [value: string, words: string])[],
+  ): Html =>
+    html`<label
+      ><span>${label}</span
+      ><select name="${name}">
+        ${options.map(([one, words]) => option(one, words, one === value))}
+      </select></label
+    >`;
+  const asIs = (words: readonly string[]) => words.map((word) => [word, word] as const);
   return html`<form class="filters" action="/published" method="get" role="search">
     <label
       ><span>loudspeaker or maker</span
       ><input type="search" name="q" value="${filter.search}" maxlength="80"
     /></label>
-    <label
-      ><span>kind</span
-      ><select name="kind">
-        ${option("", "any kind", filter.kind === "")}${kinds.map((kind) =>
-          option(kind, kind, kind === filter.kind),
-        )}
-      </select></label
-    >
-    <label
-      ><span>order</span
-      ><select name="sort">
-        ${(["newest", "loudest", "name"] as const).map((sort) =>
-          option(sort, SORT_WORDS[sort], sort === filter.sort),
-        )}
-      </select></label
-    >
+    ${select("kind", "kind", filter.kind, [["", "any kind"], ...asIs(choices.kinds)])}
+    ${select("maker", "maker", filter.maker, [["", "any maker"], ...asIs(choices.makers)])}
+    ${select("lab", "lab", filter.lab, [["", "any lab"], ...asIs(choices.labs)])}
+    ${select("limit", "limit", filter.criterion, [
+      ["", "any limit"],
+      ...choices.criteria.map(({ key, words }) => [key, words] as const),
+    ])}
+    ${select("from", "reached at least", filter.fromDb === null ? "" : String(filter.fromDb), [
+      ["", "any level"],
+      ...PUBLISHED_SIZES_DB.map((db) => [String(db), `${db}${NBSP}dB`] as const),
+    ])}
+    ${select(
+      "sort",
+      "order",
+      filter.sort,
+      PUBLISHED_SORTS.map((sort) => [sort, SORT_WORDS[sort]] as const),
+    )}
+    ${
+      filter.chosen.length > 0 &&
+      html`<input type="hidden" name="t" value="${filter.chosen.join(",")}" />`
+    }
     <button type="submit">Show</button>
   </form>`;
 }
 
-function toCard(test: PublishedTest): Html {
+/** What was picked for comparing; it works without script, the address holds it. */
+function toTray({ chosen, filter }: PublishedListProps): Html {
+  const keys = chosen.map((test) => test.key);
+  return html`<section class="tray" aria-label="Compare tray" id="tray">
+    <h2>Compare</h2>
+    <ol>
+      ${chosen.map(
+        (test, at) =>
+          html`<li>
+            <span class="figures">${letterOf(at)}</span> <b>${test.model}</b
+            ><a
+              href="${toPublishedHref(filter, { chosen: keys.filter((key) => key !== test.key) })}"
+              aria-label="Take ${test.model} out"
+              >✕</a
+            >
+          </li>`,
+      )}
+    </ol>
+    <p class="small">
+      ${chosen.length === 1 ? "Pick one more." : "Four at most."} The first is the reference.
+    </p>
+    <p class="acts">
+      <a href="${toPublishedHref(filter, { chosen: [] })}">Clear</a>${
+        chosen.length > 1 &&
+        html`<a class="go" href="${toComparePath(keys)}">Compare ${chosen.length}</a>`
+      }
+    </p>
+  </section>`;
+}
+
+/** In where it was not, while there is room; out where it was. */
+function toChoose(test: PublishedTest, filter: PublishedFilter): Html | false {
+  const { chosen } = filter;
+  if (chosen.includes(test.key)) {
+    const rest = chosen.filter((key) => key !== test.key);
+    return html`<a class="pick picked" href="${toPublishedHref(filter, { chosen: rest })}"
+      >Take out of the comparison<span class="sr-only">: ${test.model}</span></a
+    >`;
+  }
+  return (
+    chosen.length < MOST_COMPARED &&
+    html`<a class="pick" href="${toPublishedHref(filter, { chosen: [...chosen, test.key] })}#tray"
+      >Add to compare<span class="sr-only">: ${test.model}</span></a
+    >`
+  );
+}
+
+function toCard(test: PublishedTest, filter: PublishedFilter): Html {
   const { headline } = test;
   const reached =
     headline === null
@@ -103,6 +177,7 @@ function toCard(test: PublishedTest): Html {
         >${toLongDay(test.publishedAt, "UTC")}, rev. ${test.revision}, ${test.lab}</span
       >
     </p>
+    ${toChoose(test, filter)}
   </li>`;
 }
 
@@ -129,11 +204,7 @@ function toFirstWords({ headline, firstCause, highestRunDb }: PublishedTest): Ht
 }
 
 function toPager(filter: PublishedFilter, pages: number): Html {
-  const to = (page: number): string => {
-    const query = new URLSearchParams({ q: filter.search, kind: filter.kind, sort: filter.sort });
-    query.set("page", String(page));
-    return `/published?${query.toString()}`;
-  };
+  const to = (page: number): string => toPublishedHref(filter, { page });
   return html`<nav class="pager" aria-label="Pages">
     ${filter.page > 1 && html`<a href="${to(filter.page - 1)}" rel="prev">Earlier page</a>`}<span
       >page ${filter.page} of ${pages}</span

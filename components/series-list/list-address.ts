@@ -9,8 +9,9 @@ import {
 } from "nuqs/server";
 import { SERIES_SORTS } from "@/lib/api/series";
 import { SERIES_STATES } from "@/lib/series/vocabulary";
+import { toCriterionKey } from "@/lib/result/criteria";
 import type { SeriesListQuery } from "../queries/query-keys";
-import { DEFAULT_CRITERION, toCriterionKey } from "./list-words";
+import { DEFAULT_CRITERION } from "./list-words";
 
 export const listAddress = {
   search: parseAsString.withDefault(""),

@@ -1,8 +1,8 @@
+import { toCriterionKey } from "@/lib/result/criteria";
 import { describe, expect, it } from "vitest";
 import {
   findLimits,
   listCriteria,
-  toCriterionKey,
   toCriterionShort,
   toCriterionWords,
   toFirstWords,

@@ -1,15 +1,8 @@
 /** What a row of the list says in words, for one criterion. */
 import type { ListLimits, SeriesRow } from "@/lib/api/series";
 import { formatFrequency, formatPlain, NBSP, roundLimitDown } from "@/lib/charts/format";
+import { toCriterionKey } from "@/lib/result/criteria";
 import type { Criterion } from "@/lib/series/series-schema";
-
-/** Stable word for the address and for comparing: "thd10-comp3", "thd3", "comp1". */
-export function toCriterionKey(criterion: Criterion): string {
-  const parts: string[] = [];
-  if (criterion.thd_percent !== undefined) parts.push(`thd${criterion.thd_percent}`);
-  if (criterion.compression_dB !== undefined) parts.push(`comp${criterion.compression_dB}`);
-  return parts.join("-");
-}
 
 /** "THD 10 % or compression 3 dB, whichever comes first" */
 export function toCriterionWords(criterion: Criterion): string {

@@ -3,7 +3,8 @@ import type { ListLimits, SeriesRow } from "@/lib/api/series";
 import { toCsv } from "@/lib/csv/csv";
 import { toMaxLevelNotice, toMethodLine } from "@/lib/exposure/notices";
 import type { Criterion } from "@/lib/series/series-schema";
-import { findLimits, toCriterionKey, toCriterionWords } from "./list-words";
+import { toCriterionKey } from "@/lib/result/criteria";
+import { findLimits, toCriterionWords } from "./list-words";
 
 const HEAD = [
   "series",

@@ -3,12 +3,13 @@
 import { useEffect, useState } from "react";
 import type { Criterion } from "@/lib/series/series-schema";
 import { SERIES_STATES, type SeriesState } from "@/lib/series/vocabulary";
+import { toCriterionKey } from "@/lib/result/criteria";
 import { Button } from "../parts/button";
 import { Checkbox } from "../parts/checkbox";
 import { Select, TextInput } from "../parts/field";
 import { SegmentedControl } from "../parts/segmented-control";
 import type { ListView } from "./list-address";
-import { toCriterionKey, toCriterionShort } from "./list-words";
+import { toCriterionShort } from "./list-words";
 
 interface SeriesFiltersProps {
   view: ListView;

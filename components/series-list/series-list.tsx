@@ -7,6 +7,7 @@ import { ApiProblem } from "@/lib/api/client";
 import type { SeriesRow } from "@/lib/api/series";
 import { formatCount } from "@/lib/charts/format";
 import { toMaxLevelNotice } from "@/lib/exposure/notices";
+import { toCriterionKey } from "@/lib/result/criteria";
 import { toChosenIds, toggleChosen } from "../compare/compare-address";
 import { CompareTray } from "../compare/compare-tray";
 import { PageHead } from "../frame/page-head";
@@ -25,7 +26,7 @@ import {
   toSort,
   type ListView,
 } from "./list-address";
-import { DEFAULT_CRITERION, listCriteria, toCriterionKey, toCriterionWords } from "./list-words";
+import { DEFAULT_CRITERION, listCriteria, toCriterionWords } from "./list-words";
 import { PageTurner } from "./page-turner";
 import { SeriesCards } from "./series-cards";
 import { toLoudestLevel, toSeriesCsv } from "./series-csv";

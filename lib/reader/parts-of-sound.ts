@@ -65,7 +65,8 @@ function findLowest(bands: readonly Band[], of: (band: Band) => number | null): 
   return low;
 }
 
-const toRange = (fromHz: number, toHz: number): string =>
+/** "40 to 80 Hz", "315 Hz to 1.25 kHz". */
+export const toRange = (fromHz: number, toHz: number): string =>
   fromHz < 1000 === toHz < 1000
     ? `${formatFrequency(fromHz).split(NBSP)[0] ?? ""} to ${formatFrequency(toHz)}`
     : `${formatFrequency(fromHz)} to ${formatFrequency(toHz)}`;

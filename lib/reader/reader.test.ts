@@ -11,7 +11,14 @@ import {
   toSplUncertaintyWords,
 } from "./page-words";
 import { toPartsOfSound, toReachedWords } from "./parts-of-sound";
-import { choosePublished, listKinds, readPublishedFilter, toPublishedTest } from "./published-list";
+import {
+  choosePublished,
+  listChoices,
+  readPublishedFilter,
+  toComparePath,
+  toPublishedHref,
+  toPublishedTest,
+} from "./published-list";
 import { toEnoughRows, toNeededPeakDb, toSeatAnswer, USUAL_SEAT, type SeatSource } from "./seat";
 
 const plain = (text: string): string => text.replaceAll("\u00a0", " ");
@@ -214,7 +221,7 @@ describe("the published list", () => {
             ? null
             : { ...snapshot.headline, spl_dB: splDb },
       },
-      `/t/lab/${model}`,
+      model.toLowerCase(),
     );
   };
   const tests = [
@@ -233,12 +240,40 @@ describe("the published list", () => {
     ["sort=loudest", ["Loom", "Osier", "Fennel"]],
     ["sort=name", ["Fennel", "Loom", "Osier"]],
     ["sort=sideways&page=x", ["Osier", "Loom", "Fennel"]],
+    ["from=100", ["Osier", "Loom"]],
+    ["from=105", []],
+    ["from=7", ["Osier", "Loom", "Fennel"]],
+    ["maker=Withy+Lane&lab=Reedholm+Test+Lab&limit=comp3", ["Osier", "Loom", "Fennel"]],
+    ["maker=Withy", []],
+    ["limit=thd3", []],
   ])("?%s", (query, models) => {
     expect(names(query)).toEqual(models);
   });
 
-  it("offers the kinds that there are", () => {
-    expect(listKinds(tests)).toEqual(["active", "passive"]);
+  it("offers what there is to filter by", () => {
+    expect(listChoices(tests)).toMatchObject({
+      kinds: ["active", "passive"],
+      makers: ["Withy Lane"],
+      labs: ["Reedholm Test Lab"],
+      criteria: [{ key: "comp3", words: "3\u00a0dB compression" }],
+    });
+  });
+
+  it("keeps the whole view in the address, and four picked at most", () => {
+    const address =
+      "/published?q=osier&kind=active&maker=Withy+Lane&limit=comp3&from=95&sort=name&page=2&t=lab%2Fosier%2Clab%2Floom";
+    const filter = readPublishedFilter(new URL(address, "http://x.test").searchParams);
+    expect(filter.chosen).toEqual(["lab/osier", "lab/loom"]);
+    expect(toPublishedHref(filter)).toBe(address);
+    expect(toPublishedHref(readPublishedFilter(new URLSearchParams()))).toBe("/published");
+    const many = "t=a/a,a/b,a/a,../x,a/c,a/d,a/e";
+    expect(readPublishedFilter(new URLSearchParams(many)).chosen).toEqual([
+      "a/a",
+      "a/b",
+      "a/c",
+      "a/d",
+    ]);
+    expect(toComparePath(["a/a", "a/b"])).toBe("/published/compare?t=a%2Fa,a%2Fb");
   });
 });
 

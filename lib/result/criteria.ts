@@ -68,3 +68,11 @@ export function sayCriterion(criterion: Criterion): string {
   }
   return parts.join(" or ");
 }
+
+/** Stable word for the address and for comparing: "thd10-comp3", "thd3", "comp1". */
+export function toCriterionKey(criterion: Criterion): string {
+  const parts: string[] = [];
+  if (criterion.thd_percent !== undefined) parts.push(`thd${criterion.thd_percent}`);
+  if (criterion.compression_dB !== undefined) parts.push(`comp${criterion.compression_dB}`);
+  return parts.join("-");
+}

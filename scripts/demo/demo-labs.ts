@@ -20,6 +20,13 @@ export type Mishap =
   | { kind: "stops-early"; lengthS: number; keptBecause: string }
   | { kind: "silence"; keptBecause: string };
 
+/** What the reviewer says when a series is published. */
+export interface Published {
+  suppliedBy: string;
+  words: string;
+  makerStatement?: { name: string; words: string };
+}
+
 export interface DemoSeries {
   /** One word, of this series alone. */
   name: string;
@@ -32,6 +39,8 @@ export interface DemoSeries {
   recorded: "all" | "none" | { upTo: string };
   /** By slot. */
   mishaps: Record<string, Mishap>;
+  /** Decided, signed off and published; null: it waits in review, or is not there yet. */
+  published: Published | null;
 }
 
 export interface DemoLab {
@@ -49,7 +58,9 @@ const compose = (
   key: LoudspeakerKey,
   loudspeaker: Omit<LoudspeakerInput, "serial" | "tuning_Hz"> & Partial<LoudspeakerInput>,
   plan: PlanInput,
-  rest: Partial<Pick<DemoSeries, "name" | "fullScaleDb" | "recorded" | "mishaps">> = {},
+  rest: Partial<
+    Pick<DemoSeries, "name" | "fullScaleDb" | "recorded" | "mishaps" | "published">
+  > = {},
 ): DemoSeries => ({
   name: toFileStem(loudspeaker.model),
   key,
@@ -58,6 +69,7 @@ const compose = (
   fullScaleDb: 116,
   recorded: "all",
   mishaps: {},
+  published: null,
   ...rest,
 });
 
@@ -110,6 +122,13 @@ export const DEMO_LABS: readonly DemoLab[] = [
           largest_dimension_m: 0.24,
         },
         { state: BENCH_AMPLIFIER, sweep: { length_s: 5.5 }, levels: levels([76, 86, 96, 102]) },
+        {
+          published: {
+            suppliedBy: "bought by the lab",
+            words:
+              "Small enough for a shelf, and honest about it: from 200 Hz up it plays as loud as loudspeakers twice its size. The bass is what limits it.",
+          },
+        },
       ),
       compose(
         "harbourTwo",
@@ -121,6 +140,13 @@ export const DEMO_LABS: readonly DemoLab[] = [
           largest_dimension_m: 0.33,
         },
         { state: BENCH_AMPLIFIER, sweep: { length_s: 5.5 }, levels: levels([76, 86, 96, 102]) },
+        {
+          published: {
+            suppliedBy: "lent by the maker",
+            words:
+              "Nothing gave out in any band up to the 102 dB run. How loud it plays beyond that, this test does not say.",
+          },
+        },
       ),
       compose(
         "loom6",
@@ -144,6 +170,18 @@ export const DEMO_LABS: readonly DemoLab[] = [
           tuning_Hz: 52,
         },
         { state: BENCH_AMPLIFIER, sweep: { length_s: 5.5 }, levels: levels([76, 86, 96, 102]) },
+        {
+          published: {
+            suppliedBy: "bought by the lab",
+            words:
+              "Plays loud for its size down to about 100 Hz. Below, the port and the small woofer give out one after the other.",
+            makerStatement: {
+              name: "Stonecrop Works",
+              words:
+                "Fennel 5 is meant to be used with a high-pass filter at 80 Hz. We thank the lab for measuring it without one, too.",
+            },
+          },
+        },
       ),
       compose(
         "samphire3",
@@ -158,7 +196,14 @@ export const DEMO_LABS: readonly DemoLab[] = [
           state: { power: "battery, full", volume: "80 %", eq: "off" },
           levels: levels([68, 74, 80, 84]),
         },
-        { fullScaleDb: 110 },
+        {
+          fullScaleDb: 110,
+          published: {
+            suppliedBy: "bought by the lab",
+            words:
+              "A battery loudspeaker for the table. Its protection already works in the quietest run, so the figures say how far it goes, not how it would sound without it.",
+          },
+        },
       ),
       compose(
         "osier5a",
@@ -211,7 +256,11 @@ export const DEMO_LABS: readonly DemoLab[] = [
     timeZone: "Europe/Stockholm",
     members: [
       { name: "Orla Finch", email: "orla@northpier.example", roles: ["tester", "analyst"] },
-      { name: "Pavel Strand", email: "pavel@northpier.example", roles: ["admin", "reviewer"] },
+      {
+        name: "Pavel Strand",
+        email: "pavel@northpier.example",
+        roles: ["analyst", "reviewer", "admin"],
+      },
     ],
     series: [
       compose(
@@ -230,7 +279,13 @@ export const DEMO_LABS: readonly DemoLab[] = [
           calibration: { level_dB: 114 },
           place: { environment: "anechoic", temperature_C: 19, distance_m: 2, tester: "next-room" },
         },
-        { fullScaleDb: 128 },
+        {
+          fullScaleDb: 128,
+          published: {
+            suppliedBy: "lent by a hire company",
+            words: "For stages: levels at 1 m go far beyond what any ear should meet there.",
+          },
+        },
       ),
       compose(
         "ketch12",

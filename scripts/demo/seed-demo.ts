@@ -3,6 +3,7 @@ import type { Db } from "../../db/client";
 import { listAllLabs } from "../../db/queries/labs";
 import { hashPassword } from "../../lib/account/passwords";
 import type { DemoLab, DemoSeries } from "./demo-labs";
+import { publishDemoSeries } from "./publish-series";
 import { ensureLab, type SeededLab } from "./seed-people";
 import { ensureSeries, fillSeries, type SeedTools } from "./seed-series";
 import { beginSeed, endSeed, isUnderWay } from "./seed-state";
@@ -65,7 +66,12 @@ async function fillAll(
       const { maker, model, serial } = series.loudspeaker;
       try {
         const { state, recordings } = await fillSeries(tools, lab, id, series);
-        say(`${maker} ${model} ${serial}: ${recordings} recordings, ${state}`);
+        const published =
+          series.published !== null &&
+          (await publishDemoSeries(tools.app, lab, id, series.published));
+        say(
+          `${maker} ${model} ${serial}: ${recordings} recordings, ${published ? "published" : state}`,
+        );
       } catch (error) {
         faults.push(error instanceof Error ? error.message : String(error));
       }

@@ -6,12 +6,17 @@ import { createAccount } from "../../db/queries/accounts";
 import { recordEvent } from "../../db/queries/audit";
 import { foundLab, listAllLabs } from "../../db/queries/labs";
 import { addMember, findMemberByEmail } from "../../db/queries/members";
+import type { Role } from "../../lib/roles/roles";
 import type { DemoLab, DemoMember } from "./demo-labs";
 
 export interface SeededLab {
   labId: string;
   /** The member who records and uploads. */
   testerId: string;
+  /** Decides and signs off: somebody else than the tester. */
+  analystId: string;
+  /** Publishes. */
+  reviewerId: string;
 }
 
 /**
@@ -29,10 +34,19 @@ export async function ensureLab(
   for (const member of lab.members) {
     ids.set(member, await ensureMember(databases.app, labId, member, passwordHash));
   }
+  const idOf = (role: Role, except?: DemoMember): string => {
+    const member = lab.members.find((one) => one !== except && one.roles.includes(role));
+    const id = member && ids.get(member);
+    if (id === undefined) throw new Error(`${lab.name} has no ${role}.`);
+    return id;
+  };
   const tester = lab.members.find(({ roles }) => roles.includes("tester"));
-  const testerId = tester && ids.get(tester);
-  if (testerId === undefined) throw new Error(`${lab.name} has no tester.`);
-  return { labId, testerId };
+  return {
+    labId,
+    testerId: idOf("tester"),
+    analystId: idOf("analyst", tester),
+    reviewerId: idOf("reviewer"),
+  };
 }
 
 async function createDemoLab(databases: { owner: Db; app: Db }, lab: DemoLab): Promise<string> {

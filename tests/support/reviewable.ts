@@ -25,14 +25,18 @@ export interface ReviewableSeries {
   result: Result;
 }
 
-/** @param uploader brings every run of the plan; levels as in the sample result. */
+/**
+ * @param uploader brings every run of the plan; levels as in the sample result.
+ * @param own another name than Osier 8A, another result than the sample's.
+ */
 export async function makeReviewableSeries(
   bench: Pick<LabBench, "app">,
   uploader: By,
+  own: { model?: string; result?: Result } = {},
 ): Promise<ReviewableSeries> {
   const { labId, accountId } = uploader;
   return inLab(bench.app, uploader, async (trx) => {
-    const model = "Osier 8A";
+    const model = own.model ?? "Osier 8A";
     const loudspeakerId = await createLoudspeaker(trx, labId, accountId, {
       maker: "Withy Lane",
       model,
@@ -62,7 +66,7 @@ export async function makeReviewableSeries(
       await updateRun(trx, labId, runId, { state: "passed" });
       runIds.push(runId);
     }
-    const result = makeSampleResult();
+    const result = own.result ?? makeSampleResult();
     const analysisId = await addAnalysis(trx, labId, { seriesId, runIds, result });
     await deriveState(trx, uploader, await loadCapture(trx, labId, seriesId));
     return { seriesId, analysisId, runIds, result };

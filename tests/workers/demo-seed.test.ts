@@ -108,7 +108,9 @@ describe("the seed of the demo labs", () => {
     const { token } = await makeTestMember(bench, labId, "looker", ["tester"]);
     const seen = await look(token);
     expect(seen.loudspeakers).toBe(lab.series.length);
-    expect(seen.series.map(({ state }) => state).sort()).toEqual(["analysis failed", "in review"]);
+    expect(seen.series.map(({ state }) => state).sort()).toEqual(["analysis failed", "signed off"]);
+    const published = await (await fetch(`${bench.product.url}/published`)).text();
+    expect(published).toContain("/t/northpier/ketch-12");
     const slots = seen.runs.map((runs) => runs.map(({ slot, take }) => `${slot} ${take}`));
     const planned = lab.series.map((one) => recordSeries(one).map(({ run }) => `${run.slot} 1`));
     expect(new Set(slots.map((one) => one.toSorted().join()))).toEqual(
@@ -128,7 +130,7 @@ describe("the seed of the demo labs", () => {
   it("gives the very rows that its files give when they are uploaded by hand", async () => {
     const labId = (await findLabId()) ?? "";
     const { token } = await makeTestMember(bench, labId, "comparer", ["tester"]);
-    const found = (await look(token)).series.find(({ state }) => state === "in review");
+    const found = (await look(token)).series.find(({ state }) => state === "signed off");
     const params = { seriesId: found?.id ?? "" };
     const seeded = await call(bench, getSeries, { params }, token);
     const series = getWhole(lab);
