@@ -30,10 +30,7 @@ export function StateBoxes({ steps, className }: { steps: readonly Step[]; class
             <BoxBar filled={step.share} next={state === "next"} />
             <span className="block max-md:sr-only">
               <StepName step={step} state={state} />
-              <span
-                className="figures mt-px block truncate text-label text-ink-2"
-                title={step.detail}
-              >
+              <span className="figures mt-px block text-label/[15px] text-pretty text-ink-2">
                 {step.detail}
               </span>
             </span>
