@@ -8,7 +8,9 @@ import { formatFrequency } from "@/lib/charts/format";
 import { Button } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
 import { EmptyState, LoadingState } from "../parts/states";
+import { useMay } from "../frame/lab-session";
 import { engineChangesQuery } from "../queries/review";
+import { useStartAnalysis } from "../queries/series";
 import { LabHead } from "./lab-head";
 
 type Published = z.output<NonNullable<typeof listEngineChanges.answer>>["series"][number];
@@ -51,6 +53,39 @@ export function EngineScreen() {
   );
 }
 
+/** The way to see what would change; the sign-off stays with its version. */
+function NotAnalysed({ seriesId, name }: { seriesId: string; name: string }) {
+  const start = useStartAnalysis(seriesId);
+  const mayAnalyse = useMay("analyse");
+  if (start.isSuccess) {
+    return (
+      <output className="mt-1 block">
+        Its analysis is under way: <Link href={`/series/${seriesId}/output-limit`}>follow it</Link>.
+      </output>
+    );
+  }
+  return (
+    <div className="mt-1 flex flex-wrap items-center gap-x-4 gap-y-2">
+      <p>Not analysed by this engine yet: what would change is not known.</p>
+      {mayAnalyse && (
+        <Button
+          size="small"
+          busy={start.isPending}
+          aria-label={`Analyse ${name} by this engine`}
+          onClick={() => start.mutate()}
+        >
+          Analyse it
+        </Button>
+      )}
+      {start.isError && (
+        <p role="alert" className="w-full text-small text-fault">
+          {start.error.message}
+        </p>
+      )}
+    </div>
+  );
+}
+
 function PublishedSeries({ series }: { series: Published }) {
   const { series_id, number, name, published_engine, changes } = series;
   return (
@@ -62,9 +97,7 @@ function PublishedSeries({ series }: { series: Published }) {
         {number}, published from engine {published_engine}
       </p>
       {changes === null ? (
-        <p className="mt-1">
-          Not analysed by this engine yet. Start its analysis to see what would change.
-        </p>
+        <NotAnalysed seriesId={series_id} name={name} />
       ) : changes.length === 0 ? (
         <p className="mt-1">No published limit would change.</p>
       ) : (
