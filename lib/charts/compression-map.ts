@@ -9,7 +9,7 @@ import { formatFrequency, formatLevel, formatSigned } from "./format";
 import { NOISE, toPatterns } from "./patterns";
 import type { BandScale } from "./scales";
 import { COLOURS, siltStep, type LevelPaint } from "./tokens";
-import type { Band, BandLevel, Result } from "../result/result-schema";
+import type { Band, BandLevel } from "../result/result-schema";
 
 export interface MapCell {
   readonly nominalHz: number;
@@ -32,8 +32,21 @@ export interface MapRow {
   readonly cells: readonly MapCell[];
 }
 
+type MapRun = Pick<BandLevel, "level_dB" | "kind" | "variant">;
+
+/** The part of a band that the map is drawn from. */
+interface MapBand extends Pick<Band, "nominal_Hz" | "long_term"> {
+  readonly levels: readonly (MapRun & Pick<BandLevel, "compression_dB" | "uncertainty_dB">)[];
+}
+
+interface MapInput {
+  readonly bands: readonly MapBand[];
+  /** Every run, once or repeated. */
+  readonly runs: readonly MapRun[];
+}
+
 /** @returns short-term rows above the reference from quiet to loud, then long-term rows. */
-export function toMapRows(result: Pick<Result, "bands" | "runs">): MapRow[] {
+export function toMapRows(result: MapInput): MapRow[] {
   const levels = listPlainLevels(result.runs);
   const row = (kind: MapRow["kind"], levelDb: number, paint: LevelPaint): MapRow => ({
     kind,
@@ -58,9 +71,9 @@ export function toMapRows(result: Pick<Result, "bands" | "runs">): MapRow[] {
   ];
 }
 
-function toCell(band: Band, kind: MapRow["kind"], levelDb: number): MapCell {
+function toCell(band: MapBand, kind: MapRow["kind"], levelDb: number): MapCell {
   const runs = band.levels.filter(
-    (run: BandLevel) => run.kind === kind && run.variant === undefined && run.level_dB === levelDb,
+    (run) => run.kind === kind && run.variant === undefined && run.level_dB === levelDb,
   );
   const compressionDb = meanOf(runs.map((run) => run.compression_dB));
   const uncertaintyDb = meanOf(runs.map((run) => run.uncertainty_dB));
@@ -80,6 +93,8 @@ export const MAP_ROW = 25;
 const CELL_HEIGHT = 24;
 const LONG_TERM_GAP = 5;
 const TIGHT_PITCH = 30;
+/** In print alone: a screen scrolls before its cells are as narrow. */
+const PRINT_PITCH = 26;
 const BRACKET_ROOM = 26;
 
 export interface MapFigure {
@@ -152,10 +167,10 @@ function cellShapes(cell: MapCell, place: CellPlace): Shape[] {
       x: round2(place.x + place.width / 2),
       y: place.y + 16,
       text: cell.text,
-      size: 11,
+      size: place.pitch < PRINT_PITCH ? 9 : 11,
       anchor: "middle",
       fill: cell.uncertain ? COLOURS.ink3 : step.text,
-      ...(place.pitch < TIGHT_PITCH ? { tighten: 0.6 } : {}),
+      ...(place.pitch < TIGHT_PITCH ? { tighten: place.pitch < PRINT_PITCH ? 0.3 : 0.6 } : {}),
     },
   ];
 }

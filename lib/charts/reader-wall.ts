@@ -59,7 +59,7 @@ export function toReaderWall(
 }
 
 /** A measure over the range that was reached, with its words. */
-function reachedShapes(
+export function reachedShapes(
   { headline, bands }: Pick<Snapshot, "headline" | "bands">,
   wall: WallFigure,
   narrow: boolean,

@@ -105,7 +105,7 @@ export function toWall(
       stroke: COLOURS.ink,
       crisp: true,
     },
-    ...columns.flatMap((column, at) => rowShapes(column, bands.centre(at), rows)),
+    ...columns.flatMap((column, at) => rowShapes(column, bands.centre(at), rows, place.pitch)),
     ...bandLabelShapes(
       bands,
       columns.map((column) => column.nominalHz),
@@ -166,25 +166,30 @@ function toRows(place: WallLayout, from: number): Rows {
   return { cause, decision, labels, height: labels + 8 };
 }
 
+/** px from band to band from which two marks have their full size. */
+const TWO_MARKS = 28;
+
 const PAINTS = { mark: COLOURS.overprint, onMark: COLOURS.onOverprint, edge: COLOURS.edge };
 
 /** The marks under a column: cause, with the smaller long-term cause beside it, and the decision. */
-function rowShapes(column: BandColumn, x: number, rows: Rows): Shape[] {
+function rowShapes(column: BandColumn, x: number, rows: Rows, pitch: number): Shape[] {
   const ink = column.causeChanged
     ? COLOURS.overprint
     : column.cause === "open"
       ? COLOURS.ink3
       : COLOURS.ink;
   const marks: Shape[] = [];
+  // Two marks side by side keep out of their neighbours' places.
+  const share = Math.min(1, pitch / TWO_MARKS);
   if (rows.cause !== null) {
     const beside = column.longTermCause !== null;
     marks.push({
       kind: "group",
       role: "cause",
       band: column.nominalHz,
-      x: beside ? x - 7 : x,
+      x: beside ? x - 7 * share : x,
       y: rows.cause,
-      scale: beside ? 0.78 : 0.92,
+      scale: beside ? 0.78 * share : 0.92,
       shapes: causeShapes(column.cause, ink),
     });
     if (column.longTermCause !== null) {
@@ -192,9 +197,9 @@ function rowShapes(column: BandColumn, x: number, rows: Rows): Shape[] {
         kind: "group",
         role: "long-term-cause",
         band: column.nominalHz,
-        x: x + 7.5,
+        x: x + 7.5 * share,
         y: rows.cause,
-        scale: 0.72,
+        scale: 0.72 * share,
         shapes: causeShapes(column.longTermCause, COLOURS.ink),
       });
     }

@@ -1,4 +1,5 @@
 /** Card, pictures, report and values of one revision, drawn once per state. */
+import { drawReport, PAPERS } from "../../../components/report/report";
 import { toCardPage } from "../../../components/reader/card";
 import { toCardPng, toCardSvg, toLinkPng, THEMES, type Theme } from "../../../lib/kit/pictures";
 import { toStandingSentence, type Standing } from "../../../lib/kit/standing";
@@ -23,6 +24,7 @@ interface KitInput {
   /** Part of file names: "osier-8a-1". */
   stem: string;
   theme: Theme | null;
+  paper: (typeof PAPERS)[number];
 }
 
 /** Pictures stand in pages of others, and data is read by their scripts. */
@@ -38,9 +40,9 @@ const saveAs = (name: string): Record<string, string> => ({
 interface KitPart {
   /** A withdrawn revision has this part, too: it says that it was withdrawn. */
   saysWithdrawn: boolean;
-  /** Whether `?theme=` changes it. */
-  themed: boolean;
-  draw: (input: KitInput, status: number) => PackedPage;
+  /** What of its query changes it; the rest is not looked at. */
+  asks: "theme" | "paper" | null;
+  draw: (input: KitInput, status: number) => PackedPage | Promise<PackedPage>;
 }
 
 const picture =
@@ -54,15 +56,23 @@ const picture =
 const PARTS: Readonly<Record<string, KitPart>> = {
   card: {
     saysWithdrawn: true,
-    themed: true,
+    asks: "theme",
     draw: (input, status) => ({ ...packPage(status, toCardPage(input)), framed: true }),
   },
-  "figure.svg": { saysWithdrawn: true, themed: true, draw: picture("image/svg+xml", toCardSvg) },
-  "figure.png": { saysWithdrawn: true, themed: true, draw: picture("image/png", toCardPng) },
-  "og.png": { saysWithdrawn: true, themed: false, draw: picture("image/png", toLinkPng) },
+  "figure.svg": { saysWithdrawn: true, asks: "theme", draw: picture("image/svg+xml", toCardSvg) },
+  "figure.png": { saysWithdrawn: true, asks: "theme", draw: picture("image/png", toCardPng) },
+  "og.png": { saysWithdrawn: true, asks: null, draw: picture("image/png", toLinkPng) },
+  "report.pdf": {
+    saysWithdrawn: false,
+    asks: "paper",
+    draw: async (input, status) =>
+      packBytes(status, "application/pdf", await drawReport(input), {
+        "content-disposition": `inline; filename="${input.stem}.pdf"`,
+      }),
+  },
   "values.csv": {
     saysWithdrawn: false,
-    themed: false,
+    asks: null,
     draw: (input, status) =>
       packBytes(status, "text/csv; charset=utf-8", Buffer.from(toValuesCsv(input)), {
         ...FOR_OTHERS,
@@ -71,7 +81,7 @@ const PARTS: Readonly<Record<string, KitPart>> = {
   },
   "values.json": {
     saysWithdrawn: false,
-    themed: false,
+    asks: null,
     draw: (input, status) =>
       packBytes(status, "application/json", Buffer.from(toValuesJson(input, input.text)), {
         ...FOR_OTHERS,
@@ -99,17 +109,23 @@ export function answerKit(
     if (part === undefined || rows === null) {
       return answerNotFound(request, "No part of a published test is here.");
     }
-    const theme = part.themed ? readTheme(request) : null;
-    const key = JSON.stringify([file, theme, rows, getEnvironment().publicUrl]);
-    const page = kept.get(key) ?? (await drawPart(part, rows, theme));
+    const choice = readChoice(request, part);
+    const key = JSON.stringify([file, choice, rows, getEnvironment().publicUrl]);
+    const page = kept.get(key) ?? (await drawPart(part, rows, choice));
     keep(key, page);
     return answerPage(request, page);
   });
 }
 
-function readTheme(request: Request): Theme | null {
-  const asked = new URL(request.url).searchParams.get("theme");
-  return THEMES.find((theme) => theme === asked) ?? null;
+type Choice = Pick<KitInput, "theme" | "paper">;
+
+/** @returns the theme or paper that was asked for; what is not known counts as not asked. */
+function readChoice(request: Request, { asks }: KitPart): Choice {
+  const asked = asks === null ? null : new URL(request.url).searchParams.get(asks);
+  return {
+    theme: asks === "theme" ? (THEMES.find((theme) => theme === asked) ?? null) : null,
+    paper: asks === "paper" ? (PAPERS.find((paper) => paper === asked) ?? "a4") : "a4",
+  };
 }
 
 function keep(key: string, page: PackedPage): void {
@@ -119,11 +135,7 @@ function keep(key: string, page: PackedPage): void {
   if (kept.size > KEPT && oldest !== undefined) kept.delete(oldest);
 }
 
-async function drawPart(
-  part: KitPart,
-  rows: RevisionRows,
-  theme: Theme | null,
-): Promise<PackedPage> {
+async function drawPart(part: KitPart, rows: RevisionRows, choice: Choice): Promise<PackedPage> {
   const { row } = rows;
   const standing = toStanding(rows);
   if (row.state === "withdrawn" && !part.saysWithdrawn) {
@@ -140,7 +152,7 @@ async function drawPart(
     standing,
     page: `${getEnvironment().publicUrl}${path}`,
     stem: `${row.slug}-${row.revision}`,
-    theme,
+    ...choice,
   };
   return part.draw(input, row.state === "withdrawn" ? 410 : 200);
 }
