@@ -6,6 +6,7 @@ import {
 } from "../../../components/reader/revisions";
 import { toReaderPage } from "../../../components/reader/frame";
 import { toPublicationBody } from "../../../components/reader/publication-page";
+import { toTakeSection } from "../../../components/reader/take-section";
 import { toPublicationHead } from "../../../components/reader/publication-head";
 import { html } from "../../../lib/html/html";
 import { toAltText } from "../../../lib/kit/kit-words";
@@ -130,7 +131,11 @@ async function drawPage({ row, revisions, timeZone }: RevisionRows): Promise<Pac
         digest: row.digest,
         timeZone,
         banner: toReplacedBanner({ snapshot, row, revisions, timeZone }),
-        after: toRevisionsSection({ snapshot, row, revisions, timeZone }),
+        after: html`${toTakeSection({
+          page: canonical,
+          path: toRevisionPath(paths.lab, paths.slug, row.revision),
+          title: `${model}: how loud it plays`,
+        })}${toRevisionsSection({ snapshot, row, revisions, timeZone })}`,
       }),
       footer: toFooter(snapshot),
     }),
