@@ -11,7 +11,13 @@ import {
 import { computeAllowedS, WEEK_RULES } from "../exposure/rules";
 import { toTimeText } from "../exposure/words";
 import type { Snapshot } from "../publication/snapshot-schema";
-import { toChangedWords, toLimitWords, toMeasuredWords, toSeatSource } from "../reader/page-words";
+import {
+  toChangedWords,
+  toLimitWords,
+  toMeasuredWords,
+  toSeatSource,
+  toSplUncertaintyWords,
+} from "../reader/page-words";
 import { PARTS_OF_SOUND, toPartsOfSound, toReachedWords } from "../reader/parts-of-sound";
 import { toLongDay } from "../time/time-words";
 
@@ -125,7 +131,7 @@ export function toReportFacts(
       : [
           [
             "uncertainty",
-            `compression at most \u00b1${snapshot.uncertainty_dB.toFixed(1)}${NBSP}dB; k = 2, this one unit`,
+            `compression at most \u00b1${snapshot.uncertainty_dB.toFixed(1)}${NBSP}dB; ${toSplUncertaintyWords(snapshot.bands)}; k = 2, this one unit`,
           ] as const,
         ]),
   ];

@@ -47,6 +47,20 @@ describe("values as CSV", () => {
     expect(back).toEqual(odd.bands);
   });
 
+  it("come back from before levels had an uncertainty of their own", () => {
+    const older: Snapshot = {
+      ...snapshot,
+      bands: snapshot.bands.map((band) => {
+        const { spl_uncertainty_dB: known, ...rest } = band;
+        expect(known).toBeDefined();
+        return rest;
+      }),
+    };
+    const csv = toValuesCsv(inputOf(older));
+    expect(csv).not.toContain("spl_uncertainty_dB");
+    expect(parseValuesCsv(csv)).toStrictEqual(older.bands);
+  });
+
   it("carry distance, weighting, criterion, method and the hearing notice", () => {
     const csv = toValuesCsv(inputOf(snapshot));
     const comments = csv.split("\r\n").filter((line) => line.startsWith("# "));

@@ -2,7 +2,13 @@
 import { z } from "zod";
 import type { Snapshot } from "../publication/snapshot-schema";
 import { snapshotSchema } from "../publication/snapshot-schema";
-import { toAnswer, toLimitWords, toMethodWords, toPublishedNotice } from "../reader/page-words";
+import {
+  toAnswer,
+  toLimitWords,
+  toMethodWords,
+  toPublishedNotice,
+  toSplUncertaintyWords,
+} from "../reader/page-words";
 import { parseCsv, toCsvLine } from "./csv";
 import { toName, toNoticeSentence, toSource } from "./kit-words";
 import { toStandingSentence, type Standing } from "./standing";
@@ -62,7 +68,9 @@ function toAbout({ snapshot, standing, digest, page }: ValuesInput): z.infer<typ
     uncertainty:
       snapshot.uncertainty_dB === null
         ? null
-        : `compression at most ${snapshot.uncertainty_dB} dB in any band, k = 2, one unit`,
+        : plain(
+            `compression at most \u00b1${snapshot.uncertainty_dB} dB in any band; ${toSplUncertaintyWords(snapshot.bands)}; k = 2, one unit`,
+          ),
     source: plain(toSource(snapshot, standing.timeZone)),
   };
 }
@@ -84,6 +92,7 @@ type Field = readonly [path: string, kind: Kind];
 const BAND_FIELDS: readonly Field[] = [
   ["nominal_Hz", "number"],
   ["exact_Hz", "number"],
+  ["spl_uncertainty_dB", "number"],
   ["limit.status", "word"],
   ["limit.spl_dB", "number"],
   ["limit.nominal_dB", "number"],
@@ -102,6 +111,7 @@ const BAND_FIELDS: readonly Field[] = [
   ["onset.high_dB", "number"],
   ["onset.ceiling_dB", "number"],
   ["onset.reason", "text?"],
+  ["onset.control", "text?"],
   ["cause", "word"],
   ["cause_changed", "flag"],
   ["cause_reason", "text"],
@@ -150,15 +160,16 @@ export function toValuesCsv(input: ValuesInput): string {
   const { bands } = input.snapshot;
   const runs = [...new Set(bands.flatMap((band) => [...keyLevels(band).keys()]))];
   const longTerm = [...new Set(bands.flatMap((band) => [...keyLongTerm(band).keys()]))];
+  const fields = BAND_FIELDS.filter(([path]) => isKnown(bands, path));
   const head = [
-    ...BAND_FIELDS.map(([path]) => path),
+    ...fields.map(([path]) => path),
     ...runs.flatMap((key) => RUN_FIELDS.map(([path]) => `${key}: ${path}`)),
     ...longTerm.flatMap((key) => LONG_TERM_FIELDS.map(([path]) => `${key}: ${path}`)),
   ];
   const lines = bands.map((band) => {
     const [levels, losses] = [keyLevels(band), keyLongTerm(band)];
     return [
-      ...BAND_FIELDS.map((field) => toText(band, field)),
+      ...fields.map((field) => toText(band, field)),
       ...runs.flatMap((key) => RUN_FIELDS.map((field) => toText(levels.get(key), field))),
       ...longTerm.flatMap((key) => LONG_TERM_FIELDS.map((field) => toText(losses.get(key), field))),
     ];
@@ -185,6 +196,10 @@ function toComments(input: ValuesInput): string[] {
     `${about.page} SHA-256 ${about.digest}`,
   ];
 }
+
+/** Older snapshots lack what was computed later: then there is no such column. */
+const isKnown = (bands: readonly Band[], path: string): boolean =>
+  path !== "spl_uncertainty_dB" || bands.some((band) => band.spl_uncertainty_dB !== undefined);
 
 const EMPTY_TEXT = "none";
 
@@ -213,7 +228,10 @@ export function parseValuesCsv(text: string): Band[] {
   return lines.map((cells) => {
     const at = new Map(head.map((name, index) => [name, cells[index] ?? ""]));
     const band: Record<string, unknown> = {};
-    for (const [path, kind] of BAND_FIELDS) put(band, path, readText(at.get(path) ?? "", kind));
+    for (const [path, kind] of BAND_FIELDS) {
+      const cell = at.get(path);
+      if (cell !== undefined) put(band, path, readText(cell, kind));
+    }
     return snapshotSchema.shape.bands.element.parse({
       ...band,
       levels: readRuns(at, RUN_FIELDS, /^(short-term|long-term|closing) /),
