@@ -32,7 +32,8 @@ export function toRunWarnings(raw: RawRun, file: string, sweep: SweepInUse): War
       `${file} lacks ${(raw.missing / sweep.rateHz).toFixed(3)} s of the sweep at its ${raw.latencyS < 0 ? "start" : "end"}.`,
     );
   }
-  const unsurePpm = toDriftUncertaintyPpm(sweep.rateConstantS);
+  // A loopback channel has no loudspeaker whose phase could feign a drift.
+  const unsurePpm = raw.loopbackDb === null ? toDriftUncertaintyPpm(sweep.rateConstantS) : 0;
   if (Math.abs(raw.driftPpm) > Math.max(CLOCKS_PPM, 4 * unsurePpm)) {
     warn(
       "run.other-sweep",

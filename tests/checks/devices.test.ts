@@ -70,7 +70,7 @@ describe.each(DEVICES)("$name", (device) => {
     expect(invented.map((b) => [b.nominal_Hz, b.cause])).toEqual([]);
   });
 
-  it("the highest run that meets a compression criterion", () => {
+  it("the highest run that meets a criterion of compression or THD", () => {
     expect(reportOf(device.name).wrongHighestRuns).toEqual([]);
   });
 });

@@ -73,7 +73,10 @@ export async function compareDevice(
     if (lost >= 1 && !band.cause_inferred) {
       report.causes.push({ nominalHz: band.nominal_Hz, cause: band.cause });
     }
-    report.wrongHighestRuns.push(...findWrongHighestRuns(set, band));
+    report.wrongHighestRuns.push(
+      ...findWrongHighestRuns(set, band),
+      ...findWrongThdRuns(set, band),
+    );
   }
   return report;
 }
@@ -157,6 +160,36 @@ function findWrongHighestRuns(set: DeviceSet, band: Band): string[] {
     return met === truth
       ? []
       : [`${band.nominal_Hz} Hz, ${criterionDb} dB: ${met} instead of ${truth}`];
+  });
+}
+
+/** THD criteria: where no run lies within its tolerance of the criterion, and noise leaves none open. */
+function findWrongThdRuns(set: DeviceSet, band: Band): string[] {
+  const n = toThirdOctave(band);
+  const plain = band.levels.filter((level) => level.variant === undefined);
+  return band.limits.flatMap((limit) => {
+    const percent = limit.criterion.thd_percent;
+    if (percent === undefined || limit.kind !== "short-term" || limit.status === "not assessed")
+      return [];
+    const truths = plain.map(({ level_dB }) => {
+      const ratios = [...(set.truth.get(level_dB)?.harmonics.values() ?? [])];
+      return 100 * Math.hypot(...ratios.map((order) => order.get(n) ?? 0));
+    });
+    const close = plain.some(({ harmonics }, i) => {
+      const floor = Math.hypot(...harmonics.map((h) => h.floor_percent ?? 0));
+      const tolerance = distortionTolerance(0.15, toDb((truths[i] ?? NaN) / floor));
+      return Math.abs(toDb((truths[i] ?? NaN) / percent)) <= tolerance;
+    });
+    if (close) return [];
+    const firstFailed = truths.findIndex((truth) => truth > percent);
+    const truth = firstFailed === -1 ? LEVELS_DB.at(-1) : LEVELS_DB[firstFailed - 1];
+    const met =
+      limit.status === "below lowest"
+        ? undefined
+        : LEVELS_DB.findLast((db) => db <= (limit.nominal_dB ?? NaN));
+    return met === truth
+      ? []
+      : [`${band.nominal_Hz} Hz, ${percent} % THD: ${met} instead of ${truth}`];
   });
 }
 

@@ -44,12 +44,38 @@ export interface Conditions {
   stepErrorDb?: Record<number, number>;
   /** By how much the recorder's clock runs fast. */
   driftPpm?: number;
+  /** Reflections of a living room, which stand still; SPL is then not assessed. */
+  inRoom?: boolean;
+  /** A second channel records what the player gives out. */
+  loopback?: boolean;
+}
+
+/** When reflections arrive after the sound itself, s, and what they keep of it. */
+const REFLECTIONS = [
+  [0.0031, 0.55],
+  [0.0074, -0.4],
+  [0.0122, 0.42],
+  [0.0196, 0.3],
+  [0.0287, -0.24],
+  [0.0413, 0.17],
+  [0.0571, 0.11],
+] as const;
+
+/** Adds each reflection to the sound as it was. */
+function reflect(pressure: Float64Array, rateHz: number): void {
+  const direct = pressure.slice();
+  for (const [afterS, share] of REFLECTIONS) {
+    const delay = Math.round(afterS * rateHz);
+    for (let n = delay; n < pressure.length; n += 1)
+      pressure[n] = (pressure[n] ?? 0) + share * (direct[n - delay] ?? 0);
+  }
 }
 
 export async function recordDevice(
   device: Device,
-  { roomDb = 34, stepErrorDb = {}, driftPpm = 0 }: Conditions = {},
+  conditions: Conditions = {},
 ): Promise<DeviceSet> {
+  const { roomDb = 34, stepErrorDb = {}, driftPpm = 0, inRoom, loopback } = conditions;
   const { rateHz, oversampling } = device;
   const shape: StimulusShape = {
     startHz: 20,
@@ -69,8 +95,8 @@ export async function recordDevice(
     lengthS: 6,
   };
   const files = new Map<string, Uint8Array<ArrayBuffer>>();
-  const write = (name: string, samples: Float64Array): void => {
-    files.set(name, writeWav([samples], rateHz, device.format));
+  const write = (name: string, ...channels: Float64Array[]): void => {
+    files.set(name, writeWav(channels, rateHz, device.format));
   };
   const tone = { levelDb: 94, frequencyHz: 1000 };
   write("calibrator.wav", recordCalibrator(tone, rateHz, recorder, random));
@@ -90,6 +116,7 @@ export async function recordDevice(
     const scale = (PA_AT_0_DB * 10 ** (levelDb / 20)) / toPeak(levelDb);
     const pressure = played.map((x) => x * scale);
     createResponse(rateHz * oversampling).process(pressure);
+    if (inRoom === true) reflect(pressure, rateHz * oversampling);
     const latencyS = 0.05 + 0.4 * random.uniform();
     const heard = record(pressure, oversampling, {
       length: stimulus.length + Math.round((latencyS + 0.1) * rateHz),
@@ -97,15 +124,24 @@ export async function recordDevice(
       driftPpm,
     });
     truth.set(levelDb, meter.measure(heard));
-    write(`${levelDb}.wav`, toDigital(heard, rateHz, recorder, random));
+    const recorded = toDigital(heard, rateHz, recorder, random);
+    if (loopback === true) {
+      // The player's own output, a little earlier than the microphone hears it.
+      const sent = record(
+        fast.map((x) => x * peak),
+        oversampling,
+        { length: recorded.length, delay: (latencyS - 0.004) * rateHz, driftPpm },
+      );
+      write(`${levelDb}.wav`, recorded, sent);
+    } else write(`${levelDb}.wav`, recorded);
   }
-  return { series: toSeries(device, shape), source: toSource(files), truth };
+  return { series: toSeries(device, shape, conditions), source: toSource(files), truth };
 }
 
-function toSeries(device: Device, shape: StimulusShape): Series {
+function toSeries(device: Device, shape: StimulusShape, { inRoom, loopback }: Conditions): Series {
   return seriesSchema.parse({
     loudspeaker: device.name,
-    environment: "anechoic",
+    environment: inRoom === true ? "in-room" : "anechoic",
     distance_m: 1,
     stimulus: {
       start_Hz: shape.startHz,
@@ -121,6 +157,7 @@ function toSeries(device: Device, shape: StimulusShape): Series {
       file: `${levelDb}.wav`,
       level_dB: levelDb,
       kind: "short-term",
+      ...(loopback === true ? { loopback_channel: 2 } : {}),
     })),
   });
 }
