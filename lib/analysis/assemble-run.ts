@@ -57,13 +57,7 @@ export function assembleRun(
   const harmonics = HARMONIC_ORDERS.map((order) =>
     toHarmonicCurve(raw.orders[order - 1]!, clean, splDb, context),
   );
-  const thd = grid.centreHz.reduce<{ percent: number; quality: Quality | null; orders: string }[]>(
-    (all, _, c) => {
-      all.push(toCellThd(raw, clean, c, context));
-      return all;
-    },
-    [],
-  );
+  const thd = Array.from(grid.centreHz, (_, c) => toCellThd(raw, clean, c, context));
   return {
     file: run.file,
     levelDb: run.level_dB,
@@ -145,11 +139,13 @@ export function toThd(
 ): { percent: number; quality: Quality | null; orders: string } {
   if (parts.length === 0 || !(fundamental > 0))
     return { percent: Number.NaN, quality: null, orders: "" };
-  const clean = parts.reduce((sum, p) => sum + p.clean, 0);
-  const quality = toQuality(
-    clean,
-    parts.reduce((sum, p) => sum + p.floor, 0),
-  );
+  let clean = 0;
+  let floor = 0;
+  for (const part of parts) {
+    clean += part.clean;
+    floor += part.floor;
+  }
+  const quality = toQuality(clean, floor);
   return {
     percent: quality === "noise" ? Number.NaN : 100 * Math.sqrt(clean / fundamental),
     quality,
@@ -163,16 +159,12 @@ function toCellThd(
   c: number,
   { grid, topHz, fundamentalValid }: AssemblyContext,
 ) {
-  const orders =
-    fundamentalValid[c] === true
-      ? HARMONIC_ORDERS.filter((order) => orderExists(order, grid.edgeHz[c + 1]!, topHz))
-      : [];
-  const parts = orders.flatMap((order) => {
+  const parts: Component[] = [];
+  for (const order of fundamentalValid[c] === true ? HARMONIC_ORDERS : []) {
     const { power, floor } = raw.orders[order - 1]!;
-    return Number.isNaN(power[c]!)
-      ? []
-      : [{ order, clean: power[c]! - floor[c]!, floor: floor[c]! }];
-  });
+    if (!orderExists(order, grid.edgeHz[c + 1]!, topHz) || Number.isNaN(power[c]!)) continue;
+    parts.push({ order, clean: power[c]! - floor[c]!, floor: floor[c]! });
+  }
   const ofOrders = toThd(parts, isAbove(clean[c]!, raw.orders[0]!.floor[c]!) ? clean[c]! : 0);
   const stated = raw.stated?.thd?.[c];
   return fundamentalValid[c] === true && stated !== undefined ? stateThd(stated) : ofOrders;

@@ -86,9 +86,11 @@ export function measureCellPower(
   let from = Math.round(arrivalLag - lead) - before;
   from = ((from % size) + size) % size;
   const { data } = fft;
-  for (let n = 0, i = from; n < weights.length; n += 1, i += 1) {
-    if (i === size) i = 0;
-    data[n] = weights[n]! * response[i]!;
+  // Up to the end of the circle, and on from its beginning.
+  for (let n = 0; n < weights.length; from = 0) {
+    const shift = from - n;
+    const end = Math.min(weights.length, size - shift);
+    for (; n < end; n += 1) data[n] = weights[n]! * response[n + shift]!;
   }
   data.fill(0, weights.length);
   const cells = new Float64Array(edgeHz.length - 1);

@@ -8,18 +8,26 @@ export function measurePeak({ samples, fullScale }: Recording): {
   peakDbfs: number;
   clipped: boolean;
 } {
-  let peak = 0;
-  let run = 0;
-  let longest = 0;
+  let high = 0;
+  let low = 0;
   for (let n = 0; n < samples.length; n += 1) {
-    const size = Math.abs(samples[n]!);
-    if (size > peak) peak = size;
-    if (size < fullScale) {
-      run = 0;
-      continue;
-    }
-    run += 1;
-    if (run > longest) longest = run;
+    const value = samples[n]!;
+    if (value > high) high = value;
+    else if (value < low) low = value;
   }
-  return { peakDbfs: 20 * Math.log10(peak), clipped: longest >= CLIPPED_SAMPLES || peak > 1 };
+  const peak = Math.max(high, -low);
+  return {
+    peakDbfs: 20 * Math.log10(peak),
+    clipped: peak > 1 || (peak >= fullScale && staysAt(samples, fullScale, CLIPPED_SAMPLES)),
+  };
+}
+
+/** Whether so many successive samples are at least of this size. */
+function staysAt(samples: Recording["samples"], size: number, times: number): boolean {
+  let run = 0;
+  for (let n = 0; n < samples.length; n += 1) {
+    run = Math.abs(samples[n]!) < size ? 0 : run + 1;
+    if (run >= times) return true;
+  }
+  return false;
 }
