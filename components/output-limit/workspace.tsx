@@ -1,5 +1,6 @@
 "use client";
 
+import dynamic from "next/dynamic";
 import { parseAsFloat, parseAsString, useQueryStates } from "nuqs";
 import { useLayoutEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import type { Review } from "@/lib/api/review";
@@ -10,7 +11,6 @@ import type { Criterion } from "@/lib/series/series-schema";
 import { DECIDABLE_CAUSES } from "@/lib/series/vocabulary";
 import { Button } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
-import { AskRunDialog } from "../review/ask-run-dialog";
 import { ConflictView } from "../review/conflict-view";
 import { ReviewFoot } from "../review/review-foot";
 import { ReviewPane } from "../review/review-pane";
@@ -25,6 +25,9 @@ import { InputOutput } from "./input-output";
 import { OutputLimitFigure } from "./output-limit-figure";
 import { ResultNotes } from "./result-notes";
 import { useSelection } from "./use-selection";
+
+/** Comes with the question. */
+const AskRunDialog = dynamic(() => import("../review/ask-run-dialog").then((m) => m.AskRunDialog));
 
 interface WorkspaceProps {
   series: SeriesView;
@@ -237,7 +240,7 @@ export function Workspace({
         )}
       </div>
       {asking && band !== undefined && (
-        <AskRunDialog seriesId={series.id} band={band} onClose={() => setAsking(false)} />
+        <AskRunDialog series={series} band={band} onClose={() => setAsking(false)} />
       )}
     </div>
   );

@@ -2,38 +2,43 @@
 
 import { useState } from "react";
 import { ApiProblem } from "@/lib/api/client";
-import { toNextRunSentence } from "@/lib/result/finding";
+import type { SeriesView } from "@/lib/api/series";
+import { computeRunCost, toRunCostSentence } from "@/lib/exposure/session-dose";
+import { toNextRunSentence, toWidthSentence } from "@/lib/result/finding";
 import type { Band } from "@/lib/result/result-schema";
 import { SHORTEST_REASON } from "@/lib/review/decide";
 import { toLevelText } from "@/lib/series/planned-runs";
+import { useLabSession } from "../frame/lab-session";
 import { Button } from "../parts/button";
 import { Dialog } from "../parts/dialog";
 import { Field, Select, TextArea, TextInput } from "../parts/field";
 import { useRequestRun } from "../queries/review";
 
 interface AskRunDialogProps {
-  seriesId: string;
+  series: SeriesView;
   band: Band;
   onClose: () => void;
 }
 
+const LOWEST_DB = 40;
+const HIGHEST_DB = 130;
 const NOTHING: Readonly<Record<string, string>> = {};
 
 /** The tester sees it among the runs while the loudspeaker still stands there. */
-export function AskRunDialog({ seriesId, band, onClose }: AskRunDialogProps) {
+export function AskRunDialog({ series, band, onClose }: AskRunDialogProps) {
+  const rule = useLabSession().lab?.settings.exposure_rule ?? "niosh";
   const suggestion = band.evidence.next_run;
   const [level, setLevel] = useState(suggestion === null ? "" : toLevelText(suggestion.level_dB));
   const [kind, setKind] = useState<"short-term" | "long-term">("short-term");
   const [variant, setVariant] = useState("");
   const [reason, setReason] = useState("");
   const [faults, setFaults] = useState(NOTHING);
-  const request = useRequestRun(seriesId);
+  const request = useRequestRun(series.id);
+  const levelDb = level.trim() === "" ? Number.NaN : Number(level.replace(",", "."));
+  const playable = levelDb >= LOWEST_DB && levelDb <= HIGHEST_DB;
   const ask = async (): Promise<void> => {
-    const levelDb = Number(level.replace(",", "."));
     const found = {
-      ...(level.trim() === "" || !Number.isFinite(levelDb) || levelDb < 40 || levelDb > 130
-        ? { level_dB: "Level must be from 40 to 130 dB." }
-        : {}),
+      ...(playable ? {} : { level_dB: `Level must be from ${LOWEST_DB} to ${HIGHEST_DB} dB.` }),
       ...(reason.trim().length < SHORTEST_REASON ? { reason: "Give a reason." } : {}),
     };
     setFaults(found);
@@ -71,6 +76,14 @@ export function AskRunDialog({ seriesId, band, onClose }: AskRunDialogProps) {
         It appears in the tester’s series at once.{" "}
         {toNextRunSentence(band) ?? "The analysis suggests no level for this band."}
       </p>
+      {playable && (
+        <output className="mb-3 block text-small">
+          {kind === "short-term" && levelDb !== suggestion?.level_dB
+            ? `${toWidthSentence(band, levelDb) ?? ""} `
+            : ""}
+          {toRunCostSentence(computeRunCost(series.plan, { levelDb, kind }, rule), rule)}
+        </output>
+      )}
       <div className="grid gap-3 sm:grid-cols-2">
         <Field label="level, dB" error={faults["level_dB"]}>
           {(control) => (

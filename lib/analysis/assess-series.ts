@@ -178,6 +178,10 @@ function toEvidence(
       level_dB: next.levelDb,
       width_now_dB: next.widthNowDb,
       width_expected_dB: next.widthExpectedDb,
+      candidates: next.candidates.map(({ levelDb, widthExpectedDb }) => ({
+        level_dB: levelDb,
+        width_expected_dB: widthExpectedDb,
+      })),
     },
   };
 }

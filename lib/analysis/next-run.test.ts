@@ -37,6 +37,18 @@ describe("the next run", () => {
     expect(Math.abs(widthOf(after) - (next?.width_expected_dB ?? Number.NaN))).toBeLessThan(0.8);
   });
 
+  it("is the best of the levels that were weighed, none of them recorded already", () => {
+    const next = bandOf(76, 86, 96, 102).evidence.next_run;
+    const candidates = next?.candidates ?? [];
+    expect(candidates.length).toBeGreaterThan(3);
+    const widths = candidates.map((one) => one.width_expected_dB);
+    expect(next?.width_expected_dB ?? NaN).toBeLessThanOrEqual(Math.min(...widths) + 0.02);
+    expect(candidates.map((one) => one.level_dB)).not.toContain(86);
+    expect(candidates.find((one) => one.level_dB === next?.level_dB)?.width_expected_dB).toBe(
+      next?.width_expected_dB,
+    );
+  });
+
   it("is not suggested where nothing was found", () => {
     expect(bandOf(66, 70, 76).evidence.next_run).toBeNull();
   });

@@ -15,6 +15,8 @@ export interface NextRun {
   levelDb: number;
   widthNowDb: number;
   widthExpectedDb: number;
+  /** Every level that was weighed, ascending, with the width to be expected after a run there. */
+  candidates: { levelDb: number; widthExpectedDb: number }[];
 }
 
 /**
@@ -32,16 +34,21 @@ export function suggestNextRun(
   const widthNowDb = now.highDb - now.lowDb;
   if (!(widthNowDb > NARROW_DB)) return null;
   const laws = posterior.samples.filter((_, i) => i % LAW_STRIDE === 0);
-  let best: NextRun | null = null;
+  const candidates: NextRun["candidates"] = [];
   const from = Math.ceil(now.lowDb - 1);
   const to = Math.min(Math.floor(now.highDb + 1), Math.floor(top));
   for (let levelDb = from; levelDb <= to; levelDb++) {
     if (tested.some((drive) => Math.abs(drive - levelDb) < 0.5)) continue;
-    const widthExpectedDb = expectedWidth(laws, levelDb, sigmaDb);
-    if (!best || widthExpectedDb < best.widthExpectedDb - 0.02)
-      best = { levelDb, widthNowDb, widthExpectedDb };
+    candidates.push({ levelDb, widthExpectedDb: expectedWidth(laws, levelDb, sigmaDb) });
   }
-  return best && best.widthExpectedDb <= (1 - WORTH_SHARE) * widthNowDb ? best : null;
+  const best = candidates.reduce<NextRun["candidates"][number] | null>(
+    (found, next) =>
+      found === null || next.widthExpectedDb < found.widthExpectedDb - 0.02 ? next : found,
+    null,
+  );
+  return best !== null && best.widthExpectedDb <= (1 - WORTH_SHARE) * widthNowDb
+    ? { ...best, widthNowDb, candidates }
+    : null;
 }
 
 /** Mean 90 % width after a run at `levelDb`, each of a few laws playing the truth in turn. */

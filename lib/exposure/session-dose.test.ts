@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { planSchema, type PlanInput } from "../series/plan-schema";
 import { computeDose, DAY_RULES } from "./rules";
-import { computeSessionDose } from "./session-dose";
+import { computeRunCost, computeSessionDose, toRunCostSentence } from "./session-dose";
 import { toDoseText, toWholeDoseText } from "./words";
 
 const toPlan = (input: PlanInput) => planSchema.parse(input);
@@ -67,5 +67,31 @@ describe("computeSessionDose", () => {
       durationS: plan.sweep.length_s,
     }));
     expect(session.dose).toBeCloseTo(computeDose(heard, DAY_RULES.eu), 12);
+  });
+});
+
+describe("one further run", () => {
+  const say = (levelDb: number, kind: "short-term" | "long-term", plan = SIX_LEVELS) =>
+    toRunCostSentence(computeRunCost(plan, { levelDb, kind }, "niosh"), "niosh").replaceAll(
+      "\u00a0",
+      " ",
+    );
+
+  it("costs the sweep: 11.05 s of the 2 h that 91 dB(A) may last", () => {
+    expect(say(91, "short-term")).toBe(
+      "It takes 13 s, at 91 dB(A) where the tester stands: 0.16 % of the day\u2019s allowance (NIOSH).",
+    );
+  });
+
+  it("costs its conditioning as well where it is long-term", () => {
+    expect(say(102, "long-term")).toContain("It takes 10 min 14 s, at 102 dB(A)");
+    const { dose } = computeRunCost(SIX_LEVELS, { levelDb: 102, kind: "long-term" }, "niosh");
+    // The lines of the session above: 13.23 and 1.95 %.
+    expect(dose).toBeCloseTo(0.1517, 3);
+  });
+
+  it("is heard through the door by who waits in the next room", () => {
+    const outside = toPlan({ ...SIX_LEVELS, place: { tester: "next-room" } });
+    expect(say(102, "short-term", outside)).toContain("at 82 dB(A) where the tester stands");
   });
 });

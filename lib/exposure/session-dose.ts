@@ -6,6 +6,7 @@
  * flat loudspeaker this is about 3 dB on the safe side.
  */
 import type { Plan } from "../series/plan-schema";
+import { toDoseText, toLevelText, toTimeText } from "./words";
 import { computeAllowedS, computeDose, DAY_RULES, type DayRuleName, type Exposure } from "./rules";
 
 /**
@@ -147,4 +148,40 @@ function toSweepsLabel(plan: Plan, count: number, lowestDb: number, highestDb: n
 
 function toPlain(value: number): string {
   return String(Math.round(value * 10) / 10).replace("-", "\u2212");
+}
+
+/** What one further run costs who records it. */
+export interface RunCost {
+  /** From the first sound to the end of the recording, conditioning included, s. */
+  takesS: number;
+  /** Highest level at the tester's place, dB(A). */
+  levelAtTesterDbA: number;
+  /** Share of the day's allowance. */
+  dose: number;
+}
+
+/** @param kind a long-term run has its conditioning before it. */
+export function computeRunCost(
+  plan: Pick<Plan, "sweep" | "conditioning" | "place">,
+  run: { levelDb: number; kind: "short-term" | "long-term" },
+  rule: DayRuleName,
+): RunCost {
+  const { length_s: sweepS, lead_in_s: inS, lead_out_s: outS } = plan.sweep;
+  const { minutes, rms_re_sweep_dB: rmsDb, gap_s: gapS } = plan.conditioning;
+  const atTesterDbA = run.levelDb - TESTER_REDUCTION_DB[plan.place.tester];
+  const sweep: Exposure = { levelDbA: atTesterDbA, durationS: sweepS };
+  const conditioning: Exposure[] =
+    run.kind === "long-term" ? [{ levelDbA: atTesterDbA + rmsDb, durationS: 60 * minutes }] : [];
+  const heard = [...conditioning, sweep];
+  return {
+    takesS: inS + sweepS + outS + (run.kind === "long-term" ? 60 * minutes + gapS : 0),
+    levelAtTesterDbA: Math.max(...heard.map(({ levelDbA }) => levelDbA)),
+    dose: computeDose(heard, DAY_RULES[rule]),
+  };
+}
+
+/** "It takes 13 s, at 91 dB(A) where the tester stands: 0.18 % of the day's allowance (NIOSH)." */
+export function toRunCostSentence(cost: RunCost, rule: DayRuleName): string {
+  const time = toTimeText(Math.ceil(cost.takesS), { seconds: true });
+  return `It takes ${time}, at ${toLevelText(cost.levelAtTesterDbA, "dB(A)")} where the tester stands: ${toDoseText(cost.dose)} of the day\u2019s allowance (${DAY_RULES[rule].name}).`;
 }

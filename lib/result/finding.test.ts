@@ -6,6 +6,7 @@ import {
   toLimitWords,
   toLongTermSentences,
   toNextRunSentence,
+  toWidthSentence,
   toShapeSentence,
   toThdWords,
 } from "./finding";
@@ -145,6 +146,20 @@ describe("evidence", () => {
     expect(plain(sentence ?? "")).toBe(
       "A run at 91 dB would narrow this interval from 2.5 to about 0.9 dB.",
     );
+  });
+
+  it("says how wide the interval would be after a run at another level, where that was weighed", () => {
+    const candidates = [
+      { level_dB: 90, width_expected_dB: 1.24 },
+      { level_dB: 91, width_expected_dB: 0.9 },
+    ];
+    const next_run = { level_dB: 91, width_now_dB: 2.5, width_expected_dB: 0.9, candidates };
+    const weighed = band({ evidence: { ...band({}).evidence, next_run } });
+    expect(plain(toWidthSentence(weighed, 90) ?? "")).toBe(
+      "After a run at 90 dB the interval would be about 1.2 dB wide; it is 2.5 now.",
+    );
+    expect(toWidthSentence(weighed, 70)).toBeNull();
+    expect(toWidthSentence(band({}), 90)).toBeNull();
   });
 });
 

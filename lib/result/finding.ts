@@ -148,6 +148,14 @@ export function toNextRunSentence(band: Band): string | null {
   );
 }
 
+/** "After a run at 90 dB it would be about 1.2 dB wide." null where that level was not weighed. */
+export function toWidthSentence(band: Band, levelDb: number): string | null {
+  const next = band.evidence.next_run;
+  const weighed = next?.candidates?.find(({ level_dB }) => level_dB === levelDb);
+  if (next === null || weighed === undefined) return null;
+  return `After a run at ${formatLevel(levelDb)} the interval would be about ${formatDb(weighed.width_expected_dB)} wide; it is ${formatNumber(next.width_now_dB)} now.`;
+}
+
 /** Limit of the chosen criterion in words, as the readout and the column's name say it. */
 export function toLimitWords(
   limit: Limit | null,

@@ -109,7 +109,15 @@ export const evidenceSchema = z.object({
     .nullable(),
   /** The level whose run would narrow the interval most, and how far. */
   next_run: z
-    .object({ level_dB: z.number(), width_now_dB: z.number(), width_expected_dB: z.number() })
+    .object({
+      level_dB: z.number(),
+      width_now_dB: z.number(),
+      width_expected_dB: z.number(),
+      /** Every level that was weighed, ascending. */
+      candidates: z
+        .array(z.object({ level_dB: z.number(), width_expected_dB: z.number() }))
+        .optional(),
+    })
     .nullable(),
 });
 
