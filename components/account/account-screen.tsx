@@ -13,8 +13,14 @@ import { NoticeChoices } from "./notice-choices";
 import { PasswordForm } from "./password-form";
 import { SessionList } from "./session-list";
 
+interface AccountScreenProps {
+  passwordMin: number;
+  /** Of the local mailbox; null where mail goes out. */
+  mailboxUrl: string | null;
+}
+
 /** One's own account; it works without a lab, too. */
-export function AccountScreen({ passwordMin }: { passwordMin: number }) {
+export function AccountScreen({ passwordMin, mailboxUrl }: AccountScreenProps) {
   const { account, lab, roles } = useLabSession();
   const theme = useUpdateAccount();
   return (
@@ -25,7 +31,7 @@ export function AccountScreen({ passwordMin }: { passwordMin: number }) {
           <NameForm name={account.name} />
         </FormSection>
         <FormSection title="Address">
-          <AddressForm email={account.email} />
+          <AddressForm email={account.email} mailboxUrl={mailboxUrl} />
         </FormSection>
         <FormSection title="Labs">
           <LabChoices />

@@ -1,12 +1,13 @@
 "use client";
 
-import { useRef, useState } from "react";
+import { useState } from "react";
 import { ApiProblem } from "@/lib/api/client";
 import { formText } from "../entry/form-text";
 import { PasswordField } from "../entry/password-field";
 import { Button } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
 import { Field, TextInput } from "../parts/field";
+import { LocalMailbox } from "../parts/local-mailbox";
 import { useChangeAddress } from "../queries/mail";
 
 /** The sentence at the field that it belongs to; null where it belongs to none. */
@@ -24,11 +25,16 @@ const sayAddress = (error: ApiProblem): string =>
     ? "You sign in with this address already."
     : "Enter an address such as name@lab.example.";
 
+interface AddressFormProps {
+  email: string;
+  /** Of the local mailbox; null where mail goes out. */
+  mailboxUrl: string | null;
+}
+
 /** The address that one signs in with, and the way to another: a link goes there first. */
-export function AddressForm({ email }: { email: string }) {
+export function AddressForm({ email, mailboxUrl }: AddressFormProps) {
   const change = useChangeAddress();
   const [open, setOpen] = useState(false);
-  const ref = useRef<HTMLFormElement>(null);
   const fault = toFieldFault(change.error);
   if (!open) {
     return (
@@ -44,15 +50,18 @@ export function AddressForm({ email }: { email: string }) {
           Change the address
         </Button>
         <output className="basis-full text-ink-2 empty:hidden">
-          {change.isSuccess &&
-            `A link went to ${change.variables.email}. Until you open it, this one stays.`}
+          {change.isSuccess && (
+            <>
+              A link went to {change.variables.email}. Until you open it, this one stays.
+              <LocalMailbox url={mailboxUrl} />
+            </>
+          )}
         </output>
       </div>
     );
   }
   return (
     <form
-      ref={ref}
       aria-label="Address"
       noValidate
       method="post"

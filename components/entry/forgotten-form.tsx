@@ -6,21 +6,27 @@ import { callApi } from "@/lib/api/client";
 import { Button, LinkButton } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
 import { Field, TextInput } from "../parts/field";
+import { LocalMailbox } from "../parts/local-mailbox";
 import { QueryProvider } from "../queries/query-provider";
 import { formText } from "./form-text";
 
+interface ForgottenFormProps {
+  /** Of the local mailbox; null where mail goes out. */
+  mailboxUrl: string | null;
+}
+
 /** Asks for the link; what it says afterwards does not tell whether the address has an account. */
-export function ForgottenForm() {
+export function ForgottenForm(props: ForgottenFormProps) {
   return (
     <QueryProvider>
       <div aria-live="polite">
-        <Form />
+        <Form {...props} />
       </div>
     </QueryProvider>
   );
 }
 
-function Form() {
+function Form({ mailboxUrl }: ForgottenFormProps) {
   const ask = useMutation({
     mutationFn: (email: string) => callApi(requestPasswordReset, { body: { email } }),
   });
@@ -31,6 +37,7 @@ function Form() {
         <p className="mt-1 max-w-prose">
           If an account has the address <b className="break-all">{ask.variables}</b>, a link is on
           its way. It is good for one hour.
+          <LocalMailbox url={mailboxUrl} />
         </p>
         <div className="mt-3">
           <LinkButton href="/sign-in">Go to sign-in</LinkButton>

@@ -12,6 +12,7 @@ import { ShownOnce } from "../lab/shown-once";
 import { Button } from "../parts/button";
 import { FaultBar } from "../parts/fault-bar";
 import { Field, TextInput } from "../parts/field";
+import { LocalMailbox } from "../parts/local-mailbox";
 import { Sheet } from "../parts/section";
 import { useCreateInvitation } from "../queries/people";
 import { RoleBoxes } from "./role-boxes";
@@ -26,8 +27,8 @@ type FormOutput = z.output<typeof formSchema>;
 
 const EMPTY: FormInput = { email: "", name: "", roles: ["tester"] };
 
-/** Address and roles; then the link, once. */
-export function InviteForm() {
+/** Address and roles; then the link, once. @param props.mailboxUrl null where mail goes out */
+export function InviteForm({ mailboxUrl }: { mailboxUrl: string | null }) {
   const create = useCreateInvitation();
   const [made, setMade] = useState<{ invitation: Invitation; link: string } | null>(null);
   const form = useForm<FormInput, unknown, FormOutput>({
@@ -57,6 +58,7 @@ export function InviteForm() {
       >
         It goes to them by mail, too. It can be used once, until{" "}
         <Moment at={invitation.expires_at} as="day" />, and is not shown again.
+        <LocalMailbox url={mailboxUrl} />
       </ShownOnce>
     );
   }

@@ -13,8 +13,14 @@ import { MemberRow } from "./member-row";
 import { RoleKey } from "./role-key";
 import { findOnlyAdmin, toMembersLine } from "./role-words";
 
+interface MembersScreenProps {
+  mayAdminister: boolean;
+  /** Of the local mailbox; null where mail goes out. */
+  mailboxUrl: string | null;
+}
+
 /** Who belongs to the lab and what they may do; for an admin the ways in and out. */
-export function MembersScreen({ mayAdminister }: { mayAdminister: boolean }) {
+export function MembersScreen({ mayAdminister, mailboxUrl }: MembersScreenProps) {
   const { account } = useLabSession();
   const members = useQuery(membersQuery);
   const invitations = useQuery({ ...invitationsQuery, enabled: mayAdminister });
@@ -74,7 +80,7 @@ export function MembersScreen({ mayAdminister }: { mayAdminister: boolean }) {
             </FaultBar>
           )}
         </div>
-        {mayAdminister ? <InviteForm /> : <RoleKey />}
+        {mayAdminister ? <InviteForm mailboxUrl={mailboxUrl} /> : <RoleKey />}
       </div>
     </>
   );

@@ -43,6 +43,7 @@ describe("readEnvironment", () => {
       smtpUrl: null,
       mailFrom: "Tidemark <tidemark@localhost>",
       mailboxPort: null,
+      mailboxUrl: null,
       secrets: stored,
     });
   });

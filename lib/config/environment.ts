@@ -33,6 +33,8 @@ export interface Environment {
   mailFrom: string;
   /** Port of the page of the local mailbox; null: the one above the web server's, or any. */
   mailboxPort: number | null;
+  /** Page of the local mailbox, set by the start that runs one; null where mail goes elsewhere. */
+  mailboxUrl: string | null;
   secrets: Secrets;
 }
 
@@ -96,6 +98,7 @@ const variablesSchema = z.object({
   TIDEMARK_SMTP_URL: smtpUrl.optional(),
   TIDEMARK_MAIL_FROM: sender.optional(),
   TIDEMARK_MAILBOX_PORT: port.optional(),
+  TIDEMARK_MAILBOX_URL: url.optional(),
   TIDEMARK_SECRET: secret.optional(),
   TIDEMARK_DB_OWNER_PASSWORD: secret.optional(),
   TIDEMARK_DB_MIGRATOR_PASSWORD: secret.optional(),
@@ -134,6 +137,7 @@ export function readEnvironment(
     smtpUrl: set.TIDEMARK_SMTP_URL ?? null,
     mailFrom: set.TIDEMARK_MAIL_FROM ?? toSender(publicUrl),
     mailboxPort: set.TIDEMARK_MAILBOX_PORT ?? null,
+    mailboxUrl: set.TIDEMARK_MAILBOX_URL ?? null,
     secrets: {
       session: set.TIDEMARK_SECRET ?? stored.session,
       database: {

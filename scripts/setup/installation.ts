@@ -77,7 +77,8 @@ export function toProcessEnv(environment: Environment): NodeJS.ProcessEnv {
     NEXT_TELEMETRY_DISABLED: "1",
     NEXTAUTH_URL: environment.publicUrl,
     TIDEMARK_DATA_DIR: environment.dataDir,
-    ...(environment.smtpUrl === null ? {} : { TIDEMARK_SMTP_URL: environment.smtpUrl }),
+    TIDEMARK_SMTP_URL: environment.smtpUrl ?? "",
+    TIDEMARK_MAILBOX_URL: environment.mailboxUrl ?? "",
   };
 }
 

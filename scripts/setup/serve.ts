@@ -38,7 +38,10 @@ export async function serve(plan: ServePlan): Promise<number> {
     await assertPortFree(environment.webPort, environment.webHost, "TIDEMARK_WEB_PORT");
     await plan.prepare(stop.signal);
     const mailbox = environment.smtpUrl === null ? await planMailbox(environment) : null;
-    const served = mailbox === null ? environment : { ...environment, smtpUrl: mailbox.smtpUrl };
+    const served =
+      mailbox === null
+        ? environment
+        : { ...environment, smtpUrl: mailbox.smtpUrl, mailboxUrl: mailbox.pageUrl };
     await serveWithDatabase(plan, served, mailbox, stop);
     return 0;
   } catch (error) {

@@ -1,4 +1,5 @@
 import type { Metadata } from "next";
+import { findLocalMailbox } from "@/app/_server/local-mailbox";
 import { getPageAccount } from "@/app/_server/page-caller";
 import { AccountScreen } from "@/components/account/account-screen";
 import { PASSWORD_MIN } from "@/lib/account/passwords";
@@ -7,5 +8,5 @@ export const metadata: Metadata = { title: "Account" };
 
 export default async function AccountPage() {
   await getPageAccount();
-  return <AccountScreen passwordMin={PASSWORD_MIN} />;
+  return <AccountScreen passwordMin={PASSWORD_MIN} mailboxUrl={findLocalMailbox()} />;
 }
