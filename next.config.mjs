@@ -2,7 +2,14 @@
 const config = {
   poweredByHeader: false,
   reactStrictMode: true,
-  serverExternalPackages: ["@node-rs/argon2", "@resvg/resvg-js", "opentype.js", "pg"],
+  // The FLAC decoder picks its worker by a name that a bundler cannot follow.
+  serverExternalPackages: [
+    "@node-rs/argon2",
+    "@resvg/resvg-js",
+    "@wasm-audio-decoders/flac",
+    "opentype.js",
+    "pg",
+  ],
 };
 
 export default config;
