@@ -3,21 +3,25 @@ import type { Recording } from "./types";
 /** So many successive samples at full scale are no music: the input clipped. */
 const CLIPPED_SAMPLES = 3;
 
-/** Peak re full scale, and whether the recording clipped or, as float, went beyond. */
+/** Peak and mean re full scale, and whether the recording clipped or, as float, went beyond. */
 export function measurePeak({ samples, fullScale }: Recording): {
   peakDbfs: number;
+  mean: number;
   clipped: boolean;
 } {
   let high = 0;
   let low = 0;
+  let sum = 0;
   for (let n = 0; n < samples.length; n += 1) {
     const value = samples[n]!;
+    sum += value;
     if (value > high) high = value;
     else if (value < low) low = value;
   }
   const peak = Math.max(high, -low);
   return {
     peakDbfs: 20 * Math.log10(peak),
+    mean: samples.length === 0 ? 0 : sum / samples.length,
     clipped: peak > 1 || (peak >= fullScale && staysAt(samples, fullScale, CLIPPED_SAMPLES)),
   };
 }

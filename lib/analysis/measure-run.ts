@@ -49,6 +49,8 @@ export interface RawRun {
   latencyS: number;
   driftPpm: number;
   peakDbfs: number;
+  /** Mean of the recording, full scale = 1. */
+  mean: number;
   clipped: boolean;
   snrDb: number;
   /** Samples of the sweep that the recording lacks. */

@@ -12,7 +12,7 @@ import { toMicrophoneResponse, type MicrophoneResponse } from "./microphone";
 import { measureNoise } from "./noise-floor";
 import { toGateWindow, toOrderWindows } from "./order-windows";
 import { warnOfOddRuns } from "./run-oddities";
-import { toLevelWarnings, toRunWarnings } from "./run-warnings";
+import { toLevelWarnings, toRunWarnings, warnOfTwins } from "./run-warnings";
 import { measureScale, type Scale } from "./scale";
 import type { SplScaleFacts } from "./spl-uncertainty";
 import { toPlayedStimulus } from "./stimulus-in-use";
@@ -87,9 +87,13 @@ export async function measureSeries(
     onProgress?.({ file: run.file, stage: "levels", done: raw.length, total: series.runs.length });
   }
   const measured = assembleSeries(series, raw, context, scale);
+  const twins = warnOfTwins(
+    series.runs.map(({ file }) => file),
+    raw,
+  );
   return {
     measured,
-    warnings: [...warnings, ...toLevelWarnings(measured, context.referenceBandHz)],
+    warnings: [...warnings, ...twins, ...toLevelWarnings(measured, context.referenceBandHz)],
   };
 }
 

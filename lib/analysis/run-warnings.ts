@@ -6,6 +6,8 @@ import type { RawRun } from "./measure-run";
 import { sayDb, sayNumber } from "./say";
 import type { MeasuredRun, MeasuredSeries } from "./types";
 
+/** -40 dBFS. */
+const LARGEST_MEAN = 0.01;
 const LEAST_SNR_DB = 20;
 const DRIFT_PPM = 50;
 /** No two clocks of players and recorders lie further apart. */
@@ -20,6 +22,11 @@ export function toRunWarnings(raw: RawRun, file: string, sweep: SweepInUse): War
     warn(
       "run.clipped",
       `${file} reaches digital full scale: its distortion and its compression are not the loudspeaker's.`,
+    );
+  if (Math.abs(raw.mean) > LARGEST_MEAN)
+    warn(
+      "run.dc-offset",
+      `${file} is shifted by ${sayNumber(20 * Math.log10(Math.abs(raw.mean)), 0)} dBFS of DC; up to ${sayNumber(20 * Math.log10(LARGEST_MEAN), 0)} dBFS is usual. It takes headroom and points at a fault of the input.`,
     );
   if (raw.snrDb < LEAST_SNR_DB)
     warn(
@@ -46,6 +53,25 @@ export function toRunWarnings(raw: RawRun, file: string, sweep: SweepInUse): War
     );
   }
   return warnings;
+}
+
+/** Takes of the same bytes: no two recordings have the same noise, no two tables the same last digit throughout. */
+export function warnOfTwins(files: readonly string[], raw: readonly RawRun[]): Warning[] {
+  const powerOf = (i: number): Float64Array | undefined => raw[i]?.orders[0]?.power;
+  return files.flatMap((file, i) => {
+    const own = powerOf(i);
+    const twin = files.findIndex(
+      (_, j) => j < i && own !== undefined && own.every((p, c) => Object.is(p, powerOf(j)?.[c])),
+    );
+    if (twin < 0) return [];
+    return [
+      {
+        code: "run.duplicate",
+        message: `${file} holds the same as ${files[twin] ?? ""}: one recording would count as two. Check that each run has its own file.`,
+        file,
+      },
+    ];
+  });
 }
 
 const OFF_PLAN_DB = 3;

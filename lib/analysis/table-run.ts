@@ -82,6 +82,7 @@ export function toTableRun(
     latencyS: unknown,
     driftPpm: unknown,
     peakDbfs: unknown,
+    mean: unknown,
     clipped: false,
     snrDb: unknown,
     missing: 0,

@@ -310,6 +310,34 @@ describe("clipping", () => {
   });
 });
 
+describe("what is wrong with a file beside its sweep", () => {
+  it("is said: a shift by DC", async () => {
+    const shifted = place("a.wav", STIMULUS.length + 20_000, [{ at: 0 }]);
+    shifted.samples.forEach((x, n) => (shifted.samples[n] = x + 0.02));
+    const { warnings } = await measure([shifted]);
+    expect(warnings.find((w) => w.code === "run.dc-offset")?.message).toContain(
+      "shifted by \u221234 dBFS of DC; up to \u221240 dBFS",
+    );
+    const fine = await measure([place("a.wav", STIMULUS.length + 20_000, [{ at: 0 }])]);
+    expect(fine.warnings.map((w) => w.code)).not.toContain("run.dc-offset");
+  });
+
+  it("is said: the same recording twice", async () => {
+    const take = (file: string, at: number) => place(file, STIMULUS.length + 20_000, [{ at }]);
+    const files = (names: string[]) => names.map((file, i) => ({ file, level_dB: 70 + 10 * i }));
+    const { warnings } = await measure([take("a.wav", 0), take("b.wav", 0)], {
+      runs: files(["a.wav", "b.wav"]),
+    });
+    expect(warnings.filter((w) => w.code === "run.duplicate").map((w) => w.file)).toEqual([
+      "b.wav",
+    ]);
+    const apart = await measure([take("a.wav", 0), take("b.wav", 7)], {
+      runs: files(["a.wav", "b.wav"]),
+    });
+    expect(apart.warnings.map((w) => w.code)).not.toContain("run.duplicate");
+  });
+});
+
 describe("levels held against the plan", () => {
   const at = (file: string, levelDb: number, measuredDb: number) => ({
     recording: place(file, STIMULUS.length + 20_000, [
