@@ -75,7 +75,7 @@ describe("publication", () => {
     await form.getByLabel("your words to readers").fill("A loudspeaker for small rooms.");
     expect(await findAxeFaults(page)).toEqual([]);
     expect(await measureOverflow(page)).toBeLessThanOrEqual(0);
-    await form.getByRole("checkbox").check();
+    await form.getByRole("checkbox", { name: /I have read/ }).check();
     await form.getByRole("button", { name: "Publish" }).click();
     await page.getByRole("link", { name: "Revision 1" }).waitFor();
     expect(await page.getByText("Publish a correction").count()).toBe(1);
