@@ -14,11 +14,14 @@ export function toEvidenceSection(snapshot: Snapshot): Html | false {
       <a href="${path}" download>All recordings of this test, with its result (ZIP)</a>. The
       analyst’s decisions, the engine’s version and source, and a digest of every file are in it.
     </p>
-    <p>Engine ${analysis.engine_version} computes the published result again, byte for byte:</p>
+    <p>
+      Engine ${analysis.engine_version} computes the published result again, byte for byte; in its
+      checkout, with the unpacked folder beside it:
+    </p>
     <pre
       class="figures"
-    ><code>npm run --silent analyse -- ${series.slug}-${revision} --out again.json
-cmp again.json ${series.slug}-${revision}/result.json</code></pre>
+    ><code>npm run --silent analyse -- ../${series.slug}-${revision} --out ../again.json
+cmp ../again.json ../${series.slug}-${revision}/result.json</code></pre>
     <p class="small">A newer engine says so, and its figures may differ.</p>
   </section>`;
 }

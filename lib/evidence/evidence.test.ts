@@ -55,7 +55,7 @@ describe("toEvidencePack", () => {
 
   it("tells the command, the source and the hearing notice in its README", () => {
     const readme = textOf(pack, "README.txt");
-    expect(readme).toContain("npm run --silent analyse -- osier-8a-1 --out again.json");
+    expect(readme).toContain("npm run --silent analyse -- ../osier-8a-1 --out ../again.json");
     expect(readme).toContain("Commit of its source: c0ffee");
     expect(readme).toMatch(/CAUTION|WARNING/);
     expect(readme).toContain("https://tidemark.test/t/");
