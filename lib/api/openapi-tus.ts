@@ -85,6 +85,7 @@ export function toTusPaths(toProblems: ToProblems): Record<string, JsonObject> {
             "not-found",
             "conflict.state",
             "audio.empty",
+            "table.too-large",
             "upload.too-large",
             "storage.full",
           ]),

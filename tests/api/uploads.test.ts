@@ -225,6 +225,14 @@ describe("a file that is no recording", () => {
   it.each([
     ["too large", 3_000_001, {}, 413, "upload.too-large", /3\.0 MB are taken/],
     ["empty", 0, {}, 422, "audio.empty", /holds no bytes/],
+    [
+      "a table of 17 MB",
+      17_000_000,
+      { fileName: "run.csv" },
+      413,
+      "table.too-large",
+      /tables up to 16777216/,
+    ],
     ["without a series", 10, { seriesId: "" }, 400, "request.invalid", /seriesId/],
     [
       "of no series of ours",

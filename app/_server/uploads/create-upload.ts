@@ -6,9 +6,11 @@ import { createUpload as insertUpload } from "../../../db/queries/uploads";
 import type { Trx } from "../../../db/client";
 import { UPLOAD_LIFETIME_MS } from "../../../lib/api/uploads";
 import { uploadMetadataSchema, type UploadMetadata } from "../../../lib/api/runs";
+import { LARGEST_TABLE_BYTES, toTooLarge } from "../../../lib/audio/table-rows";
 import { AppError, FileError } from "../../../lib/errors/app-error";
 import { toInputError } from "../../../lib/http/problem";
 import { labSettingsSchema } from "../../../lib/labs/settings-schema";
+import { isTableName } from "../../../lib/series/table-columns";
 import type { LabCaller } from "../caller";
 
 export interface CreationLimits {
@@ -31,7 +33,7 @@ export function parseMetadata(metadata: Record<string, string | null> | undefine
 }
 
 /**
- * @throws AppError "not-found", "conflict.state", "upload.too-large"; FileError "audio.empty"
+ * @throws AppError "not-found", "conflict.state", "upload.too-large"; FileError "audio.empty", "table.too-large"
  */
 export async function createUpload(
   trx: Trx,
@@ -46,6 +48,9 @@ export async function createUpload(
     throw new FileError("audio.empty", `${metadata.fileName} is empty: it holds no bytes.`, {
       file: metadata.fileName,
     });
+  }
+  if (isTableName(metadata.fileName) && bytes > LARGEST_TABLE_BYTES) {
+    throw toTooLarge(bytes, metadata.fileName);
   }
   const lab = await getLab(trx, caller.labId);
   const own = labSettingsSchema.parse(lab.settings).max_upload_mb;
