@@ -246,9 +246,10 @@ export function budgetSpl(
   const takes = Math.min(...groups.map(({ runs }) => runs.length));
   return bands.map(({ exactHz }, b) => {
     const noiseDb = groups
-      .flatMap(({ runs }) => runs.map((run) => run.bands[b]))
-      .filter((band) => band !== undefined && Number.isFinite(band.splDb))
-      .map((band) => band?.sigmaDb ?? Number.NaN);
+      .flatMap(({ runs }) => runs.flatMap((run) => run.bands[b] ?? []))
+      .filter(({ splDb }) => Number.isFinite(splDb))
+      // A band without any noise has no scatter to tell of.
+      .map(({ sigmaDb }) => (Number.isFinite(sigmaDb) ? sigmaDb : 0));
     if (splScale === undefined || !splValid || noiseDb.length === 0) return null;
     const single = repeatDb?.[b];
     const parts = listSplParts(splScale, {
