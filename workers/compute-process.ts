@@ -14,7 +14,7 @@ import { checkArrival } from "../lib/runs/arrival/check-arrival";
 import type { AnalyseTask, CheckTask, Reply, Request } from "./compute/messages";
 import { toSentError } from "./compute/sent-error";
 
-/** Tables stay from one analysis to the next, up to about 100 MB of them. */
+/** Tables stay from one task to the next, up to about 100 MB of them. */
 const MOST_POINTS = 2 ** 22;
 let plans = new Plans();
 
@@ -29,6 +29,7 @@ process.on("SIGTERM", () => undefined);
 process.on("disconnect", () => process.exit(0));
 
 async function answer({ id, task }: Request): Promise<void> {
+  if (plans.points > MOST_POINTS) plans = new Plans();
   try {
     const found = task.kind === "check" ? await check(task) : await analyse(task, id);
     send({ id, kind: "answer", answer: found });
@@ -45,14 +46,13 @@ async function check({ request, paths }: CheckTask) {
     return toFileSource(descriptor);
   };
   try {
-    return await checkArrival({ ...request, open });
+    return await checkArrival({ ...request, open }, plans);
   } finally {
     opened.forEach((descriptor) => closeSync(descriptor));
   }
 }
 
 async function analyse({ series, paths }: AnalyseTask, id: number) {
-  if (plans.points > MOST_POINTS) plans = new Plans();
   return analyseSeries(series, createPathSource(paths), {
     plans,
     onProgress: (event) => send({ id, kind: "progress", event }),

@@ -22,6 +22,7 @@ const PLAN: PlanInput = {
   closing: false,
 };
 const ASK_EVERY_MS = 10;
+const CAPTURES = 3;
 const LONGEST_MS = 60_000;
 
 interface BenchFile {
@@ -30,13 +31,21 @@ interface BenchFile {
   isRun: boolean;
 }
 
+interface Capture {
+  checkS: number;
+  resultS: number;
+}
+
 let product: BenchProduct | undefined;
+/** Each gives both figures: what one bench has made, the other reads. */
+const captures: Capture[] = [];
 let token = "";
 let files: BenchFile[] = [];
 
 const loudspeaker = DEMO_LABS[0]?.series[0];
 
 async function setUp(): Promise<void> {
+  if (captures.length === CAPTURES) return;
   if (loudspeaker === undefined) throw new Error("the demo labs have no series any more");
   files = recordSeries({
     ...loudspeaker,
@@ -94,7 +103,7 @@ async function upload({ name, bytes }: BenchFile, url: string, seriesId: string)
 }
 
 /** Uploads every file; from the start of the last one's upload to the result, and the checks of the others. */
-async function capture(): Promise<{ checkS: number; resultS: number }> {
+async function capture(): Promise<Capture> {
   if (product === undefined || loudspeaker === undefined) throw new Error("there is no product");
   const options = { baseUrl: product.url, token };
   const made = await callApi(createLoudspeaker, { body: loudspeaker.loudspeaker }, options);
@@ -120,23 +129,36 @@ async function capture(): Promise<{ checkS: number; resultS: number }> {
   return { checkS: median(checksMs) / 1000, resultS: (performance.now() - from) / 1000 };
 }
 
+function toBench(figure: keyof Capture, key: string, name: string): Bench {
+  let read = 0;
+  return {
+    key,
+    name,
+    unit: "s",
+    runs: CAPTURES,
+    before: setUp,
+    run: async () => {
+      const known = captures[read] ?? (await capture());
+      captures[read] = known;
+      read += 1;
+      return known[figure];
+    },
+    after: async () => {
+      await product?.stop();
+      product = undefined;
+    },
+  };
+}
+
 export const benches: Bench[] = [
-  {
-    key: "capture.result_s",
-    name: "from the start of the last upload of four runs of 15 s to their result by the API",
-    unit: "s",
-    runs: 5,
-    before: setUp,
-    run: async () => (await capture()).resultS,
-    after: async () => product?.stop(),
-  },
-  {
-    key: "capture.arrival_check_s",
-    name: "from the start of the upload of 15 s to its arrival report by the API",
-    unit: "s",
-    runs: 5,
-    before: setUp,
-    run: async () => (await capture()).checkS,
-    after: async () => product?.stop(),
-  },
+  toBench(
+    "resultS",
+    "capture.result_s",
+    "from the start of the last upload of four runs of 15 s to their result by the API",
+  ),
+  toBench(
+    "checkS",
+    "capture.arrival_check_s",
+    "from the start of the upload of 15 s to its arrival report by the API",
+  ),
 ];
