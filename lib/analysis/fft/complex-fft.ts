@@ -3,7 +3,7 @@
  * passes of radix 4, then 2, 5 and 3 (kernel.as). All tables and scratch belong to the plan.
  */
 import { AnalysisError } from "../../errors/app-error";
-import { createWorkspace, type Pass, type Workspace } from "./kernel";
+import { createWorkspace, type Pass, type Workspace } from "../kernel/kernel";
 
 export interface ComplexFft {
   readonly size: number;

@@ -1,6 +1,6 @@
 /** FFT of real data as a complex one of half the size. */
 import { fillTwiddles, planComplexFft, toComplexDoubles } from "./complex-fft";
-import { createWorkspace } from "./kernel";
+import { createWorkspace } from "../kernel/kernel";
 
 const ODD_PARTS = [1, 3, 5, 9, 15];
 

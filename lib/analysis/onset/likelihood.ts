@@ -71,41 +71,47 @@ export function computeLikelihood(
     Math.min(Math.max(Math.round((db - plan.firstOnsetDb) / ONSET_STEP_DB), 0), plan.columns - 1);
   const firstColumn = clampColumn(lowDb);
   const columns = clampColumn(highDb) - firstColumn + 1;
+  const lowestDb = plan.drivesDb[weights.findIndex((weight) => weight > 0)] ?? 0;
+  const { kernel } = plan.workspace;
+  const { sums, squares, places, logs } = plan.rows;
+  const count = columns + (columns % 2);
+  // Rows are even; what is over never counts.
+  places.fill(-Infinity, columns);
+  for (let i = 0; i < columns; i++) {
+    const onsetDb = plan.firstOnsetDb + (firstColumn + i) * ONSET_STEP_DB;
+    places[i] = -Math.max(0, lowestDb - onsetDb) / BELOW_LOWEST_DECAY_DB;
+  }
+  const weigh = (j: number): number => {
+    kernel.startSums(sums.byteOffset, squares.byteOffset, count, first, second);
+    for (let k = 0; k < levels; k++) {
+      const { profile, at } = plan.levels[k]!;
+      // Later columns hold onsets so far above this level that nothing is lost there.
+      const end = Math.min(columns, profile.count[j]! - at - firstColumn);
+      if (weights[k] === 0 || end <= 0) continue;
+      kernel.addLosses(
+        profile.lossDb.byteOffset + 8 * (j * plan.profileLength + at + firstColumn),
+        sums.byteOffset,
+        squares.byteOffset,
+        end + (end % 2),
+        weights[k]!,
+        2 * gainDb[k]!,
+      );
+    }
+    return kernel.closeSums(
+      sums.byteOffset,
+      squares.byteOffset,
+      places.byteOffset,
+      logs.byteOffset,
+      count,
+      weightSum,
+    );
+  };
   const logLikelihood = new Float64Array(plan.shapes.length * columns);
   const shapeBest = new Float64Array(plan.shapes.length);
-  const lowestDb = plan.drivesDb[weights.findIndex((weight) => weight > 0)] ?? 0;
-  const place = Float64Array.from({ length: columns }, (_, i) => {
-    const onsetDb = plan.firstOnsetDb + (firstColumn + i) * ONSET_STEP_DB;
-    return -Math.max(0, lowestDb - onsetDb) / BELOW_LOWEST_DECAY_DB;
-  });
-  const r1 = new Float64Array(columns);
-  const r2 = new Float64Array(columns);
+  const row = logs.subarray(0, columns);
   for (let j = 0; j < plan.shapes.length; j++) {
-    r1.fill(first);
-    r2.fill(second);
-    for (let k = 0; k < levels; k++) {
-      const weight = weights[k]!;
-      if (weight === 0) continue;
-      const { profile, at } = plan.levels[k]!;
-      const { lossDb: table } = profile;
-      const from = j * plan.profileLength + at - firstColumn;
-      const twiceGain = 2 * (gainDb[k] ?? 0);
-      // Later columns hold onsets so far above this level that nothing is lost there.
-      const end = Math.min(columns, at - firstColumn - (profile.start[j] ?? 0) + 1);
-      for (let i = 0; i < end; i++) {
-        const loss = table[from - i]!;
-        const weighted = weight * loss;
-        r1[i]! += weighted;
-        r2[i]! += weighted * (loss + twiceGain);
-      }
-    }
-    let best = -Infinity;
-    for (let i = 0; i < columns; i++) {
-      const value = -0.5 * (r2[i]! - (r1[i]! * r1[i]!) / weightSum) + place[i]!;
-      logLikelihood[j * columns + i] = value;
-      if (value > best) best = value;
-    }
-    shapeBest[j] = best;
+    shapeBest[j] = weigh(j);
+    logLikelihood.set(row, j * columns);
   }
   return {
     plan,

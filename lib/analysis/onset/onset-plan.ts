@@ -1,5 +1,6 @@
 /** Tables of the onset's posterior: they depend on the levels of a series alone and serve all its bands. */
 import { AnalysisError } from "../../errors/app-error";
+import { createWorkspace, type Workspace } from "../kernel/kernel";
 import { buildShapes, type Family, type Shape } from "./shapes";
 
 /** Grid step of the onset, dB. */
@@ -9,10 +10,10 @@ const BELOW_LOWEST_DB = 10;
 const ABOVE_TOP_DB = 1;
 
 export interface LossProfile {
-  /** [shapes * profileLength] */
+  /** [shapes * profileLength] loss, from the highest drive over the onset down. */
   lossDb: Float64Array;
-  /** [shapes] first index of a row that is not zero. */
-  start: Int32Array;
+  /** [shapes] so many entries of a row are not zero: the first ones. */
+  count: Int32Array;
 }
 
 export interface OnsetPlan {
@@ -24,10 +25,13 @@ export interface OnsetPlan {
   columns: number;
   /**
    * [levels] a loss curve per shape on the grid's step, and where a level stands in it: the loss of shape j with its
-   * onset in column i is `profile.lossDb[j * profileLength + at - i]`. Levels a whole number of steps apart share a profile.
+   * onset in column i is `profile.lossDb[j * profileLength + at + i]`. Levels a whole number of steps apart share a profile.
    */
   levels: { profile: LossProfile; at: number }[];
   profileLength: number;
+  /** Where the kernel works: the profiles lie there, and rows of columns, rounded up to an even number. */
+  workspace: Workspace;
+  rows: Record<"sums" | "squares" | "places" | "logs", Float64Array>;
   /** Index of the first shape of each family, and one past its last. */
   range: Record<Family, readonly [number, number]>;
 }
@@ -59,15 +63,27 @@ export function planOnset(drivesDb: readonly number[]): OnsetPlan {
   // Index m of a profile is a drive m - (columns - 1) steps above the onset, less the phase of the level on the grid.
   const span = Math.ceil((top - firstOnsetDb) / ONSET_STEP_DB) + 1;
   const profileLength = span + columns;
+  const phases = new Set(drivesDb.map((drive) => toPhase(drive, firstOnsetDb).phase));
+  const rowLength = columns + (columns % 2);
+  // One entry over, which the last row of columns may read and does not use.
+  const workspace = createWorkspace(
+    phases.size * (shapes.length * profileLength + 2) + 4 * rowLength,
+  );
   const profiles = new Map<number, LossProfile>();
   const levels = drivesDb.map((drive) => {
-    const steps = (drive - firstOnsetDb) / ONSET_STEP_DB;
-    const whole = Math.floor(steps + 1e-6);
-    const phase = Math.max(0, Math.round((steps - whole) * 1e6) / 1e6);
+    const { whole, phase } = toPhase(drive, firstOnsetDb);
     const known = profiles.get(phase);
-    const profile = known ?? profileOf(shapes, profileLength, columns, phase);
+    const profile =
+      known ??
+      profileOf(
+        shapes,
+        workspace.take(shapes.length * profileLength + 1),
+        profileLength,
+        columns,
+        phase,
+      );
     profiles.set(phase, profile);
-    return { profile, at: whole + columns - 1 };
+    return { profile, at: profileLength - columns - whole };
   });
   const rangeOf = (family: Family): readonly [number, number] => {
     const from = shapes.findIndex((shape) => shape.family === family);
@@ -80,6 +96,13 @@ export function planOnset(drivesDb: readonly number[]): OnsetPlan {
     columns,
     levels,
     profileLength,
+    workspace,
+    rows: {
+      sums: workspace.take(rowLength),
+      squares: workspace.take(rowLength),
+      places: workspace.take(rowLength),
+      logs: workspace.take(rowLength),
+    },
     range: {
       "gain riding": rangeOf("gain riding"),
       "two paths": rangeOf("two paths"),
@@ -88,24 +111,32 @@ export function planOnset(drivesDb: readonly number[]): OnsetPlan {
   };
 }
 
+/** Whole steps of a drive over the first onset, and what is left of a step. */
+function toPhase(drive: number, firstOnsetDb: number): { whole: number; phase: number } {
+  const steps = (drive - firstOnsetDb) / ONSET_STEP_DB;
+  const whole = Math.floor(steps + 1e-6);
+  return { whole, phase: Math.max(0, Math.round((steps - whole) * 1e6) / 1e6) };
+}
+
+/** @param table zeros, receives the rows. */
 function profileOf(
   shapes: readonly Shape[],
+  table: Float64Array,
   length: number,
   columns: number,
   phase: number,
 ): LossProfile {
-  const table = new Float64Array(shapes.length * length);
-  const start = new Int32Array(shapes.length);
+  const count = new Int32Array(shapes.length).fill(length);
   shapes.forEach((shape, j) => {
     // From the top down: below its first zero a loss curve stays zero.
-    for (let m = length - 1; m >= 0; m--) {
-      const lossDb = shape.lossDb((m - (columns - 1) + phase) * ONSET_STEP_DB);
+    for (let m = 0; m < length; m++) {
+      const lossDb = shape.lossDb((length - columns - m + phase) * ONSET_STEP_DB);
       if (lossDb === 0) {
-        start[j] = m + 1;
+        count[j] = m;
         break;
       }
       table[j * length + m] = lossDb;
     }
   });
-  return { lossDb: table, start };
+  return { lossDb: table, count };
 }

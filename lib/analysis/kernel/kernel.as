@@ -1,5 +1,5 @@
-// Passes of the complex FFT and of its real-data wrapping, in AssemblyScript: a complex number is one
-// vector of two doubles. After a change write kernel-bytes.ts anew: npx tsx scripts/entries/fft-kernel.ts
+// The innermost loops of the engine, in AssemblyScript: passes of the complex FFT, where a complex number is one
+// vector of two doubles, its real-data wrapping, and the likelihood of an onset. After a change write kernel-bytes.ts anew: npx tsx scripts/entries/kernel.ts
 //
 // Addresses are bytes in the memory of a plan; numbers lie re, im interleaved.
 
@@ -214,4 +214,45 @@ export function filter(z: usize, w: usize, transfer: usize, into: usize, half: i
     v128.store(into + <usize>k * ONE, conjugate(add(e, turned)));
     v128.store(into + <usize>(half - k) * ONE, sub(e, turned));
   }
+}
+
+/** Bytes of a double. */
+const DOUBLE: usize = 8;
+
+/** Two rows of sums over levels begin. @param count even; @param sums, squares [count] */
+export function startSums(sums: usize, squares: usize, count: i32, first: f64, second: f64): void {
+  const one = f64x2.splat(first), two = f64x2.splat(second);
+  for (let i: usize = 0; i < <usize>count * DOUBLE; i += ONE) {
+    v128.store(sums + i, one);
+    v128.store(squares + i, two);
+  }
+}
+
+/** A level's losses join the sums: w l, and w l (l + 2 g). @param losses [count], may begin at any double. */
+export function addLosses(losses: usize, sums: usize, squares: usize, count: i32, weight: f64, twiceGain: f64): void {
+  const w = f64x2.splat(weight), g = f64x2.splat(twiceGain);
+  for (let i: usize = 0; i < <usize>count * DOUBLE; i += ONE) {
+    const loss = v128.load(losses + i);
+    const weighted = scale(w, loss);
+    v128.store(sums + i, add(v128.load(sums + i), weighted));
+    v128.store(squares + i, add(v128.load(squares + i), scale(weighted, add(loss, g))));
+  }
+}
+
+/**
+ * -chi^2/2 with the common gain profiled out, and the logarithm of the prior of each place on top.
+ *
+ * @param row [count] receives it. @returns the largest.
+ */
+export function closeSums(sums: usize, squares: usize, places: usize, row: usize, count: i32, weights: f64): f64 {
+  const all = f64x2.splat(weights), minusHalf = f64x2.splat(-0.5);
+  let best = f64x2.splat(-Infinity);
+  for (let i: usize = 0; i < <usize>count * DOUBLE; i += ONE) {
+    const sum = v128.load(sums + i);
+    const rest = sub(v128.load(squares + i), f64x2.div(scale(sum, sum), all));
+    const value = add(scale(minusHalf, rest), v128.load(places + i));
+    v128.store(row + i, value);
+    best = f64x2.pmax(best, value);
+  }
+  return max(f64x2.extract_lane(best, 0), f64x2.extract_lane(best, 1));
 }

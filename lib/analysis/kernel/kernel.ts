@@ -1,4 +1,4 @@
-/** The compiled passes, and memory for one plan: numbers of a plan lie where its kernel can reach them. */
+/** The compiled loops, and memory for one plan: numbers of a plan lie where its kernel can reach them. */
 import { AnalysisError } from "../../errors/app-error";
 import { KERNEL_BASE64 } from "./kernel-bytes";
 
@@ -19,6 +19,23 @@ export interface Kernel {
     half: number,
     share: number,
   ) => void;
+  startSums: (sums: number, squares: number, count: number, first: number, second: number) => void;
+  addLosses: (
+    losses: number,
+    sums: number,
+    squares: number,
+    count: number,
+    weight: number,
+    twiceGain: number,
+  ) => void;
+  closeSums: (
+    sums: number,
+    squares: number,
+    places: number,
+    row: number,
+    count: number,
+    weights: number,
+  ) => number;
 }
 
 export interface Workspace {
