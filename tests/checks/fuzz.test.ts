@@ -10,13 +10,20 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { analyseSeries } from "../../lib/analysis/analyse-series";
 import { synthesiseStimulus } from "../../lib/analysis/sweep";
 import { toByteSource } from "../../lib/audio/byte-source";
+import { previewTable } from "../../lib/audio/preview-table";
 import { readRecording } from "../../lib/audio/read-recording";
 import { readTable } from "../../lib/audio/read-table";
 import { WAV_FORMATS, writeWav } from "../../lib/audio/write-wav";
 import { AppError } from "../../lib/errors/app-error";
+import { labSettingsSchema } from "../../lib/labs/settings-schema";
 import { toResultText } from "../../lib/result/result-text";
+import { arrivalReportSchema } from "../../lib/runs/arrival-schema";
+import { checkArrival } from "../../lib/runs/arrival/check-arrival";
 import { createFolderSource } from "../../lib/series/folder-source";
 import { parseSeries } from "../../lib/series/parse-series";
+import { planSchema } from "../../lib/series/plan-schema";
+import { toPlannedRuns } from "../../lib/series/planned-runs";
+import { HARMONIC_UNITS } from "../../lib/series/table-columns";
 import { runFfmpeg, runSox } from "../support/programs";
 import { createNormal, simulateTone } from "../support/simulated-sweep";
 
@@ -181,6 +188,51 @@ describe("bent tables", () => {
       { numRuns: 500, seed: SEED },
     );
     expect(read).toBeGreaterThan(50);
+  });
+
+  it("mapped by hand in any way are checked on arrival, with figures that are numbers", async () => {
+    const plan = planSchema.parse({});
+    const place = toPlannedRuns(plan, "fuzz").find((run) => run.slot === "short-76") ?? null;
+    const column = fc.integer({ min: 1, max: 6 });
+    const choices = fc.record({
+      frequency: fc.oneof(fc.constant(1), column),
+      level: fc.oneof(fc.constant(2), column),
+      thd: fc.option(column, { nil: undefined }),
+      harmonics: fc.array(
+        fc.record({
+          order: fc.integer({ min: 2, max: 9 }),
+          column,
+          unit: fc.constantFrom(...HARMONIC_UNITS),
+        }),
+        { maxLength: 3 },
+      ),
+      kilohertz: fc.boolean(),
+    });
+    const level = fc.double({ min: -400, max: 400, noNaN: true }).map(String);
+    const rows = fc.array(fc.array(fc.oneof(level, cell), { minLength: 2, maxLength: 6 }), {
+      maxLength: 30,
+    });
+    let passed = 0;
+    await fc.assert(
+      fc.asyncProperty(rows, choices, async (cells, columns) => {
+        const text = cells.map((line, i) => [20 * 1.26 ** i, ...line].join("\t")).join("\n");
+        const bytes = new TextEncoder().encode(text);
+        await settle(() => previewTable(bytes, "t.csv"));
+        const report = await checkArrival({
+          run: { file: "t.csv", digest: "a".repeat(64), channel: 1, columns, place },
+          plan,
+          limits: labSettingsSchema.parse({}).arrival,
+          engineVersion: "1",
+          siblings: [],
+          open: () => toByteSource(bytes),
+        });
+        const kept: unknown = JSON.parse(JSON.stringify(report));
+        expect(arrivalReportSchema.safeParse(kept).error).toBeUndefined();
+        if (report.checks[0]?.verdict === "pass") passed += 1;
+      }),
+      { numRuns: 200, seed: SEED },
+    );
+    expect(passed).toBeGreaterThan(20);
   });
 
   it("of one line without end take no longer than their bytes", async () => {
