@@ -6,6 +6,7 @@ import {
   answerMakerComment,
   createPreview,
   draftPublication,
+  getSummaryKit,
   listPreviews,
   listPublications,
   publish,
@@ -27,6 +28,12 @@ export const draftQuery = (seriesId: string) =>
     queryFn: ({ signal }) =>
       callApi(draftPublication, { params: { seriesId }, body: {} }, { signal }),
     retry: false,
+  });
+
+export const summaryKitQuery = (seriesId: string, publicationId: string) =>
+  queryOptions({
+    queryKey: queryKeys.summaryKit(seriesId, publicationId),
+    queryFn: ({ signal }) => callApi(getSummaryKit, { params: { publicationId } }, { signal }),
   });
 
 export const previewsQuery = (seriesId: string) =>

@@ -19,6 +19,12 @@ export const queryKeys = {
   analyses: (seriesId: string) => ["series", seriesId, "analyses"],
   engineChanges: ["engine-changes"],
   publications: (seriesId: string) => ["series", seriesId, "publications"],
+  summaryKit: (seriesId: string, publicationId: string) => [
+    "series",
+    seriesId,
+    "summary-kit",
+    publicationId,
+  ],
   draft: (seriesId: string) => ["series", seriesId, "draft"],
   previews: (seriesId: string) => ["series", seriesId, "previews"],
   loudspeakers: ["loudspeakers"],

@@ -14,6 +14,7 @@ import { MakerComments } from "./maker-comments";
 import { PreviewLinks } from "./preview-links";
 import { PublishForm } from "./publish-form";
 import { RevisionList } from "./revision-list";
+import { SummaryKitSection } from "./summary-kit";
 import { ApiProblem } from "@/lib/api/client";
 
 interface SummaryScreenProps {
@@ -47,6 +48,7 @@ export function SummaryScreen({ seriesId, mayPublish }: SummaryScreenProps) {
     );
   }
   const revisions = publications.data.publications;
+  const live = revisions.find((one) => one.state === "live");
   const { comments } = previews.data;
   const signed = draft.data !== undefined;
   return (
@@ -57,6 +59,7 @@ export function SummaryScreen({ seriesId, mayPublish }: SummaryScreenProps) {
         ) : (
           <Answer snapshot={draft.data} published={revisions.length > 0} />
         )}
+        {live !== undefined && <SummaryKitSection seriesId={seriesId} publication={live} />}
         <RevisionList seriesId={seriesId} revisions={revisions} mayPublish={mayPublish} />
         <MakerComments seriesId={seriesId} comments={comments} mayAnswer={mayPublish} />
       </div>

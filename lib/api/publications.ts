@@ -93,6 +93,43 @@ export const withdrawPublication = defineOperation({
   errors: ["not-found", "request.invalid", "conflict.state"],
 });
 
+/** What a reviewer takes along; the files themselves are public, under the revision's address. */
+export const summaryKitSchema = z.object({
+  publication_id: idSchema,
+  /** Absolute addresses: of the revision's page and, below it, of its card and files. */
+  page: z.string(),
+  card: z.string(),
+  files: z.object({
+    png: z.string(),
+    svg: z.string(),
+    link_png: z.string(),
+    pdf_a4: z.string(),
+    pdf_letter: z.string(),
+    csv: z.string(),
+    json: z.string(),
+  }),
+  /** Code of the card in two sizes. */
+  embed: z.object({ wide: z.string(), narrow: z.string() }),
+  narrow_height: z.number().int(),
+  sentence: z.string(),
+  alt_text: z.string(),
+  /** Addresses lead nowhere before this. */
+  embargo_until: timeSchema.nullable(),
+});
+export type SummaryKit = z.infer<typeof summaryKitSchema>;
+
+export const getSummaryKit = defineOperation({
+  id: "getSummaryKit",
+  method: "GET",
+  path: "/api/v1/publications/{publicationId}/kit",
+  summary: "Embed code, article sentence, alt text and addresses of the files of a publication",
+  access: "see",
+  params,
+  status: 200,
+  answer: summaryKitSchema,
+  errors: ["not-found", "conflict.state"],
+});
+
 /** The page as it would be, without keeping anything. */
 export const draftPublication = defineOperation({
   id: "draftPublication",
@@ -190,6 +227,7 @@ export const publicationOperations = [
   listPublications,
   publish,
   withdrawPublication,
+  getSummaryKit,
   draftPublication,
   listPreviews,
   createPreview,

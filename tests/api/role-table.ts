@@ -91,6 +91,7 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("listPublications", EVERYONE, "not there"),
   row("getEvidence", EVERYONE, "not there"),
   row("draftPublication", EVERYONE, "not there"),
+  row("getSummaryKit", EVERYONE, "not there"),
   row("listPreviews", EVERYONE, "not there"),
   row("publish", REVIEWER, "not there"),
   row("withdrawPublication", REVIEWER, "not there"),

@@ -46,11 +46,18 @@ interface KitPart {
 }
 
 const picture =
-  (mediaType: string, draw: (input: KitInput & { theme: Theme }) => Uint8Array | string) =>
+  (
+    ending: string,
+    mediaType: string,
+    draw: (input: KitInput & { theme: Theme }) => Uint8Array | string,
+  ) =>
   (input: KitInput, status: number): PackedPage => {
     const drawn = draw({ ...input, theme: input.theme ?? "light" });
     const bytes = typeof drawn === "string" ? Buffer.from(drawn, "utf8") : drawn;
-    return packBytes(status, mediaType, bytes, FOR_OTHERS);
+    return packBytes(status, mediaType, bytes, {
+      ...FOR_OTHERS,
+      "content-disposition": `inline; filename="${input.stem}.${ending}"`,
+    });
   };
 
 const PARTS: Readonly<Record<string, KitPart>> = {
@@ -59,9 +66,17 @@ const PARTS: Readonly<Record<string, KitPart>> = {
     asks: "theme",
     draw: (input, status) => ({ ...packPage(status, toCardPage(input)), framed: true }),
   },
-  "figure.svg": { saysWithdrawn: true, asks: "theme", draw: picture("image/svg+xml", toCardSvg) },
-  "figure.png": { saysWithdrawn: true, asks: "theme", draw: picture("image/png", toCardPng) },
-  "og.png": { saysWithdrawn: true, asks: null, draw: picture("image/png", toLinkPng) },
+  "figure.svg": {
+    saysWithdrawn: true,
+    asks: "theme",
+    draw: picture("svg", "image/svg+xml", toCardSvg),
+  },
+  "figure.png": {
+    saysWithdrawn: true,
+    asks: "theme",
+    draw: picture("png", "image/png", toCardPng),
+  },
+  "og.png": { saysWithdrawn: true, asks: null, draw: picture("png", "image/png", toLinkPng) },
   "report.pdf": {
     saysWithdrawn: false,
     asks: "paper",
