@@ -4,6 +4,7 @@ import { useMemo, type KeyboardEvent } from "react";
 import { COMPARE_KEY_WIDTH, toCompareFigure, type CompareFigure } from "@/lib/charts/compare";
 import { toMapKey } from "@/lib/charts/compare-map";
 import { formatFrequency } from "@/lib/charts/format";
+import { findHighest } from "@/lib/charts/series-levels";
 import { toWallPitch } from "@/lib/charts/wall-pitch";
 import {
   letterOf,
@@ -11,6 +12,7 @@ import {
   toDifferenceWords,
   toLimitText,
 } from "@/lib/compare/compare-words";
+import { sayCriterion } from "@/lib/result/criteria";
 import type { Comparison } from "@/lib/compare/comparison-schema";
 import { CrosshairProvider, useCrosshair } from "../parts/crosshair";
 import { FigureSvg } from "../parts/figure-svg";
@@ -68,7 +70,7 @@ function Figure({ comparison }: { comparison: Comparison }) {
           </ul>
         )}
       </div>
-      <LimitValues comparison={comparison} />
+      <LimitValues comparison={comparison} figure={figure} />
     </div>
   );
 }
@@ -174,7 +176,7 @@ function moveOf(key: string, at: number, count: number): number | null {
   }
 }
 
-function LimitValues({ comparison }: { comparison: Comparison }) {
+function LimitValues({ comparison, figure }: { comparison: Comparison; figure: CompareFigure }) {
   const { tests, bands_Hz: bandsHz } = comparison;
   const columns = useMemo(
     () => [
@@ -196,7 +198,24 @@ function LimitValues({ comparison }: { comparison: Comparison }) {
       })),
     [comparison, bandsHz],
   );
-  return <ValuesTable caption="Output limits by band" columns={columns} rows={rows} />;
+  return (
+    <ValuesTable
+      caption="Output limits by band"
+      columns={columns}
+      rows={rows}
+      file={{
+        stem: "compare",
+        title: tests.map((test, at) => `${letterOf(at)} ${test.model}`).join(", "),
+        parts: [
+          { figure: figure.staff, x: 0, y: 0 },
+          { figure: figure.plot, x: figure.staff.width, y: 0 },
+          { figure: figure.key, x: figure.staff.width + figure.plot.width, y: 0 },
+        ],
+        levelDb: findHighest(tests.flatMap((test) => test.bands.map((band) => band.spl_dB))),
+        criterion: `limit: ${sayCriterion(comparison.criterion)}`,
+      }}
+    />
+  );
 }
 
 function toCells({ tests }: Comparison, hz: number, at: number): Record<string, string> {

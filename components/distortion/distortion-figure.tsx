@@ -4,11 +4,11 @@ import { useMemo, type KeyboardEvent } from "react";
 import { toDistortionFigure } from "@/lib/charts/distortion";
 import { DISTORTION_LAYOUT, type DistortionLayout } from "@/lib/charts/distortion-layout";
 import { sayComponent, THD, type Component } from "@/lib/charts/distortion-parts";
-import { sayDistortion, toDistortionReadout } from "@/lib/charts/distortion-words";
+import { sayDistortion, sayRun, toDistortionReadout } from "@/lib/charts/distortion-words";
 import { formatFrequency } from "@/lib/charts/format";
 import { toHarmonicMap, toHarmonicRows } from "@/lib/charts/harmonic-map";
 import { selectionShapes, tabShapes } from "@/lib/charts/selection";
-import { listPlainLevels } from "@/lib/charts/series-levels";
+import { findHighest, listPlainLevels } from "@/lib/charts/series-levels";
 import { COLOURS } from "@/lib/charts/tokens";
 import type { Result, ResultRun } from "@/lib/result/result-schema";
 import { useCrosshair } from "../parts/crosshair";
@@ -31,6 +31,8 @@ interface DistortionFigureProps {
   onSelect: (nominalHz: number) => void;
 }
 
+/** Between the curves and the map, px. */
+const MAP_GAP = 8;
 const LEAST_PITCH = 27;
 const MOST_PITCH = 42;
 
@@ -154,6 +156,16 @@ export function DistortionFigure({
       )}
       <ValuesTable
         caption="Distortion by band, percent of the fundamental"
+        file={{
+          stem: `distortion-${run.file.replace(/\.[^.]*$/, "")}`,
+          title: `distortion, ${sayRun(run)}`,
+          parts: [
+            { figure, x: 0, y: 0 },
+            { figure: map.staff, x: 0, y: figure.height + MAP_GAP },
+            { figure: map.plot, x: map.staff.width, y: figure.height + MAP_GAP },
+          ],
+          levelDb: findHighest(run.spl_dB) ?? run.level_dB,
+        }}
         columns={[
           { key: "band", head: "band" },
           { key: "0", head: "THD_F" },

@@ -9,8 +9,10 @@ import {
   formatSigned,
 } from "@/lib/charts/format";
 import { toInputOutputFigure } from "@/lib/charts/input-output";
-import { isPlain, listPlainLevels } from "@/lib/charts/series-levels";
+import type { CurveFigure } from "@/lib/charts/curve-figure";
+import { findHighest, isPlain, listPlainLevels } from "@/lib/charts/series-levels";
 import type { Band, Result } from "@/lib/result/result-schema";
+import type { FigureFile } from "../parts/figure-file";
 import { CurvePlot } from "../parts/curve-plot";
 import { useWidth } from "../parts/use-width";
 import { ValuesTable } from "../parts/values-table";
@@ -48,6 +50,7 @@ export function InputOutput({ result, band }: InputOutputProps) {
       )}
       <ValuesTable
         caption={`Expected and measured level, ${formatFrequency(band.nominal_Hz)} band`}
+        {...(figure === null ? {} : { file: toFile(band, figure) })}
         columns={[
           { key: "run", head: "run" },
           { key: "expected", head: "expected, dB" },
@@ -69,6 +72,13 @@ export function InputOutput({ result, band }: InputOutputProps) {
     </div>
   );
 }
+
+const toFile = (band: Band, figure: CurveFigure): FigureFile => ({
+  stem: `input-output-${band.nominal_Hz}-hz`,
+  title: `measured over expected level, ${formatFrequency(band.nominal_Hz)} band`,
+  parts: [{ figure, x: 0, y: 0 }],
+  levelDb: findHighest(band.levels.flatMap((level) => [level.spl_dB, level.expected_dB])),
+});
 
 const toCell = (value: number | null, format: (value: number) => string) =>
   value === null ? <NoValue say="in the noise" /> : format(value);

@@ -2,12 +2,15 @@ import type { BandColumn, BandColumns } from "@/lib/charts/band-columns";
 import { sayCause, sayLimit, sayOnset } from "@/lib/charts/band-words";
 import type { MapRow } from "@/lib/charts/compression-map";
 import { formatFrequency, formatLevel, formatNumber } from "@/lib/charts/format";
+import type { FigureFile } from "../parts/figure-file";
 import { ValuesTable } from "../parts/values-table";
 
 interface LimitTableProps {
   columns: BandColumns;
   rows: readonly MapRow[];
   withDecisions: boolean;
+  /** The wall and the map, to be saved. */
+  file: FigureFile;
 }
 
 const DECISIONS = { open: "open", confirmed: "confirmed", changed: "changed" } as const;
@@ -17,11 +20,13 @@ export function LimitTable({
   columns: { columns, levels, spl },
   rows,
   withDecisions,
+  file,
 }: LimitTableProps) {
   const unit = spl ? "dB SPL" : "dB, run level";
   return (
     <ValuesTable
       caption="Output limit and compression by band"
+      file={file}
       columns={[
         { key: "band", head: "band" },
         { key: "limit", head: `limit, ${unit}`, words: true },

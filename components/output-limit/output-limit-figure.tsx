@@ -5,8 +5,10 @@ import { toBandColumns, type BandDecision } from "@/lib/charts/band-columns";
 import { sayFinding } from "@/lib/charts/band-words";
 import { toCompressionMap, toMapRows } from "@/lib/charts/compression-map";
 import { formatFrequency } from "@/lib/charts/format";
+import { findHighest } from "@/lib/charts/series-levels";
 import { toWall } from "@/lib/charts/wall";
 import { toWallPitch } from "@/lib/charts/wall-pitch";
+import { sayCriterion } from "@/lib/result/criteria";
 import type { Result } from "@/lib/result/result-schema";
 import type { Criterion } from "@/lib/series/series-schema";
 import { CauseKey } from "./cause-key";
@@ -124,7 +126,24 @@ function Figure({
         </div>
         {!keyed && <CauseKey />}
       </div>
-      <LimitTable columns={columns} rows={rows} withDecisions={withDecisions} />
+      <LimitTable
+        columns={columns}
+        rows={rows}
+        withDecisions={withDecisions}
+        file={{
+          stem: "output-limit",
+          title: "output limit and compression by band",
+          parts: [
+            { figure: wall.staff, x: 0, y: 0 },
+            { figure: wall.plot, x: wall.staff.width, y: 0 },
+            { figure: map.staff, x: 0, y: wall.plot.height },
+            { figure: map.plot, x: wall.staff.width, y: wall.plot.height },
+            { figure: wall.key, x: wall.staff.width + wall.plot.width, y: 0 },
+          ],
+          levelDb: findHighest(columns.columns.map((column) => column.topDb)),
+          criterion: `limit: ${sayCriterion(criterion)}`,
+        }}
+      />
     </div>
   );
 }

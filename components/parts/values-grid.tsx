@@ -9,6 +9,8 @@ import {
   useTable,
 } from "@tanstack/react-table";
 import { useMemo, type ReactNode } from "react";
+import { FigureDownloads } from "./figure-downloads";
+import type { FigureFile } from "./figure-file";
 import { SortTh, Table, TableFrame, Td } from "./table";
 
 export interface ValuesColumn {
@@ -31,6 +33,8 @@ export interface ValuesGridProps {
   columns: readonly ValuesColumn[];
   /** One row per band or frequency; the first column is its head. */
   rows: readonly ValuesRow[];
+  /** The figure itself, to be saved as a file. */
+  file?: FigureFile;
 }
 
 const features = tableFeatures({
@@ -52,7 +56,7 @@ export function toSortValue(cell: ReactNode): number | undefined {
 }
 
 /** Numbers of a figure; any column sorts them. */
-export function ValuesGrid({ caption, columns, rows }: ValuesGridProps) {
+export function ValuesGrid({ caption, columns, rows, file }: ValuesGridProps) {
   const defined = useMemo(
     () =>
       helper.columns(
@@ -70,48 +74,51 @@ export function ValuesGrid({ caption, columns, rows }: ValuesGridProps) {
   const table = useTable({ features, columns: defined, data });
   const wordsOf = new Set(columns.filter((column) => column.words).map((column) => column.key));
   return (
-    <TableFrame label={caption} className="mt-2">
-      <Table>
-        <caption className="sr-only">{caption}</caption>
-        <thead>
-          {table.getHeaderGroups().map((group) => (
-            <tr key={group.id}>
-              {group.headers.map((header, at) => (
-                <SortTh
-                  key={header.id}
-                  right={at > 0 && !wordsOf.has(header.id)}
-                  sorted={toDirection(header.column.getIsSorted())}
-                  onSort={() => header.column.toggleSorting()}
-                >
-                  {columns[at]?.head}
-                </SortTh>
-              ))}
-            </tr>
-          ))}
-        </thead>
-        <tbody>
-          {table.getRowModel().rows.map(({ original: row }) => (
-            <tr key={row.id} className="hover:bg-wash">
-              {columns.map((column, at) =>
-                at === 0 ? (
-                  <th
-                    key={column.key}
-                    scope="row"
-                    className="figures border-t border-rule px-2.5 py-1.5 pl-4! text-figure font-medium whitespace-nowrap"
+    <>
+      {file !== undefined && <FigureDownloads file={file} columns={columns} rows={rows} />}
+      <TableFrame label={caption} className="mt-2">
+        <Table>
+          <caption className="sr-only">{caption}</caption>
+          <thead>
+            {table.getHeaderGroups().map((group) => (
+              <tr key={group.id}>
+                {group.headers.map((header, at) => (
+                  <SortTh
+                    key={header.id}
+                    right={at > 0 && !wordsOf.has(header.id)}
+                    sorted={toDirection(header.column.getIsSorted())}
+                    onSort={() => header.column.toggleSorting()}
                   >
-                    {row.cells[column.key]}
-                  </th>
-                ) : (
-                  <Td key={column.key} figures right={column.words !== true} className="py-1.5!">
-                    {row.cells[column.key]}
-                  </Td>
-                ),
-              )}
-            </tr>
-          ))}
-        </tbody>
-      </Table>
-    </TableFrame>
+                    {columns[at]?.head}
+                  </SortTh>
+                ))}
+              </tr>
+            ))}
+          </thead>
+          <tbody>
+            {table.getRowModel().rows.map(({ original: row }) => (
+              <tr key={row.id} className="hover:bg-wash">
+                {columns.map((column, at) =>
+                  at === 0 ? (
+                    <th
+                      key={column.key}
+                      scope="row"
+                      className="figures border-t border-rule px-2.5 py-1.5 pl-4! text-figure font-medium whitespace-nowrap"
+                    >
+                      {row.cells[column.key]}
+                    </th>
+                  ) : (
+                    <Td key={column.key} figures right={column.words !== true} className="py-1.5!">
+                      {row.cells[column.key]}
+                    </Td>
+                  ),
+                )}
+              </tr>
+            ))}
+          </tbody>
+        </Table>
+      </TableFrame>
+    </>
   );
 }
 

@@ -30,6 +30,7 @@ export function ValuesTable({ summary = "Table of values", ...grid }: ValuesTabl
           <path d="M1.2 1 5.4 5 1.2 9" fill="none" stroke="currentColor" strokeWidth="1.8" />
         </svg>
         {summary}
+        {grid.file !== undefined && ", PNG, SVG, CSV"}
       </summary>
       {opened && <ValuesGrid {...grid} />}
     </details>

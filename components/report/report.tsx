@@ -6,7 +6,8 @@ import type { Figure } from "@/lib/charts/figure";
 import { COLOURS } from "@/lib/charts/tokens";
 import { alertShapes, brandShapes, SAFETY } from "@/lib/kit/brand-shapes";
 import { toAltText, toName } from "@/lib/kit/kit-words";
-import { measureText, wrapText } from "@/lib/kit/outlines";
+import { wrapText } from "@/lib/charts/text-lines";
+import { measureText } from "@/lib/kit/outlines";
 import { toPublishedMapRows, toReportFigure } from "@/lib/kit/report-figure";
 import {
   toCaption,

@@ -34,3 +34,9 @@ export function meanOf(values: readonly (number | null | undefined)[]): number |
   const there = values.filter((value) => value !== null && value !== undefined);
   return there.length === 0 ? null : there.reduce((sum, value) => sum + value, 0) / there.length;
 }
+
+/** The highest of the values that are there; null where none is. */
+export function findHighest(values: readonly (number | null | undefined)[]): number | null {
+  const there = values.filter((value) => value !== null && value !== undefined);
+  return there.length === 0 ? null : Math.max(...there);
+}

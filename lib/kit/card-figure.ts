@@ -15,7 +15,8 @@ import {
   type CardSize,
 } from "./card-layout";
 import { toMarkWords, toSource } from "./kit-words";
-import { measureText, toLineShapes } from "./outlines";
+import { toLineShapes } from "../charts/text-lines";
+import { measureText } from "./outlines";
 import type { Standing } from "./standing";
 
 const SIGNAL_BOX = 104;

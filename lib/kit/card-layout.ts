@@ -5,7 +5,8 @@
 import type { HearingNotice } from "../exposure/notices";
 import type { Snapshot } from "../publication/snapshot-schema";
 import { toAnswer, toMethodWords, toPublishedNotice } from "../reader/page-words";
-import { measureText, wrapText, type TextLook } from "./outlines";
+import { wrapText, type TextLook } from "../charts/text-lines";
+import { measureText } from "./outlines";
 import { toStandingSentence, type Standing } from "./standing";
 
 export interface CardSize {

@@ -1,10 +1,10 @@
 /** What goes with every part of the summary kit: answer, method line, hearing notice, source. */
 import { formatFrequency, formatLevel } from "../charts/format";
-import type { HearingNotice } from "../exposure/notices";
 import type { Snapshot } from "../publication/snapshot-schema";
 import { toAnswer, toMethodWords, toPublishedNotice } from "../reader/page-words";
 import { toPartsOfSound, toReachedWords } from "../reader/parts-of-sound";
 import { toLongDay } from "../time/time-words";
+import { toNoticeSentence } from "./notice-sentence";
 
 /** "Osier 8A by Withy Lane". */
 export const toName = ({ loudspeaker: { maker, model } }: Snapshot): string =>
@@ -13,10 +13,6 @@ export const toName = ({ loudspeaker: { maker, model } }: Snapshot): string =>
 /** "Reedholm Test Lab, 14 May 2026". */
 export const toSource = (snapshot: Snapshot, timeZone: string): string =>
   `${snapshot.lab.name}, ${toLongDay(new Date(snapshot.published_at), timeZone)}`;
-
-/** "WARNING. At least 102 dB at 1 m: not without hearing protection." */
-export const toNoticeSentence = (notice: HearingNotice): string =>
-  `${notice.signal}. ${notice.lead} ${notice.text}`;
 
 /** What the marks of the wall mean, in as many words as a picture has room for. */
 export function toMarkWords({ bands, measured }: Snapshot): string {

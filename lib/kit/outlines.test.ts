@@ -1,7 +1,8 @@
 import { describe, expect, it } from "vitest";
 import { flattenShapes } from "../charts/figure";
 import { COLOURS } from "../charts/tokens";
-import { measureText, outlineFigure, outlineText, wrapText, type TextLook } from "./outlines";
+import type { TextLook } from "../charts/text-lines";
+import { measureText, outlineFigure, outlineText } from "./outlines";
 
 const PROSE: TextLook = { family: "prose", size: 17, weight: 700 };
 const FIGURES: TextLook = { family: "figures", size: 12 };
@@ -77,18 +78,5 @@ describe("outlines", () => {
     });
     const kinds = flattenShapes(figure.shapes).map((shape) => shape.kind);
     expect(kinds).toEqual(["group", "group", "path", "path"]);
-  });
-});
-
-describe("wrapText", () => {
-  const measure = (text: string): number => text.length;
-  it.each([
-    ["a bb ccc", 4, ["a bb", "ccc"]],
-    ["a 93\u00a0dB b", 4, ["a", "93\u00a0dB", "b"]],
-    ["longerthanroom a", 5, ["longerthanroom", "a"]],
-    ["", 5, []],
-    ["  spaced   out ", 20, ["spaced out"]],
-  ])("%j in %d", (text, room, lines) => {
-    expect(wrapText(text, room, measure)).toEqual(lines);
   });
 });

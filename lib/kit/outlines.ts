@@ -1,9 +1,8 @@
 /** Text as outlines, and its width: pictures then look the same wherever they are opened. */
 import type { Font, Glyph, PathCommand } from "opentype.js/dist/opentype.mjs";
 import { round2, type Figure, type PathShape, type Shape, type TextShape } from "../charts/figure";
+import type { TextLook } from "../charts/text-lines";
 import { findFont, toStaticWeight } from "./static-fonts";
-
-export type TextLook = Pick<TextShape, "size" | "weight" | "family" | "tighten">;
 
 interface SetGlyph {
   glyph: Glyph;
@@ -79,32 +78,3 @@ export const outlineFigure = (figure: Figure): Figure => ({
   ...figure,
   shapes: outlineShapes(figure.shapes),
 });
-
-/**
- * Lines no wider than the room; breaks at plain spaces alone, so that number and unit stay
- * together. A word wider than the room stands on a line of its own.
- * @param measure width of a text, px
- */
-export function wrapText(
-  text: string,
-  roomPx: number,
-  measure: (text: string) => number,
-): string[] {
-  const lines: string[] = [];
-  let line = "";
-  for (const word of text.split(" ").filter((one) => one !== "")) {
-    const longer = line === "" ? word : `${line} ${word}`;
-    if (line !== "" && measure(longer) > roomPx) {
-      lines.push(line);
-      line = word;
-    } else line = longer;
-  }
-  return line === "" ? lines : [...lines, line];
-}
-
-/** Base lines of a paragraph. @param y of the first; @param step from line to line. */
-export const toLineShapes = (
-  lines: readonly string[],
-  { x, y, step, ...look }: TextLook & Pick<TextShape, "x" | "y" | "fill"> & { step: number },
-): TextShape[] =>
-  lines.map((text, at) => ({ kind: "text", x, y: round2(y + at * step), text, ...look }));

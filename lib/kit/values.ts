@@ -10,7 +10,8 @@ import {
   toSplUncertaintyWords,
 } from "../reader/page-words";
 import { parseCsv, toCsvLine } from "./csv";
-import { toName, toNoticeSentence, toSource } from "./kit-words";
+import { toName, toSource } from "./kit-words";
+import { toNoticeSentence } from "./notice-sentence";
 import { toStandingSentence, type Standing } from "./standing";
 
 export interface ValuesInput {

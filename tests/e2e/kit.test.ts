@@ -1,4 +1,5 @@
 /** What is carried away: the card in somebody else's page, a link that unfolds, pictures and values. */
+import { readFile } from "node:fs/promises";
 import { createServer, type Server } from "node:http";
 import type { AddressInfo } from "node:net";
 import type { Browser, Frame, Page } from "playwright-core";
@@ -12,7 +13,14 @@ import { call, openApiBench, type ApiBench } from "../api/support";
 import { TEST_PASSWORD } from "../support/lab-bench";
 import { makeReviewableSeries } from "../support/reviewable";
 import { signTestSeries } from "../support/signed-series";
-import { DESK, findAxeFaults, measureOverflow, openBrowser, PHONE, signIn } from "../support/browser";
+import {
+  DESK,
+  findAxeFaults,
+  measureOverflow,
+  openBrowser,
+  PHONE,
+  signIn,
+} from "../support/browser";
 
 let bench: ApiBench;
 let browser: Browser;
@@ -155,6 +163,45 @@ describe("the Summary tab", () => {
     }
     expect(await findAxeFaults(page)).toEqual([]);
     expect(await measureOverflow(page)).toBeLessThanOrEqual(0);
+    await lab.close();
+  });
+});
+
+describe("a figure of a screen", () => {
+  it("is saved as SVG and PNG with its notice, its table as CSV", async () => {
+    const { accountId } = bench.all.scope;
+    const who = { url: bench.product.url, email: `all.${accountId.slice(0, 8)}@lab.test` };
+    const lab = await signIn(browser, { ...who, password: TEST_PASSWORD }, DESK);
+    const page = await lab.newPage();
+    const save = async (kind: string): Promise<Buffer> => {
+      const [file] = await Promise.all([
+        page.waitForEvent("download"),
+        page.getByRole("button", { name: kind, exact: true }).first().click(),
+      ]);
+      return readFile(await file.path());
+    };
+    for (const [view, words] of [
+      ["output-limit", "compression dB"],
+      ["distortion", "THD_F"],
+    ] as const) {
+      await page.goto(`/series/${seriesId}/${view}`);
+      await page.getByText("Table of values, PNG, SVG, CSV").first().click();
+      const svg = (await save("SVG")).toString();
+      expect(svg).toContain("Osier 8A: ");
+      expect(svg).toContain("@font-face");
+      expect(svg).toContain("WARNING");
+      expect(svg).not.toMatch(/NaN|light-dark/);
+      const size = /width="([\d.]+)" height="([\d.]+)"/.exec(svg)?.slice(1).map(Number);
+      const png = await save("PNG");
+      expect([png.readUInt32BE(16), png.readUInt32BE(20)]).toEqual(
+        size?.map((px) => Math.ceil(px * 2)),
+      );
+      const csv = (await save("CSV")).toString().split("\r\n");
+      expect(csv.slice(0, 3).join(" ")).toContain("# WARNING.");
+      expect(csv.filter((line) => !line.startsWith("#") && line !== "")).toHaveLength(28);
+      expect(csv[3]).toContain(words);
+      expect(await findAxeFaults(page)).toEqual([]);
+    }
     await lab.close();
   });
 });
