@@ -132,6 +132,22 @@ describe("the card", () => {
     expect(await ground("?theme=dark", "light")).toBe(dark);
   });
 
+  it("has its style and its fonts in a frame without an origin of its own, too", async () => {
+    const page = await openArticle(
+      `<iframe sandbox="allow-scripts" src="${address}/card" width="640" height="360"></iframe>`,
+    );
+    const frame = await frameOf(page);
+    expect(
+      await frame.evaluate<string[]>(
+        "document.fonts.ready.then(() => [...document.fonts].map((one) => one.status))",
+      ),
+    ).toEqual(["loaded", "loaded", "loaded"]);
+    expect(await frame.evaluate("getComputedStyle(document.body).backgroundColor")).toBe(
+      "rgb(251, 253, 252)",
+    );
+    await page.context().close();
+  });
+
   it("is the only thing that may be framed", async () => {
     const page = await openArticle(`<iframe src="${address}"></iframe>`);
     const frame = await frameOf(page);

@@ -106,7 +106,7 @@ const PARTS: Readonly<Record<string, KitPart>> = {
 };
 
 const KEPT = 200;
-const kept = new Map<string, PackedPage>();
+const kept = new Map<string, Promise<PackedPage>>();
 
 /** @param params of /t/[lab]/[series]/[revision]/[file] */
 export function answerKit(
@@ -126,9 +126,7 @@ export function answerKit(
     }
     const choice = readChoice(request, part);
     const key = JSON.stringify([file, choice, rows, getEnvironment().publicUrl]);
-    const page = kept.get(key) ?? (await drawPart(part, rows, choice));
-    keep(key, page);
-    return answerPage(request, page);
+    return answerPage(request, await keep(key, () => drawPart(part, rows, choice)));
   });
 }
 
@@ -143,11 +141,15 @@ function readChoice(request: Request, { asks }: KitPart): Choice {
   };
 }
 
-function keep(key: string, page: PackedPage): void {
+/** Drawn once, however many ask at the same time; a drawing that failed is tried again. */
+function keep(key: string, draw: () => Promise<PackedPage>): Promise<PackedPage> {
+  const page = kept.get(key) ?? draw();
   kept.delete(key);
   kept.set(key, page);
+  page.catch(() => kept.delete(key));
   const [oldest] = kept.keys();
   if (kept.size > KEPT && oldest !== undefined) kept.delete(oldest);
+  return page;
 }
 
 async function drawPart(part: KitPart, rows: RevisionRows, choice: Choice): Promise<PackedPage> {
