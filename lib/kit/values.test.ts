@@ -73,6 +73,24 @@ describe("values as CSV", () => {
   });
 });
 
+describe("values from a space without absolute levels", () => {
+  it("say so, and come back as they were", () => {
+    const relative: Snapshot = {
+      ...snapshot,
+      spl_valid: false,
+      bands: snapshot.bands.map((band) => ({
+        ...band,
+        limit: { ...band.limit, spl_dB: null },
+        levels: band.levels.map((level) => ({ ...level, spl_dB: null, expected_dB: null })),
+      })),
+    };
+    const csv = toValuesCsv(inputOf(relative));
+    expect(csv).toContain("no absolute level holds in this space");
+    expect(csv).not.toContain("dB SPL at 1 m");
+    expect(parseValuesCsv(csv)).toEqual(relative.bands);
+  });
+});
+
 describe("values as JSON", () => {
   it("hold the kept text byte for byte, under its digest", () => {
     const json = toValuesJson(inputOf(snapshot), text);

@@ -191,7 +191,9 @@ function toComments(input: ValuesInput): string[] {
     ...(about.note === null ? [] : [about.note]),
     about.answer.join(" "),
     about.method,
-    `Levels: dB SPL at ${STATED_AT_M} m, ${about.weighting}; limit: ${about.criterion}`,
+    input.snapshot.spl_valid
+      ? `Levels: dB SPL at ${STATED_AT_M} m, ${about.weighting}; limit: ${about.criterion}`
+      : `Levels: on the scale of the runs, because no absolute level holds in this space; limit: ${about.criterion}`,
     ...(notice === null ? [] : [toNoticeSentence(notice)]),
     ...(about.uncertainty === null ? [] : [`Uncertainty: ${about.uncertainty}`]),
     `${about.page} SHA-256 ${about.digest}`,
