@@ -46,7 +46,12 @@ export function toCardPage({ snapshot, standing, theme, page }: CardProps): stri
             <a href="${page}" target="_blank" rel="noopener"><b>${model}</b> ${maker}</a>
             <span class="brand">${BRAND_MARK}Tidemark</span>
           </p>
-          ${sentence !== null && html`<p class="standing" role="note">${sentence}</p>`}
+          ${
+            sentence !== null &&
+            (withdrawn
+              ? html`<h1 class="standing">${sentence}</h1>`
+              : html`<p class="standing" role="note">${sentence}</p>`)
+          }
           ${!withdrawn && toFindings(snapshot, standing, page)}
           <footer>
             ${notice !== null && toNotice(notice, "slim")}

@@ -53,7 +53,7 @@ export function RevisionList({ seriesId, revisions, mayPublish }: RevisionListPr
               className="text-small"
               href={toApiPath(getEvidence, { publicationId: one.id })}
               download
-              aria-label={`Evidence of revision ${one.revision}, ZIP`}
+              aria-label={`Evidence, ZIP${one.evidence_public ? "" : " (not given to readers)"}, revision ${one.revision}`}
             >
               Evidence, ZIP{one.evidence_public ? "" : " (not given to readers)"}
             </a>

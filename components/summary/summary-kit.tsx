@@ -112,7 +112,7 @@ function Kit({ kit, path }: { kit: SummaryKit; path: string }) {
 /** As it will stand in the article; the wide one needs the room of a desk. */
 function Cards({ path, height }: { path: string; height: number }) {
   return (
-    <div className="mt-3 flex flex-wrap items-start gap-6 bg-wash p-4 max-md:p-2">
+    <div className="mt-3 flex flex-wrap items-start gap-3 bg-wash p-2">
       <iframe
         className="max-md:hidden"
         src={`${path}/card`}
