@@ -153,7 +153,7 @@ function Report({ snapshot, standing, page, paper }: ReportProps) {
         <Text style={styles.caption}>{toCaption(snapshot)}</Text>
         <Parts snapshot={snapshot} />
         <Notice snapshot={snapshot} />
-        <View style={[styles.row, { gap: COLUMN_GAP }]}>
+        <View style={[styles.row, { gap: COLUMN_GAP, marginTop: 4 }]}>
           <View style={styles.column}>
             <Text style={styles.title}>Method</Text>
             <Text style={styles.prose}>{toReportMethod(snapshot)}</Text>

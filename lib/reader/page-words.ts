@@ -45,7 +45,10 @@ export function toMethodWords(snapshot: Pick<Snapshot, "measured" | "criterion">
   return `Sine sweep, one tone at a time, about ${bandS}${NBSP}s per band, unweighted, level at 1${NBSP}m (3.3${NBSP}ft); limit: ${toLimitWords(snapshot.criterion)}. Music differs.`;
 }
 
-/** The hearing notice of a view that shows this publication's levels; null where no level stands in it. */
+/**
+ * The hearing notice of a view that shows this publication's levels; null where no level stands in it.
+ * Where no absolute level holds, the levels of the runs stand in the view, and count.
+ */
 export function toPublishedNotice(
   snapshot: Pick<Snapshot, "bands" | "loudspeaker">,
 ): HearingNotice | null {
@@ -53,7 +56,9 @@ export function toPublishedNotice(
     band.limit.spl_dB ?? [],
     ...band.levels.map((level) => level.spl_dB ?? []),
   ]);
-  const shown = levels.flat();
+  const absolute = levels.flat();
+  const runs = snapshot.bands.flatMap((band) => band.levels.map((level) => level.level_dB));
+  const shown = absolute.length === 0 ? runs : absolute;
   if (shown.length === 0) return null;
   return toMaxLevelNotice({
     levelDb: Math.max(...shown),

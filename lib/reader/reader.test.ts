@@ -202,6 +202,15 @@ describe("words of the page", () => {
     expect(notice?.signal).toBe("WARNING");
     expect(notice?.lead).toContain("At least");
     expect(toPublishedNotice({ ...snapshot, bands: [] })).toBeNull();
+    const relative = snapshot.bands.map((band) => ({
+      ...band,
+      limit: { ...band.limit, spl_dB: null },
+      levels: band.levels.map((level) => ({ ...level, spl_dB: null })),
+    }));
+    expect(toPublishedNotice({ ...snapshot, bands: relative })).toMatchObject({
+      signal: "WARNING",
+      lead: "At least 102\u00a0dB at 1\u00a0m:",
+    });
   });
 
   it("take the estimate for music as the calculator's start", () => {
