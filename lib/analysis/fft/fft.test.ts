@@ -62,6 +62,12 @@ describe("planComplexFft", () => {
 });
 
 describe("planRealFft", () => {
+  it("refuses what its kernel cannot address, before it takes any memory", () => {
+    expect(() => planRealFft(2 ** 28)).toThrow(
+      expect.objectContaining({ code: "audio.too-large" }),
+    );
+  });
+
   it.each(SIZES.map((n) => 2 * n))("%i points: spectrum, power and the way back", (size) => {
     const samples = noise(size, size);
     const plan = planRealFft(size);

@@ -4,7 +4,6 @@
  */
 import type { Plans } from "../../analysis/cell-power";
 import type { SweepInUse } from "../../analysis/deconvolution";
-import { planComplexFft } from "../../analysis/fft/complex-fft";
 import { toFftSize } from "../../analysis/fft/real-fft";
 import type { FoundSweep } from "../../analysis/sweep-in-recording";
 import { median } from "./median";
@@ -55,7 +54,8 @@ export function measureBandArrivals(
     hz * HALF_WIDTH < Math.min(0.95 * sweep.stopHz, 0.45 * rateHz);
     hz *= step
   ) {
-    const peak = toPeakS(spectrum, hz / HALF_WIDTH / binHz, (hz * HALF_WIDTH) / binHz, fft.size);
+    const range = [hz / HALF_WIDTH / binHz, (hz * HALF_WIDTH) / binHz] as const;
+    const peak = toPeakS(spectrum, range, fft.size, plans);
     if (peak === null) continue;
     arrivals.push({ hz, delayS: (peak * fft.size - (lag - from)) / rateHz });
   }
@@ -63,17 +63,23 @@ export function measureBandArrivals(
 }
 
 /** Where the envelope of bins low to high is largest, as a share of the whole; null where nothing stands out. */
-function toPeakS(spectrum: Float64Array, low: number, high: number, size: number): number | null {
+function toPeakS(
+  spectrum: Float64Array,
+  [low, high]: readonly [number, number],
+  size: number,
+  plans: Plans,
+): number | null {
   const first = Math.ceil(low);
   const count = Math.floor(high) - first + 1;
   if (count < 8 || first + count > size / 2) return null;
-  const zoom = planComplexFft(toFftSize(2 * count));
+  const zoom = plans.complex(toFftSize(2 * count));
   for (let k = 0; k < count; k += 1) {
     // Conjugated, so that the forward transform goes back to lag.
     const weight = 1 - Math.cos((2 * Math.PI * (k + 0.5)) / count);
     zoom.data[2 * k] = weight * (spectrum[2 * (first + k)] ?? 0);
     zoom.data[2 * k + 1] = -weight * (spectrum[2 * (first + k) + 1] ?? 0);
   }
+  zoom.data.fill(0, 2 * count);
   const lag = zoom.transform();
   const power = Float64Array.from(
     { length: zoom.size },
