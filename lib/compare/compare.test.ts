@@ -255,6 +255,24 @@ describe("what can be compared", () => {
     expect("test" in candidate && candidate.test.levels_dB).toEqual([76, 86, 96, 102]);
   });
 
+  it("takes the uncertainty that the test states, and the usual one where it states none", () => {
+    const result = makeSampleResult();
+    const stated = {
+      ...result,
+      bands: result.bands.map((band) => ({
+        ...band,
+        spl_uncertainty: { expanded_dB: 0.7, parts: [] },
+      })),
+    };
+    const [none, own] = [result, stated].map((one) => fromSeries(facts(one), JUDGED));
+    expect(
+      none && "test" in none && [none.test.uncertainty_assumed, none.test.bands[0]?.uncertainty_dB],
+    ).toEqual([true, 1]);
+    expect(
+      own && "test" in own && [own.test.uncertainty_assumed, own.test.bands[0]?.uncertainty_dB],
+    ).toEqual([false, 0.7]);
+  });
+
   it.each([
     ["no analysis", null, JUDGED, "It has no analysis yet."],
     [

@@ -53,6 +53,7 @@ export function fromSeries(facts: SeriesFacts, { criterion, kind }: Judged): Can
       band,
       limit,
       facts.causes.get(band.nominal_Hz) ?? computedCause(band, limit),
+      band.spl_uncertainty?.expanded_dB,
     );
   });
   const headline =
@@ -69,7 +70,7 @@ export function fromSeries(facts: SeriesFacts, { criterion, kind }: Judged): Can
       environment,
       distance_m: result.distance_m,
       levels_dB: toLevels(runs),
-      uncertainty_assumed: true,
+      uncertainty_assumed: result.bands.some((band) => band.spl_uncertainty == null),
       bands,
       ...(headline == null ? composeReached(bands, criterion) : toReached(headline)),
     },
@@ -107,8 +108,10 @@ export function fromSnapshot(
       environment: measured.environment,
       distance_m: measured.distance_m,
       levels_dB: [...measured.levels_dB].sort((a, b) => a - b),
-      uncertainty_assumed: true,
-      bands: snapshot.bands.map((band) => toComparedBand(band, band.limit, band.cause)),
+      uncertainty_assumed: snapshot.bands.some((band) => band.spl_uncertainty_dB == null),
+      bands: snapshot.bands.map((band) =>
+        toComparedBand(band, band.limit, band.cause, band.spl_uncertainty_dB),
+      ),
       ...(snapshot.headline === null
         ? { reached: null, reached_missing: snapshot.headline_missing }
         : toReached(snapshot.headline)),
@@ -120,6 +123,7 @@ const toComparedBand = (
   band: Pick<ComparedBand, "nominal_Hz" | "exact_Hz">,
   limit: Limit,
   cause: DecisionCause,
+  uncertaintyDb: number | null | undefined,
 ): ComparedBand => ({
   nominal_Hz: band.nominal_Hz,
   exact_Hz: band.exact_Hz,
@@ -130,7 +134,7 @@ const toComparedBand = (
   high_dB: limit.high_dB,
   bound_by: limit.bound_by,
   cause,
-  uncertainty_dB: ASSUMED_UNCERTAINTY_DB,
+  uncertainty_dB: uncertaintyDb ?? ASSUMED_UNCERTAINTY_DB,
 });
 
 type Reached = Pick<ComparedTest, "reached" | "reached_missing">;
