@@ -9,8 +9,7 @@ import { PATH_HEADER } from "@/app/_server/path-header";
 import { sessionCookieName } from "@/app/_server/session-cookie";
 import { toContentSecurityPolicy } from "@/lib/http/content-security";
 
-const PUBLIC =
-  /^\/(sign-in|invitation|forgotten-password|reset-password|confirm-address|how-we-measure)(\/|$)/;
+const PUBLIC = /^\/(sign-in|invitation|forgotten-password|reset-password|confirm-address)(\/|$)/;
 
 export function proxy(request: NextRequest): NextResponse {
   const { pathname, search } = request.nextUrl;
@@ -37,5 +36,7 @@ export function proxy(request: NextRequest): NextResponse {
 
 // Never under /api: the proxy would hold whole uploads in memory. Pages for readers have their own policy.
 export const config = {
-  matcher: ["/((?!api/|_next/|t/|preview/|published$|published/|oembed$|.*\\.[a-z0-9]+$).*)"],
+  matcher: [
+    "/((?!api/|_next/|t/|preview/|published$|published/|how-we-measure$|oembed$|.*\\.[a-z0-9]+$).*)",
+  ],
 };

@@ -45,15 +45,26 @@ export function packBytes(
 const SHARED_FOR_A_MINUTE = "public, max-age=0, s-maxage=60, must-revalidate";
 const NOT_KEPT = "private, no-store";
 
+/** Those of every answer, but for the page's own. */
+const toHeaders = ({ framed = false }: PackedPage, shared: boolean) => ({
+  "cache-control": shared ? SHARED_FOR_A_MINUTE : NOT_KEPT,
+  "content-security-policy": toPolicy(framed),
+  "referrer-policy": shared ? "strict-origin-when-cross-origin" : "same-origin",
+  "x-content-type-options": "nosniff",
+  ...(framed ? {} : { "x-frame-options": "DENY" }),
+});
+
+/** A page that is the same for everybody who asks, however they ask. */
+export const answerAlways = (page: PackedPage): Response =>
+  new Response(page.bytes, {
+    status: page.status,
+    headers: { ...toHeaders(page, true), "content-type": page.mediaType },
+  });
+
 /** @param shared false: for one reader alone, kept by nobody */
 export function answerPage(request: Request, page: PackedPage, shared = true): Response {
-  const framed = page.framed === true;
   const headers = new Headers({
-    "cache-control": shared ? SHARED_FOR_A_MINUTE : NOT_KEPT,
-    "content-security-policy": toPolicy(framed),
-    "referrer-policy": shared ? "strict-origin-when-cross-origin" : "same-origin",
-    "x-content-type-options": "nosniff",
-    ...(framed ? {} : { "x-frame-options": "DENY" }),
+    ...toHeaders(page, shared),
     ...(shared ? { etag: page.etag } : {}),
     ...page.headers,
   });

@@ -1,6 +1,7 @@
 import type { Figure } from "@/lib/charts/figure";
 import { MEASURING_PICTURES } from "@/lib/charts/measuring-pictures";
-import { FigureSvg } from "../parts/figure-svg";
+import { toSvg } from "@/lib/charts/svg-text";
+import { html, type Html } from "@/lib/html/html";
 
 const STEPS: { picture: Figure; title: string; text: string }[] = [
   {
@@ -26,16 +27,14 @@ const STEPS: { picture: Figure; title: string; text: string }[] = [
 ];
 
 /** The method in four pictures; each stands beside its words and is hidden from readers. */
-export function MeasuringSteps() {
-  return (
-    <div className="mt-10 grid gap-8 sm:grid-cols-2 lg:grid-cols-4">
-      {STEPS.map(({ picture, title, text }) => (
-        <section key={title} className="min-w-0">
-          <FigureSvg figure={picture} />
-          <h2 className="mt-3 mb-1">{title}</h2>
-          <p className="text-[16px]/6 text-ink-2">{text}</p>
-        </section>
-      ))}
-    </div>
-  );
-}
+export const toMeasuringSteps = (): Html =>
+  html`<div class="steps">
+    ${STEPS.map(
+      ({ picture, title, text }, at) =>
+        html`<section>
+          ${toSvg(picture, { id: `step${at}` })}
+          <h2>${title}</h2>
+          <p>${text}</p>
+        </section>`,
+    )}
+  </div>`;
