@@ -18,6 +18,7 @@ import {
 } from "@/lib/reader/page-words";
 import { toPartsOfSound, toReachedWords, type PartOfSound } from "@/lib/reader/parts-of-sound";
 import { USUAL_SEAT } from "@/lib/reader/seat";
+import { sayDistance, type Units } from "@/lib/reader/units";
 import { toLongDay } from "@/lib/time/time-words";
 import { toEvidenceSection } from "./evidence-section";
 import { toNotice } from "./frame";
@@ -29,6 +30,8 @@ interface PublicationParts {
   digest: string;
   /** IANA name, of the lab. */
   timeZone: string;
+  /** How distances are said; by default in metres first. */
+  units?: Units;
   /** Over the answer: replaced, preview. */
   banner: Html | false;
   /** Under the method: revisions, comments. */
@@ -37,7 +40,7 @@ interface PublicationParts {
 
 /** Everything between header and footer. */
 export function toPublicationBody(parts: PublicationParts): Html {
-  const { snapshot } = parts;
+  const { snapshot, units = "m" } = parts;
   const notice = toPublishedNotice(snapshot);
   const [first, ...rest] = toAnswer(snapshot);
   const { maker, model, kind } = snapshot.loudspeaker;
@@ -46,12 +49,12 @@ export function toPublicationBody(parts: PublicationParts): Html {
       <p class="eyebrow"><b>${model}</b> by ${maker}${kind !== "" && ` · ${kind}`}</p>
       <h1>${first}${rest.map((sentence) => html` <span>${sentence}</span>`)}</h1>
       <p class="method">
-        ${toMethodWords(snapshot)}
+        ${toMethodWords(snapshot, units)}
         ${snapshot.evidence_public && html`<a href="#check">Check this yourself.</a>`}
       </p>
       ${notice !== null && toNotice(notice, "slim")}
     </div>
-    ${toFigure(snapshot)} ${toKey(snapshot)} ${toWords(snapshot)} ${toSeat(snapshot)}
+    ${toFigure(snapshot)} ${toKey(snapshot)} ${toWords(snapshot)} ${toSeat(snapshot, units)}
     ${toParts(snapshot)} ${toEvidenceSection(snapshot)} ${toMeasured(parts)} ${parts.after}`;
 }
 
@@ -109,18 +112,26 @@ function toWords({ words, maker_statement, answer_to_maker, lab }: Snapshot): Ht
   }`;
 }
 
-function toSeat(snapshot: Snapshot): Html {
+function toSeat(snapshot: Snapshot, units: Units): Html {
+  const seat = { ...USUAL_SEAT, units };
   const source = toSeatSource(snapshot);
   const estimate =
     source.musicDbA === null
       ? "This test gives no estimate for music."
-      : `For music with peaks ${formatPlain(source.musicCrestDb)}${NBSP}dB over its mean level, one loudspeaker is estimated to reach ${source.atLeast ? "at least " : ""}${Math.floor(source.musicDbA)}${NBSP}dB(A) at 1${NBSP}m (3.3${NBSP}ft) within this limit.`;
+      : `For music with peaks ${formatPlain(source.musicCrestDb)}${NBSP}dB over its mean level, one loudspeaker is estimated to reach ${source.atLeast ? "at least " : ""}${Math.floor(source.musicDbA)}${NBSP}dB(A) at ${sayDistance(1, units)} within this limit.`;
   return html`<section class="section" aria-labelledby="seat">
       <h2 id="seat">How loud where you sit, and for how long?</h2>
-      <p class="lead">${estimate} The level at your seat follows from room and distance.</p>
+      <p class="lead">
+        ${estimate} The level at your seat follows from room and distance.
+        ${
+          units === "ft"
+            ? html`<a href="?units=m#seat">Distances in metres</a>`
+            : html`<a href="?units=ft#seat">Distances in feet</a>`
+        }
+      </p>
       <div class="calc">
-        ${toSeatForm()}
-        <div id="seat-result" aria-live="polite">${toSeatResult(source, USUAL_SEAT)}</div>
+        ${toSeatForm(units)}
+        <div id="seat-result" aria-live="polite">${toSeatResult(source, seat)}</div>
       </div>
     </section>
     <section class="section" aria-labelledby="enough">
@@ -130,7 +141,7 @@ function toSeat(snapshot: Snapshot): Html {
         reached here (a sine’s peak lies 3${NBSP}dB over its level).
       </p>
       ${toEnoughForm()}
-      <div id="enough-result" aria-live="polite">${toEnoughResult(source, USUAL_SEAT)}</div>
+      <div id="enough-result" aria-live="polite">${toEnoughResult(source, seat)}</div>
     </section>
     <script type="application/json" id="seat-source">
       ${asHtml(JSON.stringify(source).replaceAll("<", "\\u003c"))}
@@ -184,7 +195,7 @@ function toHeldBy(part: PartOfSound): Html {
   return html`${mark}${CAUSE_WORDS[part.cause]}, ${formatFrequency(part.causeHz)}`;
 }
 
-function toMeasured({ snapshot, digest, timeZone }: PublicationParts): Html {
+function toMeasured({ snapshot, digest, timeZone, units = "m" }: PublicationParts): Html {
   const { lab, loudspeaker, measured, sign_off, analysis } = snapshot;
   const day = (at: string): string => toLongDay(new Date(at), timeZone);
   const serial = loudspeaker.serial === "" ? "" : `, serial ${loudspeaker.serial}`;
@@ -224,7 +235,7 @@ function toMeasured({ snapshot, digest, timeZone }: PublicationParts): Html {
     <h2 id="measured">How this was measured</h2>
     <div class="measured">
       <div class="prose">
-        <p>${toMeasuredWords(snapshot)}</p>
+        <p>${toMeasuredWords(snapshot, units)}</p>
         <p>
           In each third-octave band the limit is the highest level under
           ${toLimitWords(snapshot.criterion)}, at that level and every lower one tested. An analyst

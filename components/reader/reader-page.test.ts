@@ -4,10 +4,11 @@ import { describe, expect, it } from "vitest";
 import { COLOURS } from "@/lib/charts/tokens";
 import { html } from "@/lib/html/html";
 import { makeSampleSnapshot } from "@/tests/support/sample-publication";
+import type { Units } from "@/lib/reader/units";
 import { toReaderPage } from "./frame";
 import { toPublicationBody } from "./publication-page";
 
-const draw = (change: Parameters<typeof makeSampleSnapshot>[0] = {}): string =>
+const draw = (change: Parameters<typeof makeSampleSnapshot>[0] = {}, units: Units = "m"): string =>
   toReaderPage({
     title: "T",
     description: "D",
@@ -16,6 +17,7 @@ const draw = (change: Parameters<typeof makeSampleSnapshot>[0] = {}): string =>
       snapshot: makeSampleSnapshot(change),
       digest: "f".repeat(64),
       timeZone: "UTC",
+      units,
       banner: false,
       after: false,
     }),
@@ -31,6 +33,17 @@ describe("the public page", () => {
     expect(text).toContain("3.0\u00a0m (9.8\u00a0ft)");
     expect(text.match(/<script src=/g)).toHaveLength(1);
     expect(gzipSync(text).length).toBeLessThan(60_000);
+  });
+
+  it("says distances in feet first where the address asks for it, and leads back", () => {
+    const text = draw({}, "ft");
+    expect(text).toContain("9.8\u00a0ft (3.0\u00a0m)");
+    expect(text).toContain("level at 3.3\u00a0ft (1\u00a0m)");
+    expect(text).toContain(">distance, ft</text>");
+    expect(text).toContain('data-units="ft"');
+    expect(text).toContain('href="?units=m#seat"');
+    expect(text).not.toContain("(9.8\u00a0ft)");
+    expect(draw()).toContain('href="?units=ft#seat"');
   });
 
   it("escapes whatever people wrote", () => {

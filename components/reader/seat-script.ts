@@ -1,5 +1,6 @@
 /** The one script of a public page: reads the two forms and draws the answers anew. */
 import { USUAL_SEAT, type ReaderSeat, type SeatSource } from "@/lib/reader/seat";
+import { readUnits } from "@/lib/reader/units";
 import { ROOM_RADIUS_M, type RoomKind } from "@/lib/exposure/seat-level";
 import { toTimeText } from "@/lib/exposure/words";
 import { toDistanceText, toEnoughResult, toSeatResult } from "./seat-section";
@@ -35,6 +36,7 @@ function readSeat(seatForm: HTMLFormElement, enoughForm: HTMLFormElement): Reade
     measuredDbA:
       text(seat, "measured") === "" ? null : number(seat, "measured", USUAL_SEAT.usualDbA, 30, 140),
     usualDbA: number(enough, "usual", USUAL_SEAT.usualDbA, 40, 120),
+    units: readUnits(seatForm.dataset["units"]),
     crestDb: number(enough, "crest", USUAL_SEAT.crestDb, 3, 30),
   };
 }
@@ -61,7 +63,7 @@ export function startReader(): void {
   const source = JSON.parse(data.textContent ?? "null") as SeatSource;
   const answer = (): void => {
     const seat = readSeat(seatForm, enoughForm);
-    put("distance-out", toDistanceText(seat.distanceM));
+    put("distance-out", toDistanceText(seat));
     put("minutes-out", toTimeText(seat.minutesPerDay * 60));
     put("seat-result", toSeatResult(source, seat).text);
     put("enough-result", toEnoughResult(source, seat).text);

@@ -13,13 +13,15 @@ import {
   type ReaderSeat,
   type SeatSource,
 } from "@/lib/reader/seat";
+import { sayDistance, type Units } from "@/lib/reader/units";
 import { toNotice } from "./frame";
 
-const FEET_PER_M = 1 / 0.3048;
-
 /** "3.0 m (9.8 ft)". */
-export const toDistanceText = (distanceM: number): string =>
-  `${distanceM.toFixed(1)}${NBSP}m (${(distanceM * FEET_PER_M).toFixed(1)}${NBSP}ft)`;
+export const toDistanceText = ({
+  distanceM,
+  units,
+}: Pick<ReaderSeat, "distanceM" | "units">): string =>
+  sayDistance(distanceM, units, (metres) => metres.toFixed(1));
 
 const ROOM_WORDS: Record<RoomKind, string> = {
   small: "a small room",
@@ -39,7 +41,7 @@ export function toSeatResult(source: SeatSource, seat: ReaderSeat): Html {
   }
   const assumed =
     seat.measuredDbA === null
-      ? `${toDistanceText(seat.distanceM)}, ${seat.pair ? "a pair" : "one loudspeaker"}, ${ROOM_WORDS[seat.room]}, turned down by ${formatPlain(seat.turnedDownDb)}${NBSP}dB, ${toTimeText(seat.minutesPerDay * 60)} a day.`
+      ? `${toDistanceText(seat)}, ${seat.pair ? "a pair" : "one loudspeaker"}, ${ROOM_WORDS[seat.room]}, turned down by ${formatPlain(seat.turnedDownDb)}${NBSP}dB, ${toTimeText(seat.minutesPerDay * 60)} a day.`
       : `${toTimeText(seat.minutesPerDay * 60)} a day.`;
   return html`${seat.measuredDbA === null && toCurves(source, seat)}
     <div class="answer">
@@ -58,6 +60,7 @@ function toCurves(source: SeatSource, seat: ReaderSeat): Html | false {
         seat: { ...seat, levelAt1mDbA },
         width,
         height,
+        units: seat.units,
         toAllowedS: (levelDbA) =>
           computeAllowedS(levelDbA, seat.allowance === "week" ? WEEK_RULES.adult : DAY_RULES.niosh),
         allowance: seat.allowance === "week" ? "week\u2019s allowance" : "day\u2019s allowance",
@@ -78,7 +81,7 @@ export function toEnoughResult(source: SeatSource, seat: ReaderSeat): Html {
   );
   const level = toSeatAnswer(source, { ...seat, measuredDbA: seat.usualDbA });
   return html`<p class="small">
-      Listening at ${seat.usualDbA}${NBSP}dB(A) from ${toDistanceText(seat.distanceM)} with peaks
+      Listening at ${seat.usualDbA}${NBSP}dB(A) from ${toDistanceText(seat)} with peaks
       ${seat.crestDb}${NBSP}dB over the mean, ${seat.pair ? "a pair" : "one loudspeaker"},
       ${ROOM_WORDS[seat.room]}.
     </p>
@@ -108,11 +111,16 @@ const radios = (
   </fieldset>`;
 
 /** Hidden until the script is there to answer. */
-export function toSeatForm(): Html {
-  const seat = USUAL_SEAT;
-  return html`<form id="seat-form" hidden aria-label="Your seat and your habit">
+export function toSeatForm(units: Units): Html {
+  const seat = { ...USUAL_SEAT, units };
+  return html`<form
+    id="seat-form"
+    data-units="${units}"
+    hidden
+    aria-label="Your seat and your habit"
+  >
     <label class="range"
-      ><span>distance <output id="distance-out">${toDistanceText(seat.distanceM)}</output></span
+      ><span>distance <output id="distance-out">${toDistanceText(seat)}</output></span
       ><input
         type="range"
         name="distance"

@@ -1,6 +1,7 @@
 /** Level over distance in the reader's room, with the reader's seat and the allowance beside it. */
 import { computeSeatLevelDbA, type Seat } from "../exposure/seat-level";
 import { toTimeText } from "../exposure/words";
+import { FEET_PER_M, type Units } from "../reader/units";
 import { round2, type Figure, type Shape } from "./figure";
 import { formatPlain, roundLevelUp } from "./format";
 import { staffShapes } from "./frame-shapes";
@@ -10,6 +11,7 @@ import { COLOURS, levelRamp, SAFETY_COLOURS } from "./tokens";
 const FROM_M = 0.5;
 const TO_M = 20;
 const TICKS_M = [0.5, 1, 2, 4, 8, 16];
+const TICKS_FT = [2, 4, 8, 16, 32, 64];
 const LEFT = 44;
 const RIGHT = 118;
 const TOP = 22;
@@ -19,6 +21,8 @@ interface DistanceCurve {
   seat: Seat;
   width: number;
   height: number;
+  /** Of the distances below. */
+  units?: Units;
   /** How long a level may last, s, on the right. */
   toAllowedS: (levelDbA: number) => number;
   allowance: string;
@@ -28,7 +32,7 @@ const safety = (colour: string) => ({ light: colour, dark: colour });
 
 /** @returns the curve from 0.5 to 20 m; the reader's seat is marked. */
 export function toDistanceCurve(curve: DistanceCurve): Figure {
-  const { seat, width, height } = curve;
+  const { seat, width, height, units = "m" } = curve;
   const levelAt = (distanceM: number): number => computeSeatLevelDbA({ ...seat, distanceM });
   const top = Math.ceil((levelAt(FROM_M) + 1) / 10) * 10;
   const foot = Math.min(70, Math.floor((levelAt(TO_M) - 5) / 10) * 10);
@@ -59,11 +63,11 @@ export function toDistanceCurve(curve: DistanceCurve): Figure {
     { kind: "line", x1: LEFT, x2: right, y1: ground, y2: ground, stroke: COLOURS.ink, crisp: true },
     ...staffShapes(scale, LEFT, TOP, 10),
     { kind: "text", x: 0, y: 12, text: "dB(A)", size: 12, fill: COLOURS.ink2 },
-    ...TICKS_M.map((m): Shape => ({
+    ...(units === "ft" ? TICKS_FT : TICKS_M).map((tick): Shape => ({
       kind: "text",
-      x: toX(m),
+      x: toX(units === "ft" ? tick / FEET_PER_M : tick),
       y: ground + 18,
-      text: formatPlain(m),
+      text: formatPlain(tick),
       size: 12,
       fill: COLOURS.ink,
       anchor: "middle",
@@ -72,7 +76,7 @@ export function toDistanceCurve(curve: DistanceCurve): Figure {
       kind: "text",
       x: right,
       y: ground + 36,
-      text: "distance, m",
+      text: `distance, ${units}`,
       size: 12,
       fill: COLOURS.ink2,
       anchor: "end",

@@ -15,6 +15,7 @@ import { toHeadlineSentences } from "../result/headline-words";
 import type { Criterion } from "../series/series-schema";
 import type { SeatSource } from "./seat";
 import { toPartsOfSound } from "./parts-of-sound";
+import { sayDistance, type Units } from "./units";
 
 /** The answer: one or two sentences, or why there is none. */
 export function toAnswer(snapshot: Pick<Snapshot, "headline" | "headline_missing">): string[] {
@@ -40,9 +41,12 @@ const toBandS = ({ start_Hz, stop_Hz, length_s }: Snapshot["measured"]["sweep"])
   length_s / (3 * Math.log2(stop_Hz / start_Hz));
 
 /** Stands with every figure of a publication. */
-export function toMethodWords(snapshot: Pick<Snapshot, "measured" | "criterion">): string {
+export function toMethodWords(
+  snapshot: Pick<Snapshot, "measured" | "criterion">,
+  units: Units = "m",
+): string {
   const bandS = toBandS(snapshot.measured.sweep).toFixed(1);
-  return `Sine sweep, one tone at a time, about ${bandS}${NBSP}s per band, unweighted, level at 1${NBSP}m (3.3${NBSP}ft); limit: ${toLimitWords(snapshot.criterion)}. Music differs.`;
+  return `Sine sweep, one tone at a time, about ${bandS}${NBSP}s per band, unweighted, level at ${sayDistance(1, units)}; limit: ${toLimitWords(snapshot.criterion)}. Music differs.`;
 }
 
 /**
@@ -88,15 +92,14 @@ export function toSeatSource(
 }
 
 /** How the test went, in one paragraph. */
-export function toMeasuredWords(snapshot: Pick<Snapshot, "measured">): string {
+export function toMeasuredWords(snapshot: Pick<Snapshot, "measured">, units: Units = "m"): string {
   const { sweep, levels_dB, long_term_levels_dB, distance_m, environment } = snapshot.measured;
   const levels = formatList(levels_dB.map((level) => formatPlain(level)));
   const longTerm =
     long_term_levels_dB.length === 0
       ? ""
       : `, and at ${formatList(long_term_levels_dB.map(formatLevel))} again after conditioning noise`;
-  const feet = (distance_m / 0.3048).toFixed(1);
-  return `One loudspeaker played a sine sweep of ${formatPlain(Math.round(sweep.length_s))} seconds, one tone at a time, at ${levels}${NBSP}dB${longTerm}. The microphone stood ${formatPlain(distance_m)}${NBSP}m (${feet}${NBSP}ft) away ${PLACE_WORDS[environment]}; levels are stated for 1${NBSP}m.`;
+  return `One loudspeaker played a sine sweep of ${formatPlain(Math.round(sweep.length_s))} seconds, one tone at a time, at ${levels}${NBSP}dB${longTerm}. The microphone stood ${sayDistance(distance_m, units)} away ${PLACE_WORDS[environment]}; levels are stated for 1${NBSP}m.`;
 }
 
 /** "1 of 27 causes changed by the analyst". */

@@ -8,6 +8,7 @@ import { computeAllowedS, DAY_RULES, WEEK_RULES } from "../exposure/rules";
 import { computeSeatLevelDbA, type RoomKind } from "../exposure/seat-level";
 import { toTimeText } from "../exposure/words";
 import type { PartOfSound } from "./parts-of-sound";
+import type { Units } from "./units";
 
 /** What the reader tells of room and habit. */
 export interface ReaderSeat {
@@ -23,6 +24,8 @@ export interface ReaderSeat {
   usualDbA: number;
   /** Peaks of the music over its mean level. */
   crestDb: number;
+  /** How distances are said. */
+  units: Units;
 }
 
 /** What the page shows before anybody has told anything, and to readers without script. */
@@ -36,6 +39,7 @@ export const USUAL_SEAT: ReaderSeat = {
   measuredDbA: null,
   usualDbA: 80,
   crestDb: 20,
+  units: "m",
 };
 
 /** What the page knows of the loudspeaker. */

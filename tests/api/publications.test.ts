@@ -149,6 +149,19 @@ describe("publishing", () => {
         sql`update publications set snapshot = '{}' where id = ${first.id}`.execute(trx),
       ),
     ).rejects.toThrow("never changed");
+
+    const read = async (path: string) => (await fetch(`${bench.product.url}${path}`)).text();
+    const old = await read(first.path);
+    expect(old).toContain("Revision 1 was replaced by revision 2 on");
+    expect(old).toContain("What changed: the unit was lent, not bought");
+    expect(old).toContain(`href="${second.newest_path}"`);
+    // Its own figures and words stand as they were.
+    expect(old).toContain("bought by the lab");
+    const newest = await read(second.newest_path);
+    expect(newest).toContain("lent by the maker");
+    expect(newest).not.toContain("was replaced by");
+    expect(newest).toContain(`href="${first.path}"`);
+    expect(await read(`${second.newest_path}?units=ft`)).toContain("9.8\u00a0ft (3.0\u00a0m)");
   });
 
   it("holds a first publication back until its embargo ends, but no correction", async () => {
@@ -239,15 +252,39 @@ describe("the maker's preview", () => {
   });
 });
 
-async function leave(link: string, form: Record<string, string>): Promise<number> {
-  const response = await fetch(link, {
+describe("comments of a maker", () => {
+  it("are counted by link: the thirteenth in an hour is refused and kept in the form", async () => {
+    const { seriesId } = await makeSeries();
+    const make = () =>
+      call(bench, createPreview, {
+        params: { seriesId },
+        body: { ...SUPPLIED, for_whom: "Withy Lane", days: 7 },
+      });
+    const { link } = await make();
+    const form = { name: "Ida", email: "ida@maker.test", words: "Once more." };
+    for (let nth = 0; nth < 12; nth += 1) expect(await leave(link, form)).toBe(303);
+    const refused = await send(link, { ...form, words: "What <b>now</b>?" });
+    expect(refused.status).toBe(422);
+    const page = await refused.text();
+    expect(page).toContain("Too many comments in a short time.");
+    expect(page).toContain("What &lt;b&gt;now&lt;/b&gt;?");
+    const { comments } = await call(bench, listPreviews, { params: { seriesId } });
+    expect(comments).toHaveLength(12);
+    // Another link has a count of its own.
+    expect(await leave((await make()).link, form)).toBe(303);
+  });
+});
+
+const send = (link: string, form: Record<string, string>): Promise<Response> =>
+  fetch(link, {
     method: "POST",
     redirect: "manual",
     headers: { origin: bench.product.url },
     body: new URLSearchParams(form),
   });
-  return response.status;
-}
+
+const leave = async (link: string, form: Record<string, string>): Promise<number> =>
+  (await send(link, form)).status;
 
 describe("comparing", () => {
   it("puts series side by side under a criterion, the first as the reference", async () => {

@@ -1,4 +1,5 @@
 import { parseRevision } from "../../../lib/publication/addresses";
+import { readUnits } from "../../../lib/reader/units";
 import { answerPage } from "./answer-page";
 import { answerNotFound, answerReader } from "./plain-answers";
 import { findPublicationPage } from "./publication-page";
@@ -14,7 +15,10 @@ export function answerPublication(
     const known = typeof lab === "string" && typeof series === "string";
     const page =
       known && (revision === undefined || wanted !== null)
-        ? await findPublicationPage({ lab, slug: series, revision: wanted })
+        ? await findPublicationPage(
+            { lab, slug: series, revision: wanted },
+            readUnits(new URL(request.url).searchParams.get("units")),
+          )
         : null;
     return page === null
       ? answerNotFound(request, "No test is published here; perhaps it is not out yet.")

@@ -14,6 +14,7 @@ import {
 } from "../../../db/queries/previews";
 import { digestSecret } from "../../../lib/account/secrets";
 import { digestText, parseSnapshotText } from "../../../lib/publication/canonical";
+import type { Units } from "../../../lib/reader/units";
 import { getDatabase } from "../database";
 import { packPage, type PackedPage } from "./answer-page";
 import { toFooter } from "./publication-page";
@@ -23,7 +24,7 @@ type Refused = Parameters<typeof toCommentSection>[0]["refused"];
 /** @returns null for a link that is unknown, revoked or expired. */
 export async function drawPreview(
   secret: string,
-  { refused, thanks }: { refused: Refused; thanks: boolean },
+  { refused, thanks, units }: { refused: Refused; thanks: boolean; units: Units },
 ): Promise<PackedPage | null> {
   const found = await findPreview(getDatabase(), digestSecret(secret));
   if (found === null) return null;
@@ -51,6 +52,7 @@ export async function drawPreview(
         snapshot,
         digest: digestText(text),
         timeZone,
+        units,
         banner: toPreviewBanner({
           forWhom: preview.for_whom,
           lab: lab.name,

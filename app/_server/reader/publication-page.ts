@@ -24,6 +24,7 @@ import { toRevisionPath } from "../../../lib/publication/addresses";
 import { parseSnapshotText } from "../../../lib/publication/canonical";
 import type { Snapshot } from "../../../lib/publication/snapshot-schema";
 import { toAnswer } from "../../../lib/reader/page-words";
+import type { Units } from "../../../lib/reader/units";
 import { getDatabase } from "../database";
 import { packPage, type PackedPage } from "./answer-page";
 import { takeTurns } from "./take-turns";
@@ -53,13 +54,16 @@ export const findRevision = (address: PublicationAddress): Promise<RevisionRows 
   look(JSON.stringify(address));
 
 /** @returns null where nothing is published at this address. */
-export async function findPublicationPage(address: PublicationAddress): Promise<PackedPage | null> {
+export async function findPublicationPage(
+  address: PublicationAddress,
+  units: Units,
+): Promise<PackedPage | null> {
   const standing = await findRevision(address);
   if (standing === null) return null;
-  const key = JSON.stringify([standing, getEnvironment().publicUrl]);
+  const key = JSON.stringify([standing, getEnvironment().publicUrl, units]);
   const known = pages.get(key);
   if (known !== undefined) return known;
-  const page = await drawPage(standing);
+  const page = await drawPage(standing, units);
   pages.set(key, page);
   const [oldest] = pages.keys();
   if (pages.size > KEPT_PAGES && oldest !== undefined) pages.delete(oldest);
@@ -92,7 +96,10 @@ export const readSnapshotText = (row: PublicationRow): Promise<string> =>
     getSnapshotText(trx, row.lab_id, row.id),
   );
 
-async function drawPage({ row, revisions, timeZone }: RevisionRows): Promise<PackedPage> {
+async function drawPage(
+  { row, revisions, timeZone }: RevisionRows,
+  units: Units,
+): Promise<PackedPage> {
   const text = await readSnapshotText(row);
   const snapshot = parseSnapshotText(text);
   const paths = { lab: snapshot.lab.slug, slug: row.slug };
@@ -130,6 +137,7 @@ async function drawPage({ row, revisions, timeZone }: RevisionRows): Promise<Pac
         snapshot,
         digest: row.digest,
         timeZone,
+        units,
         banner: toReplacedBanner({ snapshot, row, revisions, timeZone }),
         after: html`${toTakeSection({
           page: canonical,

@@ -5,6 +5,7 @@ import { countComment } from "@/app/_server/reader/comment-limit";
 import { answerNotFound, answerReader } from "@/app/_server/reader/plain-answers";
 import { drawPreview, leaveComment } from "@/app/_server/reader/preview-page";
 import { getEnvironment } from "@/lib/config/environment";
+import { readUnits } from "@/lib/reader/units";
 import { checkOrigin } from "@/lib/http/origin";
 
 const GONE = "This link is unknown, was revoked or has expired. Ask the lab for a new one.";
@@ -14,8 +15,9 @@ const answer = (request: Request, page: PackedPage | null): Response =>
 
 export const GET = (request: Request, route: RouteArguments): Promise<Response> =>
   answerReader(request, async () => {
-    const thanks = new URL(request.url).searchParams.has("thanks");
-    return answer(request, await drawPreview(await secretOf(route), { refused: null, thanks }));
+    const query = new URL(request.url).searchParams;
+    const view = { thanks: query.has("thanks"), units: readUnits(query.get("units")) };
+    return answer(request, await drawPreview(await secretOf(route), { refused: null, ...view }));
   });
 
 /** The form of the page, without script. */
@@ -28,7 +30,8 @@ export const POST = (request: Request, route: RouteArguments): Promise<Response>
     );
     if (outcome === "no such link") return answerNotFound(request, GONE);
     if (outcome !== null) {
-      return answer(request, await drawPreview(secret, { refused: outcome, thanks: false }));
+      const view = { refused: outcome, thanks: false, units: "m" } as const;
+      return answer(request, await drawPreview(secret, view));
     }
     return new Response(null, {
       status: 303,

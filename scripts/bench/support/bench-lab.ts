@@ -7,7 +7,11 @@ import { foundLab } from "../../../db/queries/labs";
 import { addMember } from "../../../db/queries/members";
 import { createToken } from "../../../db/queries/tokens";
 import { createToken as createSecretToken, digestSecret } from "../../../lib/account/secrets";
-import { readEnvironment, toConnectionString } from "../../../lib/config/environment";
+import {
+  readEnvironment,
+  toConnectionString,
+  type Environment,
+} from "../../../lib/config/environment";
 import { readText } from "../../../lib/config/secrets";
 import { cloneDir } from "../../setup/bootstrap.mjs";
 import { removeInstallation } from "../../setup/cluster";
@@ -17,6 +21,8 @@ import { startProduct } from "../../setup/product-process";
 export interface BenchProduct {
   /** Address of the web server. */
   url: string;
+  /** Of its web and worker. */
+  environment: Environment;
   app: Db;
   owner: Db;
   /** Ends it and takes its data away. */
@@ -41,6 +47,7 @@ export async function openBenchProduct(dataDir: string): Promise<BenchProduct> {
   });
   return {
     url: environment.publicUrl,
+    environment,
     app,
     owner,
     stop: async () => {
