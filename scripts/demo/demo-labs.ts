@@ -126,7 +126,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
           published: {
             suppliedBy: "bought by the lab",
             words:
-              "Small enough for a shelf, and honest about it: from 200 Hz up it plays as loud as loudspeakers twice its size. The bass is what limits it.",
+              "For a shelf. The small woofer runs out of excursion in the bass; the bands above it stayed within the limit.",
           },
         },
       ),
@@ -144,7 +144,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
           published: {
             suppliedBy: "lent by the maker",
             words:
-              "Nothing gave out in any band up to the 102 dB run. How loud it plays beyond that, this test does not say.",
+              "No band gave out up to the 102 dB run. How loud it plays beyond that, this test does not say.",
           },
         },
       ),
@@ -174,7 +174,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
           published: {
             suppliedBy: "bought by the lab",
             words:
-              "Plays loud for its size down to about 100 Hz. Below, the port and the small woofer give out one after the other.",
+              "The port gives way around its tuning. Where it does, the figures hold for this unit with the port as it was delivered.",
             makerStatement: {
               name: "Stonecrop Works",
               words:
@@ -201,7 +201,7 @@ export const DEMO_LABS: readonly DemoLab[] = [
           published: {
             suppliedBy: "bought by the lab",
             words:
-              "A battery loudspeaker for the table. Its protection already works in the quietest run, so the figures say how far it goes, not how it would sound without it.",
+              "A battery loudspeaker for the table. Its electronics turn the bass down from the quietest run on, so the losses there are lower bounds.",
           },
         },
       ),
@@ -283,7 +283,8 @@ export const DEMO_LABS: readonly DemoLab[] = [
           fullScaleDb: 128,
           published: {
             suppliedBy: "lent by a hire company",
-            words: "For stages: levels at 1 m go far beyond what any ear should meet there.",
+            words:
+              "For stages. At 1 m these levels can injure within minutes; the microphone stood 2 m away and nobody in the room.",
           },
         },
       ),
