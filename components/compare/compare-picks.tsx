@@ -26,8 +26,11 @@ export function ComparePicks({ tests, onReference, onRemove }: ComparePicksProps
           className="grid grid-cols-[22px_minmax(0,1fr)_auto] items-center gap-x-2.5 gap-y-0.5 border-rule py-3 not-first:max-sm:border-t sm:px-4 sm:not-first:border-l sm:first:pl-0"
         >
           <LetterBox at={at} />
-          <Link href={test.path} className="text-[17px]/6 font-[680] break-words">
-            <span className="sr-only">{letterOf(at)}: </span>
+          <Link
+            href={test.path}
+            aria-label={`${letterOf(at)}: ${test.model}`}
+            className="text-[17px]/6 font-[680] break-words"
+          >
             {test.model}
           </Link>
           <span className="flex items-center">

@@ -26,16 +26,16 @@ export function CompareTray({ chosen, rows, onRemove, onClear }: CompareTrayProp
   return (
     <section
       aria-label="Compare tray"
-      className="sticky bottom-0 z-20 mt-auto flex flex-wrap items-center gap-x-4 gap-y-2 border-t-3 border-overprint bg-sheet px-gutter py-3 max-md:px-phone"
+      className="sticky bottom-0 z-20 mt-auto flex flex-wrap items-center gap-x-4 gap-y-2 border-t-3 max-md:gap-2 border-overprint bg-sheet px-gutter py-3 max-md:px-phone"
     >
-      <h2 className="text-body font-semibold">Compare</h2>
+      <h2 className="text-body font-semibold max-md:sr-only">Compare</h2>
       <ol className="contents">
         {chosen.map((id, at) => {
           const name = nameOf(id, at);
           return (
             <li
               key={id}
-              className="inline-flex items-center gap-2.5 rounded-control border border-edge pl-3"
+              className="inline-flex items-center gap-2.5 rounded-control border border-edge pl-3 max-md:gap-1.5 max-md:pl-2"
             >
               <span className="figures text-label font-medium text-overprint">{letterOf(at)}</span>
               <span className="font-semibold">{name}</span>
@@ -51,7 +51,7 @@ export function CompareTray({ chosen, rows, onRemove, onClear }: CompareTrayProp
           );
         })}
       </ol>
-      <p className="mr-auto text-small text-ink-2">
+      <p className="mr-auto text-small text-ink-2 max-md:w-full max-md:text-label">
         {chosen.length === 1 ? "Pick one more." : "Four at most."} The first is the reference.
       </p>
       <Button tone="quiet" onClick={onClear}>

@@ -15,7 +15,7 @@ export interface NavItem {
 export function MainNav({ items }: { items: readonly NavItem[] }) {
   const path = usePathname();
   return (
-    <nav aria-label="Main" className="flex h-full gap-[22px] self-stretch">
+    <nav aria-label="Main" className="flex h-full w-max gap-[22px] self-stretch max-md:gap-4">
       {items.map((item) => {
         const here = [item.href, ...(item.also ?? [])].some(
           (room) => path === room || path.startsWith(`${room}/`),
@@ -26,7 +26,7 @@ export function MainNav({ items }: { items: readonly NavItem[] }) {
             href={item.href}
             aria-current={here ? "page" : undefined}
             className={joinClasses(
-              "flex items-center border-b-3 pt-[3px] no-underline",
+              "flex items-center border-b-3 pt-[3px] no-underline max-md:-outline-offset-3",
               here
                 ? "border-ink font-semibold text-ink"
                 : "border-transparent text-ink-2 hover:border-rule hover:text-ink",

@@ -10,7 +10,7 @@ interface SiteHeaderProps {
   account: ReactNode;
 }
 
-/** One line on a desk; on a phone the rooms move under the name. */
+/** One line on a desk; on a phone the rooms move under the name, side by side in a strip that scrolls. */
 export function SiteHeader({ items, account }: SiteHeaderProps) {
   return (
     <header className="border-b border-rule bg-page">
@@ -20,15 +20,15 @@ export function SiteHeader({ items, account }: SiteHeaderProps) {
       >
         To the content
       </a>
-      <div className="mx-auto grid max-w-page grid-cols-[auto_1fr_auto] items-center gap-x-7 px-gutter max-md:px-phone md:h-[52px] md:grid-cols-[auto_1fr_auto_auto]">
+      <div className="mx-auto grid max-w-page grid-cols-[auto_minmax(0,1fr)_auto] items-center gap-x-7 px-gutter max-md:gap-x-3.5 max-md:px-phone md:h-[52px] md:grid-cols-[auto_1fr_auto_auto]">
         <Link href="/series" className="flex min-h-11 items-center no-underline">
           <Brand />
         </Link>
-        <div className="h-[46px] max-md:order-last max-md:col-span-2 md:h-full">
+        <div className="h-[46px] min-w-0 max-md:order-last max-md:col-span-3 max-md:overflow-x-auto max-md:[scrollbar-width:none] md:h-full">
           <MainNav items={items} />
         </div>
-        <SearchBox className="max-md:order-last max-md:justify-self-end max-md:pb-1" />
-        <div className="max-md:col-span-2 max-md:justify-self-end">{account}</div>
+        <SearchBox className="max-md:z-10 max-md:justify-self-end max-md:pt-1" />
+        <div className="max-md:justify-self-end">{account}</div>
       </div>
     </header>
   );

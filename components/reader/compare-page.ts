@@ -91,12 +91,14 @@ function toPicks({ tests }: Comparison, keys: readonly string[]): Html {
             ${
               at === 0
                 ? html`<span class="dim">reference</span>`
-                : html`<a href="${toComparePath([test.id, ...without(test.id)])}"
-                    >Make reference<span class="sr-only">: ${test.model}</span></a
+                : html`<a
+                    href="${toComparePath([test.id, ...without(test.id)])}"
+                    aria-label="Make reference: ${test.model}"
+                    >Make reference</a
                   >`
             }
-            <a href="${toComparePath(without(test.id))}"
-              >Remove<span class="sr-only">: ${test.model}</span></a
+            <a href="${toComparePath(without(test.id))}" aria-label="Remove: ${test.model}"
+              >Remove</a
             >
           </p>
         </li>`,

@@ -140,14 +140,20 @@ function toChoose(test: PublishedTest, filter: PublishedFilter): Html | false {
   const { chosen } = filter;
   if (chosen.includes(test.key)) {
     const rest = chosen.filter((key) => key !== test.key);
-    return html`<a class="pick picked" href="${toPublishedHref(filter, { chosen: rest })}"
-      >Take out of the comparison<span class="sr-only">: ${test.model}</span></a
+    return html`<a
+      class="pick picked"
+      href="${toPublishedHref(filter, { chosen: rest })}"
+      aria-label="Take out of the comparison: ${test.model}"
+      >Take out of the comparison</a
     >`;
   }
   return (
     chosen.length < MOST_COMPARED &&
-    html`<a class="pick" href="${toPublishedHref(filter, { chosen: [...chosen, test.key] })}#tray"
-      >Add to compare<span class="sr-only">: ${test.model}</span></a
+    html`<a
+      class="pick"
+      href="${toPublishedHref(filter, { chosen: [...chosen, test.key] })}#tray"
+      aria-label="Add to compare: ${test.model}"
+      >Add to compare</a
     >`
   );
 }
