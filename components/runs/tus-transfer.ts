@@ -15,7 +15,7 @@ const PASSING = new Set([0, 423, 502, 503, 504]);
 /** @param seriesId the series that the files belong to; the same file for another one starts anew. */
 export function makeTusTransfer(seriesId: string): StartTransfer {
   return (chosen, events) => {
-    const { file, slot, columns } = chosen;
+    const { file, slot, columns, channel } = chosen;
     const upload = new Upload(file, {
       endpoint: UPLOADS_PATH,
       chunkSize: CHUNK_BYTES,
@@ -26,6 +26,7 @@ export function makeTusTransfer(seriesId: string): StartTransfer {
         fileName: file.name,
         ...(slot === null ? {} : { slot }),
         ...(columns === undefined ? {} : { columns: JSON.stringify(columns) }),
+        ...(channel === undefined ? {} : { channel: String(channel) }),
       },
       fingerprint: () => Promise.resolve(toFingerprint(seriesId, chosen)),
       onProgress: (sent) => events.onProgress(sent),

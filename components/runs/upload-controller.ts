@@ -13,6 +13,8 @@ export interface ChosenFile {
   shownSlot: string | null;
   /** Of a table: its columns as a person mapped them; absent where its head tells. */
   columns?: ColumnChoice;
+  /** Microphone channel, from 1; absent: the first. */
+  channel?: number;
 }
 
 export interface TransferEvents {

@@ -16,6 +16,17 @@ export const README_FILE = "README.txt";
 /** In the format that `sha256sum -c` reads; lists every file but itself. */
 export const SUMS_FILE = "SHA256SUMS";
 
+/** Names that a recording must not have: in an evidence pack they are ours. */
+export const RESERVED_FILES: readonly string[] = [
+  "series.json",
+  EVIDENCE_FILE,
+  RESULT_FILE,
+  DECISIONS_FILE,
+  SNAPSHOT_FILE,
+  README_FILE,
+  SUMS_FILE,
+];
+
 export const evidenceSchema = z.object({
   format: z.literal("tidemark-evidence-1"),
   publication: z.object({

@@ -8,6 +8,7 @@ import {
   type Criterion,
   criterionSchema,
   DEFAULT_CRITERIA,
+  relativeFileSchema,
 } from "./series-schema";
 import { ENVIRONMENTS } from "./vocabulary";
 
@@ -51,8 +52,8 @@ export const sweepPlanSchema = z
         z.literal(192_000),
       ])
       .default(48_000),
-    lead_in_s: finite.min(0.2).max(10).default(1),
-    lead_out_s: finite.min(0.2).max(10).default(0.8),
+    lead_in_s: finite.min(0).max(10).default(1),
+    lead_out_s: finite.min(0).max(10).default(0.8),
   })
   .refine((s) => s.stop_Hz <= s.rate_Hz / 2, {
     error: "The end frequency must not pass half the sample rate.",
@@ -134,6 +135,11 @@ export const planSchema = z
       .min(1)
       .max(12)
       .default([...USUAL_CRITERIA]),
+    /** Names of the recordings, in the order of the analysis, where they came as a folder. */
+    files: z
+      .array(z.strictObject({ slot: z.string().max(60), file: relativeFileSchema }))
+      .max(250)
+      .optional(),
   })
   .refine((p) => new Set(p.levels.map((l) => l.level_dB)).size === p.levels.length, {
     error: "Two levels are the same. Plan a repeat instead.",

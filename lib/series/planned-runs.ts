@@ -147,7 +147,12 @@ export function toPlannedRuns(
     const last = runs.findLastIndex((other) => IN_LADDER.has(other.role));
     runs.splice(louder < 0 ? last + 1 : louder, 0, run);
   }
-  return runs;
+  const names = new Map(plan.files?.map(({ slot, file }) => [slot, file]));
+  const given = new Set(names.values());
+  // A name of ours gives way to one that came with a folder: no two runs share one.
+  const toName = ({ slot, fileName }: PlannedRun): string =>
+    names.get(slot) ?? (given.has(fileName) ? `another_${fileName}` : fileName);
+  return runs.map((run) => ({ ...run, fileName: toName(run) }));
 }
 
 const IN_LADDER: ReadonlySet<RecordingRole> = new Set(["short-term", "long-term", "variant"]);

@@ -74,9 +74,9 @@ export function toSeriesJson({ loudspeaker, plan, runs }: SeriesSource): SeriesF
     ...toUncertainty(plan),
     ...(microphone === null
       ? {}
-      : { microphone: { file: MICROPHONE_FILE, kind: microphone.kind } }),
+      : { microphone: { file: toMicrophoneName(plan), kind: microphone.kind } }),
     ...(ambient === undefined ? {} : { ambient: { file: ambient.file } }),
-    runs: runs.flatMap((run) => toRun(run, plan)),
+    runs: inOrder(runs, plan).flatMap((run) => toRun(run, plan)),
     settings: { criteria: plan.criteria },
   };
   const named = runs.map((run) => ({ file: run.file, digest: run.digest, run_id: run.id }));
@@ -85,7 +85,7 @@ export function toSeriesJson({ loudspeaker, plan, runs }: SeriesSource): SeriesF
     files:
       microphone === null
         ? named
-        : [...named, { file: MICROPHONE_FILE, digest: microphone.digest, run_id: null }],
+        : [...named, { file: toMicrophoneName(plan), digest: microphone.digest, run_id: null }],
   };
 }
 
@@ -97,7 +97,16 @@ function toUncertainty({ uncertainty, place }: Plan): { uncertainty?: StatedUnce
   return known.length === 0 ? {} : { uncertainty: Object.fromEntries(known) };
 }
 
-const MICROPHONE_FILE = "microphone.txt";
+const toMicrophoneName = ({ files }: Plan): string =>
+  files?.find(({ slot }) => slot === "microphone")?.file ?? "microphone.txt";
+
+/** As the folder had them, where the series came as one; what came later stands last. */
+function inOrder(runs: readonly UsableRun[], { files }: Plan): readonly UsableRun[] {
+  if (files === undefined) return runs;
+  const places = new Map(files.map(({ file }, at) => [file, at]));
+  const placeOf = ({ file }: UsableRun): number => places.get(file) ?? Infinity;
+  return runs.toSorted((a, b) => (placeOf(a) === placeOf(b) ? 0 : placeOf(a) - placeOf(b)));
+}
 
 function toCalibration(
   plan: Plan,

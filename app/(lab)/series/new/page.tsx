@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import { getPageCallerWith } from "@/app/_server/page-caller";
 import { PageHead } from "@/components/frame/page-head";
+import { LinkButton } from "@/components/parts/button";
 import { NewSeries } from "@/components/plan/plan-screen";
 import { idSchema } from "@/lib/api/common";
 
@@ -15,6 +16,7 @@ export default async function NewSeriesPage({ searchParams }: PageProps<"/series
         crumb={{ href: "/series", label: "Series", here: "new" }}
         title="New series"
         line="nothing saved yet"
+        aside={<LinkButton href="/series/new/folder">From a folder</LinkButton>}
       />
       <NewSeries loudspeakerId={picked.success ? picked.data : null} />
     </>
