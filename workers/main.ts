@@ -18,7 +18,7 @@ import { createComputingChild } from "./compute/computing-child";
 import { createLog } from "./log";
 import { openPost } from "./post";
 import { repeat } from "./repeat";
-import { sweepFiles, sweepJobs, sweepUploads } from "./sweep";
+import { sweepFiles, sweepJobs, sweepRetention, sweepUploads } from "./sweep";
 import type { JobTools } from "./tools";
 
 /** Short enough that the work of a killed worker is taken up within seconds. */
@@ -29,6 +29,7 @@ const MOST_STALLS = 8;
 const CLOSE_WITHIN_MS = 7000;
 const JOB_SWEEP_MS = 5000;
 const UPLOAD_SWEEP_MS = 60_000;
+const RETENTION_SWEEP_MS = 3600 * 1000;
 const FILE_SWEEP_MS = 1800 * 1000;
 
 type Processor = (tools: JobTools, data: unknown) => Promise<void>;
@@ -86,6 +87,7 @@ async function main(): Promise<void> {
   const sweeps = [
     repeat(JOB_SWEEP_MS, () => sweepJobs(sweepTools), log),
     repeat(UPLOAD_SWEEP_MS, () => sweepUploads(sweepTools), log),
+    repeat(RETENTION_SWEEP_MS, () => sweepRetention(sweepTools, new Date()), log),
     repeat(FILE_SWEEP_MS, () => sweepFiles(sweepTools, new Date()), log),
   ];
   log.info({ analyses: environment.workerProcesses }, "worker is ready");

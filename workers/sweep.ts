@@ -7,8 +7,10 @@ import { join } from "node:path";
 import type { Logger } from "pino";
 import { inLab } from "../db/in-lab";
 import type { Db } from "../db/client";
+import { removeDueRecordings } from "../db/acts/remove-recordings";
 import { findForgottenAnalyses } from "../db/queries/analyses";
 import { findUnheldDigests } from "../db/queries/recordings";
+import { findLabsWithRetention } from "../db/queries/retention";
 import { findForgottenChecks } from "../db/queries/runs";
 import { deleteUpload, findExpiredUploads } from "../db/queries/uploads";
 import { UPLOAD_ID, UPLOAD_LIFETIME_MS } from "../lib/api/uploads";
@@ -61,9 +63,24 @@ export async function sweepUploads({ db, stagingFolder, log }: SweepTools): Prom
   return expired.length;
 }
 
+/** What the labs' retention has become due for; the next sweep of files takes the bytes. @returns how many recordings. */
+export async function sweepRetention(
+  { db, log }: Pick<SweepTools, "db" | "log">,
+  now: Date,
+): Promise<number> {
+  let removed = 0;
+  for (const labId of await findLabsWithRetention(db)) {
+    const scope = workerScope(labId);
+    const removals = await inLab(db, scope, (trx) => removeDueRecordings(trx, scope, now));
+    removed += removals.reduce((sum, one) => sum + one.recordings, 0);
+  }
+  if (removed > 0) log.info({ recordings: removed }, "removed recordings by retention");
+  return removed;
+}
+
 /** @returns how many files went. */
 export async function sweepFiles(
-  { db, store, stagingFolder, log }: SweepTools,
+  { db, store, stagingFolder, log }: Omit<SweepTools, "queues">,
   now: Date,
 ): Promise<number> {
   let removed = 0;

@@ -10,6 +10,7 @@ const FOR_ALL = [
   { href: "/lab", label: "Settings" },
   { href: "/lab/engine", label: "Engine" },
 ] as const;
+const KEEPING = { href: "/lab/keeping", label: "Keeping" } as const;
 const TRAIL = { href: "/lab/trail", label: "Trail" } as const;
 
 /** The head of every page about the lab itself. */
@@ -21,7 +22,7 @@ export function LabHead({ title, line }: { title: string; line?: string | undefi
       <div className="mb-5 border-b border-rule px-gutter max-md:px-phone">
         <Tabs
           label="Pages about the lab"
-          tabs={mayAdminister ? [...FOR_ALL, TRAIL] : FOR_ALL}
+          tabs={mayAdminister ? [...FOR_ALL, KEEPING, TRAIL] : FOR_ALL}
           className="-mb-px"
         />
       </div>

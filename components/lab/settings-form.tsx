@@ -114,6 +114,13 @@ export function SettingsForm({ lab, mostUploadMb, onReread }: SettingsFormProps)
               label="largest recording, MB"
               hint={`Empty: as much as this installation takes, ${mostUploadMb} MB. More than that is never taken.`}
             />
+            <div className="mt-3">
+              <NumberSetting
+                name="settings.retention_days"
+                label="recordings of archived series stay, days"
+                hint="At least 30; empty: for good. What a publication cites always stays."
+              />
+            </div>
           </div>
         </FormSection>
         <FormSection title="Checks at arrival">

@@ -42,6 +42,17 @@ describe("toSettingDifferences", () => {
       ],
     ],
     [
+      "the retention",
+      change({ retention_days: null }),
+      [
+        {
+          label: "recordings of archived series stay",
+          theirs: "400\u00a0days",
+          mine: "for good",
+        },
+      ],
+    ],
+    [
       "a limit at arrival",
       change({ arrival: { ...before.settings.arrival, snr_warn_dB: 35 } }),
       [{ label: "signal-to-noise, warning under", theirs: "20\u00a0dB", mine: "35\u00a0dB" }],

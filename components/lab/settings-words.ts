@@ -32,6 +32,11 @@ export function toSettingRows({ name, time_zone, settings }: LabState): SettingR
           ? "as the installation allows"
           : `${settings.max_upload_mb}${NBSP}MB`,
     },
+    {
+      label: "recordings of archived series stay",
+      value:
+        settings.retention_days === null ? "for good" : `${settings.retention_days}${NBSP}days`,
+    },
     { label: "level off the plan, warning beyond", value: db(arrival.level_warn_dB) },
     { label: "level off the plan, failure beyond", value: db(arrival.level_fail_dB) },
     { label: "step to the other runs, warning beyond", value: db(arrival.step_warn_dB) },

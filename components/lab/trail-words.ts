@@ -48,6 +48,7 @@ const WORDS: Record<string, (details: Details) => string> = {
     `revoked the token ${d.name ?? ""}${d.owner === undefined ? "" : ` of ${d.owner}`}`,
   "lab.created": () => "founded the lab",
   "lab.changed": (d) => `changed ${sayLabChange(d)}`,
+  "lab.exported": () => "exported everything that the lab owns",
   "loudspeaker.created": () => "entered a loudspeaker",
   "loudspeaker.changed": () => "changed the particulars of a loudspeaker",
   "loudspeaker.photo-set": () => "gave a loudspeaker a photo",

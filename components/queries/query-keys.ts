@@ -34,6 +34,7 @@ export const queryKeys = {
   invitations: ["invitations"],
   tokens: ["tokens"],
   lab: ["lab"],
+  keeping: ["keeping"],
   trail: (about: TrailAbout | null) => ["trail", about],
   sessions: ["sessions"],
   notices: ["notices"],

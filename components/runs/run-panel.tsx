@@ -6,6 +6,7 @@ import { downloadRun, type RunView } from "@/lib/api/runs";
 import { formatNumber, NBSP } from "@/lib/charts/format";
 import type { LevelPaint } from "@/lib/charts/tokens";
 import type { ArrivalCheck, ArrivalReport } from "@/lib/runs/arrival-schema";
+import { Moment } from "../frame/moment";
 import { Button, LinkButton } from "../parts/button";
 import { Select } from "../parts/field";
 import { joinClasses } from "../parts/join-classes";
@@ -70,14 +71,20 @@ export function RunPanel({ row, run, paint, mayCapture, acts }: RunPanelProps) {
               onQuestion={(asked) => setQuestion(asked)}
             />
           )}
-          <LinkButton
-            tone="quiet"
-            size="small"
-            href={toApiPath(downloadRun, { runId: run.id })}
-            download={run.file_name}
-          >
-            Download
-          </LinkButton>
+          {run.removed_at === null ? (
+            <LinkButton
+              tone="quiet"
+              size="small"
+              href={toApiPath(downloadRun, { runId: run.id })}
+              download={run.file_name}
+            >
+              Download
+            </LinkButton>
+          ) : (
+            <p className="text-small text-ink-2">
+              Its bytes were removed for good, <Moment at={run.removed_at} as="day" />.
+            </p>
+          )}
         </div>
       </div>
       {run.report !== null && run.report.envelope.low.length > 0 && (

@@ -62,6 +62,7 @@ export function makeRun(change: Partial<RunView> = {}): RunView {
     file_name: "osier5a_86_short.wav",
     digest: "0".repeat(64),
     bytes: 1_900_000,
+    removed_at: null,
     channel: 1,
     state: "passed",
     report: makeReport(),

@@ -5,9 +5,11 @@ import type { LabScope } from "../in-lab";
 import { recordEvent } from "../queries/audit";
 import { notifyChange } from "../queries/changes";
 import { listAnalyses } from "../queries/analyses";
+import { hasRemovedRecordings } from "../queries/retention";
+import { listRunRequests } from "../queries/run-requests";
 import { listRuns } from "../queries/runs";
 import { deleteSeries, getSeries, lockSeries, updateSeries } from "../queries/series";
-import { listUploads } from "../queries/uploads";
+import { deleteUploadsOf, listUploads } from "../queries/uploads";
 
 /** @throws AppError "not-found", "conflict.state" while something is under way */
 export async function removeSeries(
@@ -28,7 +30,9 @@ export async function removeSeries(
   }
   const runs = await listRuns(trx, by.labId, seriesId);
   const analyses = await listAnalyses(trx, by.labId, seriesId);
-  const outcome = runs.length === 0 && analyses.length === 0 ? "deleted" : "archived";
+  const asked = await listRunRequests(trx, by.labId, seriesId);
+  const empty = [runs, analyses, asked].every((list) => list.length === 0);
+  const outcome = empty ? "deleted" : "archived";
   await recordEvent(trx, by, {
     act: `series.${outcome}`,
     subjectType: "series",
@@ -36,8 +40,10 @@ export async function removeSeries(
     seriesId,
     details: { number: series.number, loudspeaker: series.loudspeaker_name },
   });
-  if (outcome === "deleted") await deleteSeries(trx, by.labId, seriesId);
-  else await updateSeries(trx, by.labId, seriesId, { archivedAt: new Date() });
+  if (outcome === "deleted") {
+    await deleteUploadsOf(trx, by.labId, seriesId);
+    await deleteSeries(trx, by.labId, seriesId);
+  } else await updateSeries(trx, by.labId, seriesId, { archivedAt: new Date() });
   await notifyChange(trx, { labId: by.labId, seriesId });
   return outcome;
 }
@@ -47,6 +53,12 @@ export async function restoreSeries(trx: Trx, by: LabScope, seriesId: string): P
   const series = await lockSeries(trx, by.labId, seriesId);
   if (series.archived_at === null) {
     throw new AppError("conflict.state", "This series is not archived.");
+  }
+  if (await hasRemovedRecordings(trx, by.labId, seriesId)) {
+    throw new AppError(
+      "conflict.state",
+      "Recordings of this series were removed for good, so it cannot go on. It can be read in the archive.",
+    );
   }
   await updateSeries(trx, by.labId, seriesId, { archivedAt: null });
   await recordEvent(trx, by, {

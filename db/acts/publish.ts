@@ -26,6 +26,7 @@ import { listRuns } from "../queries/runs";
 import { getSeries, lockSeries, toSeriesNumber } from "../queries/series";
 import { findStandingSignOff, getSignedParts } from "../queries/sign-offs";
 import { noticePublished } from "./notices";
+import { toFolderFiles } from "./series-folder";
 
 export interface Publishing {
   words: PublicationWords;
@@ -60,6 +61,7 @@ export async function publishSeries(
   const now = new Date();
   const embargoUntil = toEmbargo(publishing.embargoUntil, last, now);
   const drafted = await draftSnapshot(trx, by, seriesId, { ...publishing, at: now });
+  if (publishing.words.evidence_public) await requireEvidence(trx, by.labId, drafted.signOffId);
   const { slug } = drafted.snapshot.series;
   if (last === null && (await isSlugTaken(trx, by.labId, slug, seriesId))) throw slugTaken(slug);
   const snapshot = toSnapshotText(drafted.snapshot);
@@ -99,6 +101,13 @@ export async function publishSeries(
   });
   await notifyChange(trx, { labId: by.labId, seriesId });
   return id;
+}
+
+/** What readers are promised is there. @throws AppError "recording.removed", "storage.missing" */
+async function requireEvidence(trx: Trx, labId: string, signOffId: string): Promise<void> {
+  const { analysisId } = await getSignedParts(trx, labId, signOffId);
+  const { inputs } = await getAnalysis(trx, labId, analysisId);
+  await toFolderFiles(trx, labId, inputs);
 }
 
 /** A correction is seen at once; only one of something that nobody has seen yet may wait. */

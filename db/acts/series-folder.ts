@@ -68,17 +68,21 @@ export async function toFolderFiles(
     if (row === undefined) {
       throw new AppError("storage.missing", `The lab holds no recording for ${file}.`, { file });
     }
-    if (row.removed_at !== null) {
-      const day = row.removed_at.toISOString().slice(0, 10);
-      throw new AppError(
-        "recording.removed",
-        `${file} was removed on ${day} by the lab's retention. Its result stays; its bytes are gone.`,
-        { file },
-      );
-    }
+    requireKept({ file_name: file, removed_at: row.removed_at });
     return { name: file, digest, bytes: row.bytes };
   });
   return [{ name: "series.json", text: toSeriesText(series) }, ...recordings];
+}
+
+/** @throws AppError "recording.removed" */
+export function requireKept(recording: { file_name: string; removed_at: Date | null }): void {
+  const { file_name: file, removed_at: at } = recording;
+  if (at === null) return;
+  throw new AppError(
+    "recording.removed",
+    `${file} was removed for good on ${at.toISOString().slice(0, 10)}. Its results stay; its bytes are gone.`,
+    { file },
+  );
 }
 
 const toSeriesText = (series: unknown): string => `${JSON.stringify(series, null, 2)}\n`;

@@ -10,6 +10,8 @@ import type { SlotExcusesTable } from "../schema/slot-excuses";
 
 export type RunRow = Selectable<RunsTable> & {
   bytes: number;
+  /** When its bytes were removed for good. */
+  removed_at: Date | null;
   uploadedByName: string | null;
   reasonByName: string | null;
 };
@@ -262,6 +264,6 @@ function runsOf(trx: Trx, labId: string) {
     .leftJoin("accounts as u", "u.id", "r.uploaded_by")
     .leftJoin("accounts as w", "w.id", "r.reason_by")
     .selectAll("r")
-    .select(["f.bytes", "u.name as uploadedByName", "w.name as reasonByName"])
+    .select(["f.bytes", "f.removed_at", "u.name as uploadedByName", "w.name as reasonByName"])
     .where("r.lab_id", "=", labId);
 }

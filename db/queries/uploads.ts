@@ -108,6 +108,15 @@ export async function deleteUpload(trx: Trx, labId: string, id: string): Promise
   await trx.deleteFrom("uploads").where("lab_id", "=", labId).where("id", "=", id).execute();
 }
 
+/** What is left of uploads to a series without recordings: ended, or past their day. */
+export async function deleteUploadsOf(trx: Trx, labId: string, seriesId: string): Promise<void> {
+  await trx
+    .deleteFrom("uploads")
+    .where("lab_id", "=", labId)
+    .where("series_id", "=", seriesId)
+    .execute();
+}
+
 /** Over all labs: for the sweep. */
 export async function findExpiredUploads(db: Db): Promise<{ labId: string; uploadId: string }[]> {
   const { rows } = await sql<{

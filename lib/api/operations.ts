@@ -4,7 +4,7 @@ import { accountLinkOperations } from "./account-links";
 import { analysisOperations } from "./analyses";
 import { compareOperations } from "./compare";
 import { getHealth } from "./health";
-import { evidenceOperations, seriesFolderOperations } from "./keeping";
+import { evidenceOperations, keepingOperations, seriesFolderOperations } from "./keeping";
 import { labOperations } from "./labs";
 import { loudspeakerOperations } from "./loudspeakers";
 import { memberOperations } from "./members";
@@ -34,7 +34,7 @@ export const OPERATION_GROUPS: Readonly<Record<string, readonly Operation[]>> = 
   ],
   Members: memberOperations,
   Tokens: tokenOperations,
-  Lab: labOperations,
+  Lab: [...labOperations, ...keepingOperations],
   Service: [getHealth],
 };
 

@@ -77,6 +77,8 @@ export const publish = defineOperation({
     "conflict.state",
     "conflict.exists",
     "run.reason-missing",
+    "recording.removed",
+    "storage.missing",
   ],
 });
 

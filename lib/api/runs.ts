@@ -15,6 +15,8 @@ export const runViewSchema = z.object({
   file_name: z.string(),
   digest: z.string(),
   bytes: z.number().int(),
+  /** When its bytes were removed for good; its report and results stay. */
+  removed_at: timeSchema.nullable(),
   channel: z.number().int(),
   state: z.enum(RUN_STATES),
   report: arrivalReportSchema.nullable(),
@@ -131,7 +133,7 @@ export const downloadRun = defineOperation({
   status: 200,
   answerMediaType: "application/octet-stream",
   ranged: true,
-  errors: ["not-found", "storage.missing"],
+  errors: ["not-found", "recording.removed", "storage.missing"],
 });
 
 export const excuseSlot = defineOperation({

@@ -30,6 +30,7 @@ export const ERROR_TABLE = {
   "series.unknown-key": final(422, "series.json holds an unknown key"),
   "series.file-name": final(422, "A file name leaves the folder"),
   "series.file-missing": final(422, "A named file is missing"),
+  "series.not-plannable": final(422, "A series here cannot hold this folder"),
   "series.too-few-runs": final(422, "Too few runs to analyse"),
   "series.reference-missing": final(422, "There is no short-term run"),
   "calibration.missing": final(422, "There is no calibration"),

@@ -11,6 +11,7 @@ const detailsSchema = z.object({
   state: z.string().optional(),
   message: z.string().optional(),
   recordings: z.number().optional(),
+  kept: z.number().optional(),
   loudspeaker: z.string().optional(),
   revision: z.number().optional(),
   name: z.string().optional(),
@@ -43,6 +44,8 @@ const WORDS: Record<string, (details: Details) => string> = {
   "series.created": (d) => `started the series${d.loudspeaker ? ` of ${d.loudspeaker}` : ""}`,
   "series.archived": () => "archived the series",
   "series.restored": () => "took the series back from the archive",
+  "recordings.removed": (d) =>
+    `removed ${d.recordings === 1 ? "one recording" : `${d.recordings ?? "the"} recordings`} for good${(d.kept ?? 0) === 0 ? "" : `; ${d.kept} are cited or shared and stay`}`,
   "plan.changed": () => "changed the plan",
   "criteria.changed": () => "changed the criteria of the next analysis",
   "run.uploaded": (d) => `uploaded ${named(d)}${forPlace(d)}`,

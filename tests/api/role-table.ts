@@ -65,6 +65,7 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("updateLoudspeaker", TESTER_ANALYST, "not there"),
   row("putLoudspeakerPhoto", TESTER_ANALYST, "not there"),
   row("createSeries", TESTER_ANALYST, "not there"),
+  row("createSeriesFromFolder", TESTER_ANALYST, "yes"),
   row("updatePlan", TESTER_ANALYST, "not there"),
   row("removeSeries", TESTER_ANALYST, "not there"),
   row("restoreSeries", TESTER_ANALYST, "not there"),
@@ -108,6 +109,9 @@ export const ROLE_TABLE: readonly RoleRow[] = [
   row("withdrawInvitation", ADMIN, "not there"),
   row("updateLab", ADMIN, "yes"),
   row("listTrail", ADMIN, "yes"),
+  row("getKeeping", ADMIN, "yes"),
+  row("removeRecordings", ADMIN, "not there"),
+  row("exportLab", ADMIN, "yes"),
   // Tokens: one's own for every member; those of others for the admin alone, and hidden from the rest.
   row("listTokens", EVERYONE, "yes"),
   row("createToken", EVERYONE, "yes"),

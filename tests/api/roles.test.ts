@@ -47,6 +47,22 @@ const INPUTS: Readonly<Record<string, (things: Things) => { body?: unknown; quer
   createLoudspeaker: () => ({ body: { maker: "A", model: "B", kind: "other" } }),
   updateLoudspeaker: () => ({ body: { serial: "7" } }),
   createSeries: ({ loudspeakerId }) => ({ body: { loudspeaker_id: loudspeakerId } }),
+  createSeriesFromFolder: () => ({
+    body: {
+      series_json: JSON.stringify({
+        loudspeaker: "A B",
+        environment: "anechoic",
+        distance_m: 1,
+        stimulus: { start_Hz: 20, stop_Hz: 20_000, length_s: 2, rate_Hz: 48_000 },
+        calibration: { full_scale_dB: 124 },
+        runs: [
+          { file: "76.wav", level_dB: 76 },
+          { file: "86.wav", level_dB: 86 },
+        ],
+      }),
+      loudspeaker: { maker: "A", model: "B", kind: "other" },
+    },
+  }),
   updatePlan: ({ plan }) => ({ body: { plan, plan_version: 1 } }),
   updateCriteria: ({ plan }) => ({ body: { criteria: plan.criteria, plan_version: 1 } }),
   actOnRun: () => ({ body: { act: "exclude", reason: "a reason" } }),
@@ -62,6 +78,7 @@ const INPUTS: Readonly<Record<string, (things: Things) => { body?: unknown; quer
   signOff: () => ({
     body: { criterion: { compression_dB: 3 }, decisions_digest: "0".repeat(64) },
   }),
+  removeRecordings: () => ({ body: { reason: "a reason" } }),
   reopenSeries: () => ({ body: { reason: "a reason" } }),
   setMemberRoles: () => ({ body: { roles: ["tester"] } }),
   createInvitation: () => ({

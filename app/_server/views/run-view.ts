@@ -15,6 +15,7 @@ export function toRunView(row: RunRow): RunView {
     file_name: row.file_name,
     digest: row.digest,
     bytes: row.bytes,
+    removed_at: row.removed_at?.toISOString() ?? null,
     channel: row.channel,
     state: row.state,
     report: row.report,
