@@ -2,6 +2,8 @@
 const config = {
   poweredByHeader: false,
   reactStrictMode: true,
+  // `npm run dev` at another host than it listens on: a page whose socket is refused loads anew for ever.
+  allowedDevOrigins: ["127.0.0.1"],
   // The FLAC decoder picks its worker by a name that a bundler cannot follow.
   serverExternalPackages: [
     "@node-rs/argon2",
