@@ -74,7 +74,7 @@ function NotAnalysed({ seriesId, name }: { seriesId: string; name: string }) {
           aria-label={`Analyse ${name} by this engine`}
           onClick={() => start.mutate()}
         >
-          Analyse it
+          Analyse
         </Button>
       )}
       {start.isError && (

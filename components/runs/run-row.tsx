@@ -84,7 +84,7 @@ export function RunRows({ row, paint, calibrator, mayCapture, acts }: RunRowsPro
                   size="small"
                   aria-expanded={open}
                   aria-controls={panelId}
-                  aria-label={`Details of ${planned.label}`}
+                  aria-label={`${open ? "Close details" : "Details"} of ${planned.label}`}
                   onClick={() => setOpened(!open)}
                 >
                   {open ? "Close" : "Details"}
@@ -173,7 +173,7 @@ function EarlierRow({ row, run, paint, mayCapture, acts }: EarlierRowProps) {
             size="small"
             aria-expanded={open}
             aria-controls={panelId}
-            aria-label={`Details of ${row.planned.label}, take ${run.take}`}
+            aria-label={`${open ? "Close details" : "Details"} of ${row.planned.label}, take ${run.take}`}
             onClick={() => setOpen(!open)}
           >
             {open ? "Close" : "Details"}

@@ -160,7 +160,7 @@ function UnassignedFile({ run, rows, mayCapture, acts }: UnassignedFileProps) {
         <>
           <Button
             size="small"
-            aria-label={`Assign ${run.file_name} to a run`}
+            aria-label={`Assign to a run: ${run.file_name}`}
             onClick={() => setAsked(true)}
           >
             Assign to a run
