@@ -10,7 +10,8 @@ import { parseSnapshotText } from "../../../lib/publication/canonical";
 import type { Snapshot } from "../../../lib/publication/snapshot-schema";
 import { answerPage, packBytes, packPage, type PackedPage } from "./answer-page";
 import { answerNotFound, answerReader } from "./plain-answers";
-import { findRevision, readSnapshotText, type RevisionRows } from "./publication-page";
+import { findRevision, type RevisionRows } from "./find-revision";
+import { readSnapshotText } from "./publication-page";
 
 /** What a part is drawn from. */
 interface KitInput {

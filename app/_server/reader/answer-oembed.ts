@@ -5,7 +5,8 @@ import { parseRevision, toRevisionPath } from "../../../lib/publication/addresse
 import { parseSnapshotText } from "../../../lib/publication/canonical";
 import { answerPage, packBytes } from "./answer-page";
 import { answerReader } from "./plain-answers";
-import { findRevision, readSnapshotText } from "./publication-page";
+import { findRevision } from "./find-revision";
+import { readSnapshotText } from "./publication-page";
 
 const OPEN = { "access-control-allow-origin": "*" };
 

@@ -1,4 +1,4 @@
-/** The page behind /t/<lab>/<series>[/<revision>]: looked up at every request, drawn once per state. */
+/** The page behind /t/<lab>/<series>[/<revision>]: drawn once per state. */
 import {
   toReplacedBanner,
   toRevisionsSection,
@@ -12,13 +12,7 @@ import { html } from "../../../lib/html/html";
 import { toAltText } from "../../../lib/kit/kit-words";
 import { toOembedAddress } from "../../../lib/kit/oembed";
 import { inLab } from "../../../db/in-lab";
-import { getLab } from "../../../db/queries/labs";
-import {
-  findPublication,
-  getSnapshotText,
-  listPublications,
-  type PublicationRow,
-} from "../../../db/queries/publications";
+import { getSnapshotText, type PublicationRow } from "../../../db/queries/publications";
 import { getEnvironment } from "../../../lib/config/environment";
 import { toRevisionPath } from "../../../lib/publication/addresses";
 import { parseSnapshotText } from "../../../lib/publication/canonical";
@@ -27,31 +21,10 @@ import { toAnswer } from "../../../lib/reader/page-words";
 import type { Units } from "../../../lib/reader/units";
 import { getDatabase } from "../database";
 import { packPage, type PackedPage } from "./answer-page";
-import { takeTurns } from "./take-turns";
-
-export interface PublicationAddress {
-  lab: string;
-  slug: string;
-  /** null: the newest. */
-  revision: number | null;
-}
-
-/** What is known of a revision besides its snapshot. */
-export interface RevisionRows {
-  row: PublicationRow;
-  /** All that a reader may know of, newest first. */
-  revisions: PublicationRow[];
-  timeZone: string;
-}
+import { findRevision, type PublicationAddress, type RevisionRows } from "./find-revision";
 
 const KEPT_PAGES = 300;
 const pages = new Map<string, PackedPage>();
-
-const look = takeTurns((key) => findStanding(JSON.parse(key) as PublicationAddress));
-
-/** Looked up afresh: whatever was decided a moment ago counts. @returns null where nothing is published here */
-export const findRevision = (address: PublicationAddress): Promise<RevisionRows | null> =>
-  look(JSON.stringify(address));
 
 /** @returns null where nothing is published at this address. */
 export async function findPublicationPage(
@@ -68,26 +41,6 @@ export async function findPublicationPage(
   const [oldest] = pages.keys();
   if (pages.size > KEPT_PAGES && oldest !== undefined) pages.delete(oldest);
   return page;
-}
-
-async function findStanding(address: PublicationAddress): Promise<RevisionRows | null> {
-  const found = await findPublication(getDatabase(), address);
-  if (found === null) return null;
-  const { labId, publicationId } = found;
-  return inLab(getDatabase(), { labId, accountId: null }, async (trx) => {
-    const lab = await getLab(trx, labId);
-    const series = await trx
-      .selectFrom("publications")
-      .select("series_id")
-      .where("lab_id", "=", labId)
-      .where("id", "=", publicationId)
-      .executeTakeFirstOrThrow();
-    const all = await listPublications(trx, labId, series.series_id);
-    const now = new Date();
-    const revisions = all.filter((one) => one.embargo_until === null || one.embargo_until <= now);
-    const row = revisions.find((one) => one.id === publicationId);
-    return row === undefined ? null : { row, revisions, timeZone: lab.time_zone };
-  });
 }
 
 /** The kept text behind a row. */

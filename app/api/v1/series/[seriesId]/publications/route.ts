@@ -1,4 +1,5 @@
 import { handle } from "@/app/_server/handle";
+import { forgetRevisions } from "@/app/_server/reader/find-revision";
 import { toPublicationView } from "@/app/_server/views/publication-view";
 import { publishSeries } from "@/db/acts/publish";
 import { getLab } from "@/db/queries/labs";
@@ -15,8 +16,8 @@ export const GET = handle(listPublications, ({ params, inLab, caller }) =>
   }),
 );
 
-export const POST = handle(publish, ({ params, body, inLab, caller, scope }) =>
-  inLab(async (trx) => {
+export const POST = handle(publish, async ({ params, body, inLab, caller, scope }) => {
+  const view = await inLab(async (trx) => {
     const { slug, embargo_until, change_note, ...words } = body;
     const by = { ...scope, accountId: caller.accountId };
     const id = await publishSeries(trx, by, params.seriesId, {
@@ -27,5 +28,7 @@ export const POST = handle(publish, ({ params, body, inLab, caller, scope }) =>
     });
     const lab = await getLab(trx, caller.labId);
     return toPublicationView(await getPublication(trx, caller.labId, id), lab.slug);
-  }),
-);
+  });
+  forgetRevisions();
+  return view;
+});
