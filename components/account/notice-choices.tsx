@@ -32,9 +32,7 @@ export function NoticeChoices({ lab }: { lab: string }) {
   const changing = choose.isPending ? choose.variables : null;
   return (
     <fieldset>
-      <legend className="text-ink-2">
-        In {lab}, a mail comes when somebody else brings it about that
-      </legend>
+      <legend className="text-ink-2">A mail comes from {lab} when</legend>
       <ul className="mt-1.5 grid gap-1.5">
         {notices.map(({ kind, wanted }) => (
           <li key={kind}>
@@ -48,6 +46,7 @@ export function NoticeChoices({ lab }: { lab: string }) {
           </li>
         ))}
       </ul>
+      <p className="mt-2 text-small text-ink-2">What you do yourself brings no mail.</p>
       {choose.isError && (
         <p role="alert" className="mt-2 text-fault">
           The choice was not saved. {choose.error.message}

@@ -21,7 +21,7 @@ interface Notice {
 }
 
 export const NOTICES: Readonly<Record<NoticeKind, Notice>> = {
-  "analysis-failed": { roles: ["tester", "analyst"], words: "an analysis failed" },
+  "analysis-failed": { roles: ["tester", "analyst"], words: "an analysis fails" },
   "ready-for-review": { roles: ["analyst"], words: "a series is ready for review" },
   "run-asked": { roles: ["tester"], words: "an analyst asks for another run" },
   "signed-off": { roles: ["reviewer"], words: "a series is signed off" },

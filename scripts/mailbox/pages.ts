@@ -18,7 +18,7 @@ li a { display: grid; grid-template-columns: minmax(0, 1fr) auto; gap: 0 16px; p
 li a:hover { background: ${toCss(COLOURS.wash)} } li b { overflow-wrap: anywhere }
 li span, dl, pre { font: 14px/21px "Roboto Mono", ui-monospace, monospace } li span { color: ${toCss(COLOURS.ink2)}; overflow-wrap: anywhere }
 dl { display: grid; grid-template-columns: auto minmax(0, 1fr); gap: 2px 16px; margin: 12px 0 18px } dt { color: ${toCss(COLOURS.ink2)} } dd { margin: 0; overflow-wrap: anywhere }
-iframe { width: 100%; height: 640px; border: 1px solid ${toCss(COLOURS.rule)}; background: ${toCss(COLOURS.sheet)} }
+iframe { box-sizing: border-box; width: 100%; height: 640px; border: 1px solid ${toCss(COLOURS.rule)}; background: ${toCss(COLOURS.sheet)} }
 h2 { margin: 24px 0 8px; font-size: 19px } pre { margin: 0; padding: 16px; white-space: pre-wrap; overflow-wrap: anywhere; background: ${toCss(COLOURS.sheet)}; border: 1px solid ${toCss(COLOURS.rule)} }`);
 
 function toPage(title: string, body: HtmlPart, refreshS: number | null = null): string {
