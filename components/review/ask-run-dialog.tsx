@@ -15,7 +15,7 @@ import { Field, Select, TextArea, TextInput } from "../parts/field";
 import { useRequestRun } from "../queries/review";
 
 interface AskRunDialogProps {
-  series: SeriesView;
+  series: Pick<SeriesView, "id" | "plan">;
   band: Band;
   onClose: () => void;
 }
