@@ -77,7 +77,7 @@ describe("publication", () => {
     expect(await measureOverflow(page)).toBeLessThanOrEqual(0);
     await form.getByRole("checkbox", { name: /I have read/ }).check();
     await form.getByRole("button", { name: "Publish" }).click();
-    await page.getByRole("link", { name: "Revision 1" }).waitFor();
+    await page.getByRole("link", { name: "Revision 1", exact: true }).waitFor();
     expect(await page.getByText("Publish a correction").count()).toBe(1);
   });
 
