@@ -5,7 +5,7 @@
  * narrow screen scrolls.
  */
 import type { ComparedBand, Comparison, ComparisonTest } from "../compare/comparison-schema";
-import { letterOf, toOpenWords } from "../compare/compare-words";
+import { keyShapes, nameShapes } from "./compare-key";
 import { differenceMapShapes, differenceRowShapes, MAP_ROW } from "./compare-map";
 import { comparePaint, COMPARE_DASHES, letterShapes } from "./compare-paints";
 import type { Figure, Shape } from "./figure";
@@ -40,7 +40,7 @@ const LABELS = 26;
 /** Two lines at the top of the test keep so far apart. */
 const LANE = 4.6;
 
-interface Place {
+export interface ComparePlace {
   bands: BandScale;
   scale: DbScale;
   top: number;
@@ -48,7 +48,7 @@ interface Place {
 }
 
 /** One test's line: where it lies in each band of the comparison. */
-interface Line {
+export interface CompareLine {
   at: number;
   test: ComparisonTest;
   /** [bands] null: nothing to draw there. */
@@ -69,7 +69,7 @@ export function toCompareFigure(
   const { minDb, maxDb } = toWallRange(levels);
   const scale = toDbScale(minDb, maxDb, plotHeight);
   const bands = toBandScale(bandsHz.map(toExact(tests)), pitch);
-  const place: Place = { bands, scale, top: head, foot: head + plotHeight };
+  const place: ComparePlace = { bands, scale, top: head, foot: head + plotHeight };
   const lines = toLines(comparison, place);
   const mapTop = place.foot + NEATLINE + LABELS + 8;
   const others = tests.slice(1);
@@ -149,8 +149,11 @@ const small = (text: string, x: number, y: number, anchor: "start" | "end"): Sha
   anchor,
 });
 
-function toLines({ tests, bands_Hz: bandsHz }: Comparison, { scale, top }: Place): Line[] {
-  const plain = tests.map((test, at): Line => ({
+function toLines(
+  { tests, bands_Hz: bandsHz }: Comparison,
+  { scale, top }: ComparePlace,
+): CompareLine[] {
+  const plain = tests.map((test, at): CompareLine => ({
     at,
     test,
     points: bandsHz.map((hz) => {
@@ -186,7 +189,7 @@ const meanOf = (values: readonly number[]): number =>
   values.reduce((sum, one) => sum + one, 0) / values.length;
 
 /** The pale wall under the reference's line. */
-function referenceShapes(line: Line | undefined, { bands, foot }: Place): Shape[] {
+function referenceShapes(line: CompareLine | undefined, { bands, foot }: ComparePlace): Shape[] {
   const water = levelRamp(4)[0]?.fill ?? COLOURS.wash;
   return (line?.points ?? []).flatMap((point, at): Shape[] =>
     point === null || point.band.status === "below lowest"
@@ -206,7 +209,7 @@ function referenceShapes(line: Line | undefined, { bands, foot }: Place): Shape[
 }
 
 /** Steps in the test's own colour and dash; hollow where the limit was not reached. */
-function lineShapes({ at, points }: Line, { bands }: Place): Shape[] {
+function lineShapes({ at, points }: CompareLine, { bands }: ComparePlace): Shape[] {
   const stroke = comparePaint(at);
   const dash = COMPARE_DASHES[at];
   const solid: string[] = [];
@@ -238,7 +241,11 @@ function lineShapes({ at, points }: Line, { bands }: Place): Shape[] {
 }
 
 /** The letter on the line, once, where it is furthest from the others. */
-function tagShapes(line: Line, lines: readonly Line[], { bands }: Place): Shape[] {
+function tagShapes(
+  line: CompareLine,
+  lines: readonly CompareLine[],
+  { bands }: ComparePlace,
+): Shape[] {
   let best: { nth: number; y: number; free: number } | null = null;
   line.points.forEach((point, nth) => {
     if (point === null || point.band.status !== "found") return;
@@ -249,86 +256,4 @@ function tagShapes(line: Line, lines: readonly Line[], { bands }: Place): Shape[
   const place = best as { nth: number; y: number } | null;
   if (place === null) return [];
   return letterShapes(line.at, bands.centre(place.nth), place.y);
-}
-
-/** The names at the line ends, with leaders; a test that ends in a hole has its name without one. */
-function nameShapes(lines: readonly Line[], { top, foot }: Place): Shape[] {
-  const named = lines.map((line) => ({
-    line,
-    end: line.points.at(-1)?.y ?? null,
-    wish: line.points.findLast((point) => point !== null)?.y ?? foot - 40,
-  }));
-  const spread = spreadLabels(
-    named.map(({ wish }) => wish),
-    22,
-    top + 10,
-    foot - 120,
-  );
-  return named.flatMap(({ line, end, wish }, nth): Shape[] => {
-    const y = round2(spread[nth] ?? wish);
-    return [
-      ...(end === null
-        ? []
-        : [
-            {
-              kind: "path",
-              role: "leader",
-              d: `M4 ${end}H10L18 ${y}H22`,
-              stroke: COLOURS.ink3,
-            } as const,
-          ]),
-      ...letterShapes(line.at, 32, y),
-      {
-        kind: "text",
-        role: "name",
-        x: 46,
-        y: y + 5,
-        text: line.test.model,
-        size: 15,
-        weight: 600,
-        family: "prose",
-        fill: COLOURS.ink,
-      },
-    ];
-  });
-}
-
-/** What the lines mean, at the key's foot. */
-function keyShapes(comparison: Comparison, { foot }: Place): Shape[] {
-  const { tests } = comparison;
-  if (tests.length === 0) return [];
-  const line = { x1: 24, x2: 50, stroke: COLOURS.ink } as const;
-  const words = (text: string, y: number): Shape => ({
-    kind: "text",
-    x: 58,
-    y: y + 4,
-    text,
-    size: 11,
-    fill: COLOURS.ink2,
-  });
-  const [y1, y2, y3] = [foot - 86, foot - 62, foot - 24];
-  const [open, ...rest] = splitWords(toOpenWords(tests));
-  return [
-    { kind: "line", ...line, y1, y2: y1, strokeWidth: 4 },
-    words("limit reached", y1),
-    { kind: "line", ...line, y1: y2, y2, strokeWidth: 3.2 },
-    { kind: "line", ...line, y1: y2, y2, stroke: COLOURS.sheet, strokeWidth: 1.2 },
-    words(open ?? "", y2),
-    ...rest.map((part, nth) => words(part, y2 + 14 * (nth + 1))),
-    {
-      kind: "rect",
-      x: 24,
-      y: y3 - 7,
-      width: 26,
-      height: 14,
-      fill: levelRamp(4)[0]?.fill ?? COLOURS.wash,
-    },
-    words(`${letterOf(0)}, reference`, y3),
-  ];
-}
-
-/** Two lines of what fits the key. */
-function splitWords(text: string): string[] {
-  const at = text.indexOf(" to ") + 3;
-  return at < 3 ? [text] : [text.slice(0, at), text.slice(at + 1)];
 }
