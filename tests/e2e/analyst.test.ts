@@ -258,7 +258,8 @@ describe("with others at the same series", () => {
     await addVersion(bench, bench.all.scope, series, newer);
     await look(series);
     await page.getByText("1 of 27 bands changed. 26 of 27 decisions still fit").waitFor();
-    await page.getByText("limiter, now overload").waitFor({ state: "attached" });
+    await page.getByText("The band that changed").click();
+    await page.getByText("limiter, now overload").waitFor();
     expect(await findAxeFaults(page)).toEqual([]);
     await page.getByRole("button", { name: "Keep 26 decisions" }).click();
     await page.getByText("26 of 27 bands decided.").waitFor();
