@@ -7,10 +7,14 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { inLab } from "../../db/in-lab";
 import { getResult } from "../../lib/api/analyses";
 import { requestApi } from "../../lib/api/client";
-import { getEvidence, getSeriesFolder } from "../../lib/api/keeping";
+import { createSeriesFromFolder, getEvidence, getSeriesFolder } from "../../lib/api/keeping";
+import { listLoudspeakers } from "../../lib/api/loudspeakers";
 import { publish, withdrawPublication } from "../../lib/api/publications";
-import type { SeriesView } from "../../lib/api/series";
+import { requestRun } from "../../lib/api/review";
+import { actOnRun, listRuns, removeRun } from "../../lib/api/runs";
+import { getSeries, removeSeries, type SeriesView } from "../../lib/api/series";
 import { runAnalyse } from "../support/analyse-command";
+import { writeSeriesFolder } from "../support/series-folder";
 import { signTestSeries } from "../support/signed-series";
 import { getTestSeries } from "../support/test-series";
 import { uploadWhole } from "../support/tus";
@@ -22,6 +26,7 @@ import {
   problemOf,
   seriesInState,
   target,
+  until,
   type ApiBench,
 } from "./support";
 
@@ -85,6 +90,93 @@ describe("a series as a folder", () => {
   });
 });
 
+describe("a folder as a series", () => {
+  it("gives the worker what the command has: names, order and result, byte for byte", async () => {
+    const folder = join(root, "foreign");
+    const amplitude = (levelDb: number): number => 0.3 * 10 ** ((levelDb - 102) / 20);
+    writeSeriesFolder(folder, {
+      levels: [86, 76, 96],
+      lengthS: 2,
+      device: (levelDb) => ({
+        amplitudes: (f) => [amplitude(levelDb - Math.max(0, levelDb - 90) / (1 + (f / 150) ** 4))],
+      }),
+    });
+    const { series: started, uploads } = await call(bench, createSeriesFromFolder, {
+      body: {
+        series_json: readFileSync(join(folder, "series.json"), "utf8"),
+        loudspeaker: { maker: "Foreign", model: "One", kind: "other" },
+      },
+    });
+    expect(uploads.map(({ file }) => file)).toEqual([
+      "calibrator.wav",
+      "ambient.wav",
+      "76.wav",
+      "86.wav",
+      "96.wav",
+    ]);
+    const params = { seriesId: started.id };
+    for (const { file, slot, channel } of uploads) {
+      await uploadWhole(target(bench), new Uint8Array(readFileSync(join(folder, file))), {
+        seriesId: started.id,
+        fileName: file,
+        slot,
+        channel: String(channel),
+      });
+    }
+    const done = await until(
+      bench,
+      async () => {
+        const { runs } = await call(bench, listRuns, { params });
+        const failed = runs.find((run) => run.state === "failed" && run.slot !== null);
+        if (failed !== undefined) {
+          const body = { act: "keep", reason: "as the command takes it" } as const;
+          await call(bench, actOnRun, { params: { runId: failed.id }, body });
+        }
+        return call(bench, getSeries, { params });
+      },
+      ({ state }) => state === "in review" || state === "analysis failed",
+    );
+    const analysisId = done.latest_done_analysis?.id ?? "";
+    const text = await (await request(getResult, { params: { analysisId } })).text();
+    const { stdout } = await runAnalyse(root, "foreign");
+    expect(stdout.length).toBeGreaterThan(10_000);
+    expect(text).toBe(stdout);
+  });
+
+  it("is refused by name where a series here cannot hold it, and leaves no loudspeaker", async () => {
+    const count = async () =>
+      (await call(bench, listLoudspeakers, { query: {} })).loudspeakers.length;
+    const before = await count();
+    const fault = await problemOf(
+      call(bench, createSeriesFromFolder, {
+        body: {
+          series_json: JSON.stringify({
+            loudspeaker: "A B",
+            environment: "anechoic",
+            distance_m: 1,
+            stimulus: {
+              file: "s.wav",
+              start_Hz: 20,
+              stop_Hz: 20_000,
+              length_s: 2,
+              rate_Hz: 48_000,
+            },
+            calibration: { full_scale_dB: 124 },
+            runs: [
+              { file: "76.wav", level_dB: 76 },
+              { file: "86.wav", level_dB: 86 },
+            ],
+          }),
+          loudspeaker: { maker: "A", model: "B", kind: "other" },
+        },
+      }),
+    );
+    expect(fault).toMatchObject({ code: "series.not-plannable", status: 422 });
+    expect(fault.detail).toContain("stimulus.file");
+    expect(await count()).toBe(before);
+  });
+});
+
 describe("the evidence of a publication", () => {
   it("is given to readers where the lab says so, and proves the published result", async () => {
     await inLab(bench.app, bench.all.scope, (trx) =>
@@ -141,5 +233,30 @@ describe("the evidence of a publication", () => {
     const reason = { reason: "the wrong microphone file" };
     await call(bench, withdrawPublication, { params: { publicationId: shown.id }, body: reason });
     expect((await publicPack(shown.path)).status).toBe(404);
+  });
+});
+
+describe("a series without recordings", () => {
+  it("lets an empty series go, also where a file came and was removed; what was asked for is archived", async () => {
+    const empty = await planTestSeries(bench);
+    const params = { seriesId: empty.id };
+    const runId = await uploadWhole(
+      target(bench),
+      getTestSeries().files[0]?.bytes.slice() ?? new Uint8Array(),
+      {
+        seriesId: empty.id,
+        fileName: "nothing like it.wav",
+      },
+    );
+    await call(bench, removeRun, { params: { runId } });
+    expect(await call(bench, removeSeries, { params })).toEqual({ outcome: "deleted" });
+    const asked = await planTestSeries(bench);
+    await call(bench, requestRun, {
+      params: { seriesId: asked.id },
+      body: { level_dB: 80, reason: "narrower" },
+    });
+    expect(await call(bench, removeSeries, { params: { seriesId: asked.id } })).toEqual({
+      outcome: "archived",
+    });
   });
 });
