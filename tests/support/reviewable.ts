@@ -92,12 +92,15 @@ async function addAnalysis(
   labId: string,
   { seriesId, runIds, result }: Pick<ReviewableSeries, "seriesId" | "runIds" | "result">,
 ): Promise<string> {
+  const runs = await trx
+    .selectFrom("runs")
+    .select(["id as run_id", "file_name as file", "digest"])
+    .where("id", "in", runIds)
+    .orderBy("file_name")
+    .execute();
   const analysisId = await createAnalysis(trx, labId, {
     seriesId,
-    inputs: {
-      series: {},
-      files: runIds.map((run_id, at) => ({ file: `${at}.wav`, digest: "ab".repeat(32), run_id })),
-    },
+    inputs: { series: {}, files: runs },
     inputsDigest: randomBytes(32).toString("hex"),
     settings: result.settings,
     engineVersion: result.engine.version,

@@ -87,7 +87,7 @@ describe("a worker that is killed", () => {
       const { id } = series.latest_done_analysis ?? { id: "" };
       await forget(id);
       const workerPid = await livingPid(bench.product.worker);
-      const goOn = slowDown(childrenOf(workerPid), 0.15);
+      const goOn = slowDown(childrenOf(workerPid), 0.05);
       try {
         await call(bench, startAnalysis, { params: { seriesId: series.id } });
         await until(
