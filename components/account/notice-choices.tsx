@@ -1,7 +1,8 @@
 "use client";
 
 import { useQuery } from "@tanstack/react-query";
-import { NOTICES } from "@/lib/mail/notices";
+import { useState } from "react";
+import { NOTICES, type NoticeKind } from "@/lib/mail/notices";
 import { Button } from "../parts/button";
 import { Checkbox } from "../parts/checkbox";
 import { FaultBar } from "../parts/fault-bar";
@@ -12,6 +13,8 @@ import { noticesQuery, useChooseNotice } from "../queries/mail";
 export function NoticeChoices({ lab }: { lab: string }) {
   const choices = useQuery(noticesQuery);
   const choose = useChooseNotice();
+  // Shown from the click on: a mutation tells of itself a moment later, and the box would jump back.
+  const [changing, setChanging] = useState<{ kind: NoticeKind; wanted: boolean } | null>(null);
   if (choices.isPending) {
     return <LoadingState label="Loading the notices" onRetry={() => void choices.refetch()} />;
   }
@@ -29,7 +32,6 @@ export function NoticeChoices({ lab }: { lab: string }) {
   if (notices.length === 0) {
     return <p>Your roles in {lab} bring no notices: testers, analysts and reviewers get them.</p>;
   }
-  const changing = choose.isPending ? choose.variables : null;
   return (
     <fieldset>
       <legend className="text-ink-2">A mail comes from {lab} when</legend>
@@ -39,7 +41,11 @@ export function NoticeChoices({ lab }: { lab: string }) {
             <Checkbox
               checked={changing?.kind === kind ? changing.wanted : wanted}
               disabled={changing?.kind === kind}
-              onChange={(event) => choose.mutate({ kind, wanted: event.target.checked })}
+              onChange={(event) => {
+                const choice = { kind, wanted: event.target.checked };
+                setChanging(choice);
+                choose.mutate(choice, { onSettled: () => setChanging(null) });
+              }}
             >
               {NOTICES[kind].words}
             </Checkbox>

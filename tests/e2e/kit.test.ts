@@ -78,6 +78,7 @@ const frameOf = async (page: Page): Promise<Frame> => {
   const frame = await (await page.waitForSelector("iframe")).contentFrame();
   if (frame === null) throw new Error("the frame holds nothing");
   await frame.waitForLoadState();
+  await frame.evaluate("document.fonts.ready");
   return frame;
 };
 
