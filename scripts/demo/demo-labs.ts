@@ -54,6 +54,13 @@ export interface DemoLab {
 const levels = (of: number[], longTerm: number[] = []): PlanInput["levels"] =>
   of.map((level_dB) => ({ level_dB, long_term: longTerm.includes(level_dB) }));
 
+/** As the invented certificates of both labs' calibrators and microphones say; k = 2. */
+const CERTIFIED: PlanInput["uncertainty"] = {
+  calibrator_dB: 0.2,
+  microphone_dB: 1,
+  distance_m: 0.01,
+};
+
 const compose = (
   key: LoudspeakerKey,
   loudspeaker: Omit<LoudspeakerInput, "serial" | "tuning_Hz"> & Partial<LoudspeakerInput>,
@@ -65,7 +72,11 @@ const compose = (
   name: toFileStem(loudspeaker.model),
   key,
   loudspeaker: { serial: "", tuning_Hz: null, ...loudspeaker },
-  plan: planSchema.parse({ place: { environment: "anechoic", temperature_C: 21 }, ...plan }),
+  plan: planSchema.parse({
+    place: { environment: "anechoic", temperature_C: 21 },
+    uncertainty: CERTIFIED,
+    ...plan,
+  }),
   fullScaleDb: 116,
   recorded: "all",
   mishaps: {},
