@@ -26,10 +26,13 @@ export function childrenOf(pid: number): number[] {
     .filter((candidate) => parentOf(candidate) === pid);
 }
 
-/** Gives the processes a share of their time, until it is called off: so that a test sees each stage. */
-export function slowDown(pids: readonly number[], share: number): () => void {
+/**
+ * Gives the children of a process a share of their time, those that come later as well, until it is
+ * called off: so that a test sees each stage.
+ */
+export function slowDown(parent: number, share: number): () => void {
   const signal = (name: "SIGSTOP" | "SIGCONT"): void => {
-    for (const pid of pids) {
+    for (const pid of childrenOf(parent)) {
       try {
         process.kill(pid, name);
       } catch {

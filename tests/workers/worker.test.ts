@@ -87,7 +87,7 @@ describe("a worker that is killed", () => {
       const { id } = series.latest_done_analysis ?? { id: "" };
       await forget(id);
       const workerPid = await livingPid(bench.product.worker);
-      const goOn = slowDown(childrenOf(workerPid), 0.05);
+      const goOn = slowDown(workerPid, 0.05);
       try {
         await call(bench, startAnalysis, { params: { seriesId: series.id } });
         await until(
@@ -127,7 +127,7 @@ describe("a worker that is killed", () => {
 
   it("while a recording is checked: the check is made again", async () => {
     const workerPid = await livingPid(bench.product.worker);
-    const goOn = slowDown(childrenOf(workerPid), 0.05);
+    const goOn = slowDown(workerPid, 0.05);
     const { runs } = await call(bench, listRuns, { params: { seriesId: series.id } });
     // The loudest one: all that it is held against was there when it first came.
     const run = runs.find((one) => one.slot === "short-86");
@@ -212,7 +212,7 @@ describe("a database that drops every connection", () => {
     const { id } = series.latest_done_analysis ?? { id: "" };
     await forget(id);
     const workerPid = await livingPid(bench.product.worker);
-    const goOn = slowDown(childrenOf(workerPid), 0.2);
+    const goOn = slowDown(workerPid, 0.2);
     try {
       await call(bench, startAnalysis, { params: { seriesId: series.id } });
       await until(
@@ -265,7 +265,7 @@ async function dropConnections(): Promise<void> {
 describe("an analysis that is no longer wanted", () => {
   it("ends as cancelled when newer inputs replace it, and leaves nothing", async () => {
     const workerPid = await livingPid(bench.product.worker);
-    const goOn = slowDown(childrenOf(workerPid), 0.1);
+    const goOn = slowDown(workerPid, 0.1);
     const params = { seriesId: series.id };
     try {
       const { plan_version, plan } = await call(bench, getSeries, { params });
