@@ -78,6 +78,36 @@ const countParts = (analysisId: string): Promise<number> =>
     return rows[0]?.n ?? -1;
   });
 
+/** @returns whether the stage was seen, and the worker killed in it. */
+async function killAt(id: string, stage: string): Promise<boolean> {
+  await forget(id);
+  const workerPid = await livingPid(bench.product.worker);
+  const goOn = slowDown(workerPid, 0.05);
+  try {
+    await call(bench, startAnalysis, { params: { seriesId: series.id } });
+    const { state } = await until(
+      bench,
+      () => rowOf(id),
+      (row) => {
+        const states = row.progress?.runs.flatMap((run) => run.stages) ?? [];
+        if (row.state === "done") return true;
+        if (stage === "claimed") return row.state === "running";
+        if (stage === "levels and onset") {
+          return states.length > 0 && states.every((one) => one.state === "done");
+        }
+        return states.some((one) => one.stage === stage && one.state !== "waiting");
+      },
+    );
+    if (state === "done") return false;
+    const computing = childrenOf(workerPid);
+    process.kill(workerPid, "SIGKILL");
+    computing.forEach((pid) => process.kill(pid, "SIGKILL"));
+    return true;
+  } finally {
+    goOn();
+  }
+}
+
 describe("a worker that is killed", () => {
   const stages = ["aligned", "harmonics", "floor"] as const;
 
@@ -85,30 +115,10 @@ describe("a worker that is killed", () => {
     "while an analysis is %s: it is taken up again and gives the same rows",
     async (stage) => {
       const { id } = series.latest_done_analysis ?? { id: "" };
-      await forget(id);
-      const workerPid = await livingPid(bench.product.worker);
-      const goOn = slowDown(workerPid, 0.05);
-      try {
-        await call(bench, startAnalysis, { params: { seriesId: series.id } });
-        await until(
-          bench,
-          () => rowOf(id),
-          (row) => {
-            const states = row.progress?.runs.flatMap((run) => run.stages) ?? [];
-            if (row.state === "done") throw new Error(`it was done before ${stage} was seen`);
-            if (stage === "claimed") return row.state === "running";
-            if (stage === "levels and onset") {
-              return states.length > 0 && states.every((one) => one.state === "done");
-            }
-            return states.some((one) => one.stage === stage && one.state !== "waiting");
-          },
-        );
-        const computing = childrenOf(workerPid);
-        process.kill(workerPid, "SIGKILL");
-        computing.forEach((pid) => process.kill(pid, "SIGKILL"));
-      } finally {
-        goOn();
-      }
+      // On a busy machine an analysis may be over between two looks: then it is begun again.
+      let caught = false;
+      for (let attempt = 0; attempt < 10 && !caught; attempt += 1) caught = await killAt(id, stage);
+      if (!caught) throw new Error(`it was done before ${stage} was seen, ten times`);
       const killedAt = Date.now();
       expect(await countParts(id)).toBe(0);
       const row = await until(
@@ -230,9 +240,17 @@ describe("a database that drops every connection", () => {
       (row) => row?.state === "done",
     );
     expect(await resultOf(series)).toBe(reference);
-    // Idle connections too: the next job is heard of all the same.
+    // Idle connections too, those of this test among them: the next job is heard of all the same.
     await dropConnections();
-    await forget(id);
+    await until(
+      bench,
+      () =>
+        forget(id).then(
+          () => true,
+          () => false,
+        ),
+      (forgotten) => forgotten,
+    );
     await until(
       bench,
       () => call(bench, startAnalysis, { params: { seriesId: series.id } }).catch(() => null),
